@@ -1,0 +1,1 @@
+import type { CatalogueEntry } from "@/lib/timing/catalogue/catalogue";
