@@ -11,10 +11,24 @@ export type LimitSource = "service-literature" | "edid" | "standard" | "measured
 
 /** Names of the limits of a screen envelope that can carry a source. */
 export type EnvelopeLimit =
-  | "bands" | "interlace" | "maxPixelClockHz" | "syncKinds" | "syncVpp" | "loadOhm"
-  | "minSyncUs" | "minBackPorchUs" | "minFieldBlankUs" | "aspect" | "visiblePct";
+  | "bands"
+  | "interlace"
+  | "maxPixelClockHz"
+  | "syncKinds"
+  | "syncVpp"
+  | "loadOhm"
+  | "minSyncUs"
+  | "minBackPorchUs"
+  | "minFieldBlankUs"
+  | "aspect"
+  | "visiblePct";
 
-export type VisiblePct = { readonly left: number; readonly right: number; readonly top: number; readonly bottom: number };
+export type VisiblePct = {
+  readonly left: number;
+  readonly right: number;
+  readonly top: number;
+  readonly bottom: number;
+};
 
 /**
  * What a screen takes. What is missing is unknown, and a check says so.

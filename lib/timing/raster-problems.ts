@@ -13,7 +13,9 @@ function axisProblems(name: "horizontal" | "vertical", axis: AxisTiming): PathMe
     const value = axis[part];
     const least = part === "active" ? 1 : 0;
     if (Number.isInteger(value) && value >= least && value <= MAX_AXIS_COUNT) return [];
-    return [{ path: `${name}.${part}`, message: `Must be a whole number of ${unit} from ${least} to ${MAX_AXIS_COUNT}.` }];
+    return [
+      { path: `${name}.${part}`, message: `Must be a whole number of ${unit} from ${least} to ${MAX_AXIS_COUNT}.` },
+    ];
   });
 }
 
