@@ -2,9 +2,9 @@ import type { Finding } from "@/lib/profile/finding";
 import type { ProfileDocument } from "@/lib/profile/document";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
-import type { BackupContent } from "../backup/types";
-import type { DriverDefinition } from "../driver/definition";
-import type { NativeKey, NativeValue, NativeWrite } from "../native";
+import type { BackupContent } from "@/lib/serial/backup/types";
+import type { DriverDefinition } from "@/lib/serial/driver/definition";
+import type { NativeKey, NativeValue, NativeWrite } from "@/lib/serial/native";
 
 /** One request of a plan that changes something, with the raster that is out after it (null: nothing). */
 export type PlanStep =

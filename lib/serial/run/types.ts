@@ -1,4 +1,4 @@
-import type { NativeKey, NativeValue, NativeWrite } from "../native";
+import type { NativeKey, NativeValue, NativeWrite } from "@/lib/serial/native";
 
 /** States of a run; see the design's run model. Final: kept, called-off, put-back, left. */
 export type RunState =
@@ -20,6 +20,8 @@ export type JournalEntry = {
       readonly direction: "forward" | "back";
       readonly request: "write" | "recall" | "commit" | "arm" | "extend" | "confirm" | "disarm" | "mute";
       readonly slot?: number | undefined;
+      /** With `mute`. */
+      readonly muteOn?: boolean | undefined;
       readonly old?: readonly NativeWrite[] | undefined;
       readonly new?: readonly NativeWrite[] | undefined;
       /** `leaving` is journalled before the bytes leave; the others when it is known. */
@@ -42,3 +44,48 @@ export type SettingStanding = {
   readonly new: NativeValue;
   readonly found?: NativeValue | undefined;
 };
+
+/** What the page shows of a run. A new object at every change. */
+export type RunView = {
+  readonly state: RunState;
+  /** Requests are under way. */
+  readonly busy: boolean;
+  /** Requests of the act under way that are done, and all of them. */
+  readonly progress: { readonly done: number; readonly total: number };
+  /** `lost`: the port went away, the device fell silent or the journal cannot be written; `resume` or `readAgain` goes on. */
+  readonly link: "up" | "lost";
+  /** Why the run stands where it does, in one or two sentences; empty when there is nothing to say. */
+  readonly why: string;
+  /** While trying: the end of the countdown on the run's clock, and its whole length. */
+  readonly countdown: { readonly endsAtMs: number; readonly seconds: number } | null;
+  /** Changed slots that were not recalled since the new values are in place: named beside Keep. */
+  readonly notLookedAt: readonly number[];
+  /** The device's own timer would not put the old values back: only this page does. */
+  readonly onlyThisPagePutsBack: boolean;
+  /** A commit may have left: a restart does not bring the old values back for certain. */
+  readonly commitMayHaveLeft: boolean;
+  /** Wall clock of the last write or commit: a switch-off counts only after it. */
+  readonly lastWriteAtMs: number | null;
+  /** `mixed` and `unconfirmed`: how each setting stands by the last whole read. */
+  readonly standings: readonly SettingStanding[];
+};
+
+/** Why an act of the owner was not taken. */
+export type RunActRefusal =
+  | "wrong-state" // the act does not belong to the state the run is in
+  | "busy" // another act is under way
+  | "too-late" // the countdown has ended: no answer is a "no"
+  | "link-lost" // the device is not there
+  | "not-allowed" // the slot is not one of the plan's, or its raster does not fit the screen
+  | "other-device"; // what answers is not the device that the run began with
+
+/**
+ * Where the journal lives: browser storage and the server, behind one door.
+ *
+ * `append` resolves when the entry survives a reload of the page; a server that is away does not hold it up.
+ * It rejects only when the entry cannot be kept at all: then nothing more is sent.
+ */
+export interface JournalStore {
+  append(entry: JournalEntry): Promise<void>;
+  load(): Promise<readonly JournalEntry[]>;
+}
