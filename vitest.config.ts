@@ -29,6 +29,8 @@ export default defineConfig({
       project("integration", "integration", {
         globalSetup: "tests/integration/helpers/global-setup.ts",
         setupFiles: "tests/integration/helpers/setup.ts",
+        // It imports `next/server` without an ending, which only a bundler resolves.
+        server: { deps: { inline: ["next-auth"] } },
         testTimeout: 20_000,
         hookTimeout: 60_000,
       }),
