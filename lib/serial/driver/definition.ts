@@ -9,12 +9,25 @@ import { inputRangeSchema, lineFilterSchema, outputKindSchema, rasterTimingSchem
  * which stand in a backup and never in a profile. Bounds keep a definition from a stranger finite.
  */
 export const DRIVER_FORMAT = "backporch-driver";
+/** Settings of one device, slots and modes counted out. Bounds what a driver expands to. */
+export const MAX_SETTINGS = 8192;
 
 const name = z.string().min(1).max(80);
 const template = z.string().min(1).max(200);
 const whole = z.number().int();
 
-/** Request and reply templates with typed holes: `{slot:int}`, `{mode:int}`, `{value:int}`, `{value:fixed1}`, `{name:text16}`, `{value:word}`. */
+/** A native value as a document writes it: see `native.ts`. */
+const nativeValue = z.union([whole, z.string().max(64)]);
+
+/** Check fields by their names in the catalogue of parametrised CRC algorithms; `sum8` and `xor8` run over all bytes. */
+export const checkAlgorithmSchema = z.enum(["sum8", "xor8", "crc8-smbus", "crc16-xmodem", "crc16-ibm-3740", "crc16-modbus"]);
+
+/**
+ * Request and reply templates with typed holes: `{slot:int}`, `{mode:int}`, `{value:int}`, `{value:fixed1}`, `{name:text16}`, `{value:word}`.
+ *
+ * `fixed1` to `fixed3` show a whole native number with so many decimals (960 is `96.0`). In a setting, the one hole that is
+ * neither `slot` nor `mode` is its value.
+ */
 export const textExchangeSchema = z.strictObject({ request: template, reply: template });
 /** Register of the first slot or mode; the next ones follow by `stride`. */
 export const modbusFieldSchema = z.strictObject({
@@ -50,23 +63,37 @@ export const settingSchema = z.strictObject({
   key: z.string().min(1).max(120),
   label: name,
   value: settingValueSchema,
-  /** What a new device holds, native. */
-  initial: z.union([whole, z.string()]),
+  /** What a new device holds, native; `factory` of the driver says otherwise for single slots and modes. */
+  initial: nativeValue,
   wire: wireSchema,
 });
 
 export const statusNameSchema = z.enum([
-  "identity", "activeSlot", "arriving", "locked", "bootCount", "committed", "rasterOut", "serialNumber", "firmware", "errorQueue",
+  "identity", "activeSlot", "arriving", "bootCount", "committed", "rasterOut", "errorQueue", "operationComplete",
 ]);
 export const actionNameSchema = z.enum([
   "recall", "commit", "armTimer", "extendTimer", "confirmTimer", "disarmTimer", "muteOn", "muteOff",
 ]);
 
-/** A query or an order that is not a setting. For `modbus` and `packet` the codec's own fields say where. */
+/**
+ * A query or an order that is not a setting. Its fields (holes of a template, or named registers) are:
+ *
+ * - `identity`: maker, model, serial, firmware · `activeSlot`, `recall`: slot · `bootCount`: count · `committed`: committed (0, 1)
+ * - `rasterOut`: clock, hActive, hFrontPorch, hSync, hBackPorch, hPolarity, vActive, vFrontPorch, vSync, vBackPorch, vPolarity, scan,
+ *   each as the settings of a mode hold it; a clock of 0 says that nothing is put out
+ * - `arriving`: input (as `slots[*].input` holds it), activePx (0: nothing arrives), activeLines, interlaced (0, 1), fieldRateMilliHz, locked (0, 1)
+ * - `armTimer`, `extendTimer`: seconds · `errorQueue`: code, message · `operationComplete`: complete
+ *
+ * `value` is what an order without an argument writes into its register.
+ */
 export const operationWireSchema = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("text"), request: template, reply: template }),
-  z.strictObject({ kind: z.literal("modbus"), field: modbusFieldSchema, value: whole.optional() }),
-  z.strictObject({ kind: z.literal("packet"), field: packetFieldSchema, value: whole.optional() }),
+  z.strictObject({
+    kind: z.literal("modbus"), fields: z.array(z.strictObject({ name, field: modbusFieldSchema })).min(1).max(16), value: whole.optional(),
+  }),
+  z.strictObject({
+    kind: z.literal("packet"), fields: z.array(z.strictObject({ name, field: packetFieldSchema })).min(1).max(16), value: whole.optional(),
+  }),
 ]);
 
 const acceptedFormatSchema = z.strictObject({
@@ -80,10 +107,11 @@ export const protocolSchema = z.discriminatedUnion("kind", [
     kind: z.literal("text"),
     lineEnd: z.enum(["\n", "\r", "\r\n"]),
     /** Check field at the end of a line: hex digits after `*`, as in IEC 61162-1. */
-    check: z.strictObject({ algorithm: z.enum(["sum8", "xor8", "crc8", "crc16"]), requiredInReplies: z.boolean() }).optional(),
+    check: z.strictObject({ algorithm: checkAlgorithmSchema, requiredInReplies: z.boolean() }).optional(),
     echo: z.boolean().default(false),
-    /** Requests that go without the check (`*IDN?`). */
+    /** Requests that the device takes without the check too, and then answers without it (`*IDN?` from a terminal). */
     uncheckedRequests: z.array(template).max(16).default([]),
+    /** `{header:…}` names the request: its text up to the first space or question mark. */
     refusalReply: template.optional(),
     busyReply: template.optional(),
     maxLineBytes: whole.min(16).max(1024).default(128),
@@ -91,7 +119,7 @@ export const protocolSchema = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("modbus-rtu"), unit: whole.min(1).max(247), maxReadGap: whole.min(0).max(64).default(0) }),
   z.strictObject({
     kind: z.literal("packet"), start: z.array(whole.min(0).max(255)).min(1).max(4), lengthBytes: whole.min(1).max(2),
-    byteOrder: z.enum(["big", "little"]), checksum: z.enum(["sum8", "xor8", "crc8", "crc16-ccitt-false", "crc16-modbus"]), stuffing: z.boolean().default(false),
+    byteOrder: z.enum(["big", "little"]), checksum: checkAlgorithmSchema, stuffing: z.boolean().default(false),
     blocks: z.array(z.strictObject({ name: z.string().max(40), number: whole.min(0).max(255), bytes: whole.min(1).max(1024), repeats: z.enum(["once", "slots", "modes"]) })).max(64),
   }),
 ]);
@@ -135,6 +163,10 @@ export const driverDefinitionSchema = z.strictObject({
   status: z.partialRecord(statusNameSchema, operationWireSchema),
   actions: z.partialRecord(actionNameSchema, operationWireSchema),
   settings: z.array(settingSchema).min(1).max(512),
+  /** What a new device holds where that differs from a setting's `initial`, by native key. */
+  factory: z.record(z.string().max(120), nativeValue).refine((values) => Object.keys(values).length <= MAX_SETTINGS, "has too many values").default({}),
+  /** How the device starts: the time it takes before it answers, and the lines (or bytes as text) it sends meanwhile. */
+  boot: z.strictObject({ takesMs: whole.min(0).max(60_000), chatter: z.array(z.string().max(80)).max(8) }).default({ takesMs: 0, chatter: [] }),
 });
 
 export type DriverDefinition = z.infer<typeof driverDefinitionSchema>;
@@ -142,4 +174,6 @@ export type DriverSetting = z.infer<typeof settingSchema>;
 export type SettingValue = z.infer<typeof settingValueSchema>;
 export type StatusName = z.infer<typeof statusNameSchema>;
 export type ActionName = z.infer<typeof actionNameSchema>;
+export type OperationWire = z.infer<typeof operationWireSchema>;
+export type CheckAlgorithm = z.infer<typeof checkAlgorithmSchema>;
 export type TextExchange = z.infer<typeof textExchangeSchema>;
