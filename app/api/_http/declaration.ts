@@ -16,7 +16,7 @@ export type SessionUser = {
 export type RouteLimit = {
   /** Longest body that is read at all. Default 256 KiB. */
   readonly bodyBytes?: number;
-  /** Per user where there is a session, else per address. Default 120, or 60 where nobody needs an account. */
+  /** Per user where there is a session, else per address. Default 600, or 120 where nobody needs an account. */
   readonly requestsPerMinute?: number;
   /** Counts each address, session or not, and apart from all other routes: for sign-in and registration. */
   readonly perAddress?: boolean;
@@ -55,5 +55,5 @@ export const defaultBodyBytes = 256 * 1024;
 
 /** Requests a minute that a declaration allows. */
 export function requestsPerMinute(declaration: RouteDeclaration): number {
-  return declaration.limit?.requestsPerMinute ?? (declaration.role === "anyone" ? 60 : 120);
+  return declaration.limit?.requestsPerMinute ?? (declaration.role === "anyone" ? 120 : 600);
 }
