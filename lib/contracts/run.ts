@@ -65,6 +65,7 @@ export const journalEntrySchema = z.discriminatedUnion("kind", [
     direction: z.enum(["forward", "back"]),
     request: z.enum(["write", "recall", "commit", "arm", "extend", "confirm", "disarm", "mute"]),
     slot: z.number().int().optional(),
+    muteOn: z.boolean().optional(),
     old: nativeWrites.optional(),
     new: nativeWrites.optional(),
     outcome: z.enum(["leaving", "done", "refused", "unknown", "mismatch"]),
