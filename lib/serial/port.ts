@@ -31,7 +31,10 @@ export type SerialInputLines = {
   readonly dataSetReady: boolean;
 };
 
-export type SerialPortIdentity = { readonly usbVendorId?: number | undefined; readonly usbProductId?: number | undefined };
+export type SerialPortIdentity = {
+  readonly usbVendorId?: number | undefined;
+  readonly usbProductId?: number | undefined;
+};
 
 export interface SerialPortLike {
   /** The device is there. It says nothing of open or closed. */
