@@ -1,7 +1,7 @@
 import type { ProfileDocument } from "@/lib/profile/document";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
-import type { NativeKey, NativeValues } from "../native";
-import type { DeviceIdentity } from "../session/types";
+import type { NativeKey, NativeValues } from "@/lib/serial/native";
+import type { DeviceIdentity } from "@/lib/serial/session/types";
 
 /** Everything a device said at one time: native values, restorable without loss, and the neutral document made from them. */
 export type BackupContent = {

@@ -1,0 +1,86 @@
+import type { NativeValues, NativeWrite } from "@/lib/serial/native";
+import type { CompiledDriver, WireRequest } from "./compiled";
+import type { DriverDefinition } from "./definition";
+
+/** What something costs on the line: characters both ways, and time. */
+export type WireCost = { readonly bytes: number; readonly seconds: number };
+
+/** Time of one character in ms: start bit, data bits, parity bit, stop bits. */
+export function characterMs({ baudRate, dataBits, parity, stopBits }: DriverDefinition["transport"]): number {
+  return ((1 + dataBits + (parity === "none" ? 0 : 1) + stopBits) / baudRate) * 1000;
+}
+
+/** Request, work and reply of one exchange in ms, without what runs beside them. */
+function parts(driver: CompiledDriver, request: WireRequest): { readonly out: number; readonly work: number; readonly back: number } {
+  const perCharacter = characterMs(driver.definition.transport);
+  return { out: request.bytes.length * perCharacter, work: driver.definition.pace.workMs + request.extraMs, back: request.replyBytes * perCharacter };
+}
+
+function costOf(driver: CompiledDriver, requests: readonly (WireRequest | null)[]): WireCost {
+  let bytes = 0;
+  let ms = 0;
+  for (const request of requests) {
+    if (!request) continue;
+    const { out, work, back } = parts(driver, request);
+    bytes += request.bytes.length + request.replyBytes;
+    ms += driver.codec.silenceMs + driver.definition.pace.gapMs + out + work + driver.codec.silenceMs + back;
+  }
+  return { bytes, seconds: ms / 1000 };
+}
+
+/** One write request and the read that verifies it. Throws where the driver cannot write these in one request. */
+export function writeCost(driver: CompiledDriver, writes: readonly NativeWrite[]): WireCost {
+  const request = driver.codec.planWrite(writes);
+  if (!request.ok) throw new Error(request.error);
+  const values = Object.fromEntries(writes.map(({ key, value }) => [key, value]));
+  return costOf(driver, [request.value, ...driver.codec.planReads(writes.map((write) => write.key), values)]);
+}
+
+/** Making a slot active, and reading which one is. */
+export function recallCost(driver: CompiledDriver, slot: number): WireCost {
+  return costOf(driver, [driver.codec.planAction("recall", { slot }), driver.codec.planStatus("activeSlot")]);
+}
+
+/** Storing working memory. */
+export function commitCost(driver: CompiledDriver): WireCost {
+  return costOf(driver, [driver.codec.planAction("commit", {})]);
+}
+
+/** Reading everything once: settings, and the few states that stand around them. */
+export function wholeReadCost(driver: CompiledDriver, values?: NativeValues): WireCost {
+  const reads = readsOfAll(driver, values);
+  const states = (["bootCount", "committed", "rasterOut", "activeSlot", "bootCount"] as const).map((name) => driver.codec.planStatus(name));
+  return { bytes: costOf(driver, [...reads, ...states]).bytes, seconds: wireLimitMs(driver, values) / 1000 + costOf(driver, states).seconds };
+}
+
+/** The cheapest set of requests that reads every setting once. */
+export function readsOfAll(driver: CompiledDriver, values?: NativeValues): readonly WireRequest[] {
+  return driver.codec.planReads(driver.settings.filter((setting) => setting.readable).map((setting) => setting.key), values);
+}
+
+/**
+ * The least time in which every setting can be read once, from the first request's first byte to the last reply's last byte.
+ *
+ * One at a time: requests, work, replies and the silences that the protocol demands. With k in flight: whatever is the
+ * bottleneck of line out, device and line back, and the three together shared among k.
+ * @param values fix the length of replies; a new device's by default
+ * @returns ms
+ */
+export function wireLimitMs(driver: CompiledDriver, values?: NativeValues): number {
+  const requests = readsOfAll(driver, values);
+  if (requests.length === 0) return 0;
+  const each = requests.map((request) => parts(driver, request));
+  const sum = (name: "out" | "work" | "back") => each.reduce((total, part) => total + part[name], 0);
+  const least = (name: "out" | "work" | "back") => Math.min(...each.map((part) => part[name]));
+  const { inFlight, gapMs } = driver.definition.pace;
+  const { silenceMs } = driver.codec;
+  const together = sum("out") + sum("work") + sum("back");
+  // The silence before a reply and the device's work are told apart on purpose: the one does not hide in the other.
+  if (inFlight === 1) return together + requests.length * silenceMs + (requests.length - 1) * (silenceMs + gapMs);
+  return Math.max(
+    sum("out") + least("work") + least("back"),
+    sum("work") + least("out") + least("back"),
+    sum("back") + least("out") + least("work"),
+    together / inFlight,
+  );
+}
