@@ -1,0 +1,40 @@
+import { fieldRateHz } from "@/lib/timing/rates";
+import type { Finding } from "@/lib/profile/finding";
+import { slotPath } from "@/lib/profile/paths";
+import { fieldRateText, withUnit } from "@/lib/profile/words";
+import type { CheckContext } from "./context";
+
+/** Rates nearer than this slip less than once a day. */
+const SAME_RATE_HZ = 1 / 86_400;
+
+/** "18 s", "17 minutes", "5 hours" */
+function intervalText(seconds: number): string {
+  if (seconds < 120) return withUnit(seconds, "s", seconds < 10 ? 1 : 0);
+  if (seconds < 7200) return `${Math.round(seconds / 60)} minutes`;
+  return `${Math.round(seconds / 3600)} hours`;
+}
+
+/** `rate`: in and out differ, so a frame drops or repeats every n s (n = 1 / difference). */
+export function rateFindings(context: CheckContext): Finding[] {
+  if (context.device?.outputClock === "input") return [];
+  return context.slots.flatMap(({ number, timing, source }): Finding[] => {
+    if (!timing || !source) return [];
+    const out = fieldRateHz(timing);
+    const difference = Math.abs(out - source.fieldRateHz);
+    if (difference < SAME_RATE_HZ) return [];
+    const seconds = 1 / difference;
+    return [
+      {
+        rule: "rate.slip",
+        path: slotPath(number, "mode"),
+        severity: "note",
+        measured: seconds,
+        unit: "s",
+        sentence: `A frame ${out > source.fieldRateHz ? "repeats" : "drops"} every ${intervalText(seconds)} in slot ${number}.`,
+        detail: `${fieldRateText(source.fieldRateHz)} comes in, ${fieldRateText(out)} goes out.`,
+        slots: [number],
+        remedies: [],
+      },
+    ];
+  });
+}

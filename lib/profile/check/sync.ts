@@ -1,0 +1,108 @@
+import type { ScreenEnvelope, SyncKind } from "@/lib/timing/envelope";
+import { atLeast, atMost } from "@/lib/timing/span";
+import type { Finding } from "@/lib/profile/finding";
+import type { DeviceLimits } from "@/lib/profile/limits";
+import { slotPath } from "@/lib/profile/paths";
+import { choicesOf } from "@/lib/profile/round";
+import { capital, limitSourceText, listText, spanText, withUnit } from "@/lib/profile/words";
+import type { CheckContext } from "./context";
+import { leaveOut, setValue } from "./remedies";
+
+/** Impedance of video. Source: common practice, no source. */
+const VIDEO_LOAD_OHM = 75;
+
+export const syncNames: Readonly<Record<SyncKind, string>> = {
+  separate: "separate sync",
+  composite: "composite sync",
+  onGreen: "sync on green",
+  onLuma: "sync on luma",
+};
+
+function isKind(word: string): word is SyncKind {
+  return word in syncNames;
+}
+
+/** The kinds that the device offers. */
+function offered(device: DeviceLimits | undefined): readonly SyncKind[] {
+  if (!device) return [];
+  const words = choicesOf(device, "slots[*].syncKind") ?? device.syncOutputs.map(({ kind }) => kind);
+  return words.filter(isKind);
+}
+
+/** Kinds of the screen that a slot with this sync kind does not give; null where one of them is unknown or fits. */
+export function syncKindFinding(number: number, kind: SyncKind | undefined, screen: ScreenEnvelope, device: DeviceLimits | undefined): Finding[] {
+  const kinds = screen.syncKinds;
+  if (kind === undefined || kinds === undefined || kinds.includes(kind)) return [];
+  const path = slotPath(number, "syncKind");
+  const both = offered(device).filter((one) => kinds.includes(one));
+  const ways = device ? both : kinds;
+  return [
+    {
+      rule: "sync.kind",
+      path,
+      severity: "stop",
+      measured: kind,
+      limit: kinds.join(", "),
+      sentence: `Slot ${number} gives ${syncNames[kind]}, which this screen does not take.`,
+      detail: kinds.length === 0 ? `${screen.name} lists no sync at all.` : `${screen.name} takes ${listText(kinds.map((one) => syncNames[one]))}.`,
+      limitSource: limitSourceText(screen.sources?.syncKinds),
+      slots: [number],
+      remedies: [...ways.map((one) => setValue(`Use ${syncNames[one]}`, path, one)), leaveOut(number)],
+    },
+  ];
+}
+
+type Level = { readonly vpp: number; readonly loadedVpp: number; readonly sourceOhm: number | undefined };
+
+/** Open-circuit level, and what is left of it at the screen's input. An unknown source impedance divides nothing. */
+function levelAt(output: DeviceLimits["syncOutputs"][number], loadOhm: number): Level | null {
+  if (output.vpp === undefined) return null;
+  const { vpp, sourceOhm } = output;
+  return { vpp, loadedVpp: (vpp * loadOhm) / (loadOhm + (sourceOhm ?? 0)), sourceOhm };
+}
+
+/** The series resistor that brings a level into the middle of the screen's span: the divider of source, resistor and load. */
+function seriesOhm(level: Level, loadOhm: number, targetVpp: number): number {
+  return (loadOhm * level.vpp) / targetVpp - loadOhm - (level.sourceOhm ?? 0);
+}
+
+function levelFinding(number: number, kind: SyncKind, context: CheckContext, screen: ScreenEnvelope): Finding[] {
+  const output = context.device?.syncOutputs.find((one) => one.kind === kind);
+  const { syncVpp, loadOhm = VIDEO_LOAD_OHM } = screen;
+  const level = output && levelAt(output, loadOhm);
+  if (!level || !syncVpp) return [];
+  const strong = !atMost(level.loadedVpp, syncVpp[1]);
+  if (!strong && atLeast(level.loadedVpp, syncVpp[0])) return [];
+  const target = (syncVpp[0] + syncVpp[1]) / 2;
+  const ohm = withUnit(seriesOhm(level, loadOhm, target), "Ω", 0);
+  const span = spanText(syncVpp, (value) => withUnit(value, "V", 2));
+  const name = capital(syncNames[kind]);
+  return [
+    {
+      rule: "sync.level",
+      path: slotPath(number, "syncKind"),
+      severity: "caution",
+      measured: level.loadedVpp,
+      limit: syncVpp,
+      unit: "V",
+      sentence: strong ? `${name} can be too strong for this screen.` : `${name} can be too weak for this screen.`,
+      detail:
+        `This device drives ${withUnit(level.vpp, "V", 2)} before a load, ${withUnit(level.loadedVpp, "V", 2)} into ${withUnit(loadOhm, "Ω", 0)}; ` +
+        `your screen lists ${span}. ` +
+        (strong ? `Measure first, or fit an in-line resistor of about ${ohm} for ${withUnit(target, "V", 2)}.` : "Only an amplifier helps."),
+      limitSource: limitSourceText(screen.sources?.syncVpp),
+      slots: [number],
+      remedies: [],
+    },
+  ];
+}
+
+/** `sync`: the kind of sync that a slot gives, and how strong it is at the screen. */
+export function syncFindings(context: CheckContext): Finding[] {
+  const { screen, device } = context;
+  if (!screen) return [];
+  return context.slots.flatMap(({ number, slot }) => [
+    ...syncKindFinding(number, slot.syncKind, screen, device),
+    ...(slot.syncKind === undefined ? [] : levelFinding(number, slot.syncKind, context, screen)),
+  ]);
+}
