@@ -16,6 +16,14 @@ export type Route<D extends RouteDeclaration> = ((request: Request, context: Rou
   readonly declaration: D;
 };
 
+/** Every handler that the wrapper made: a test asks whether there is any other. */
+const routes = new WeakSet<object>();
+
+/** True for a handler that `withRoute` made. */
+export function isRoute(handler: unknown): boolean {
+  return typeof handler === "function" && routes.has(handler);
+}
+
 const ports = {
   sessionUser: getSessionUser,
   takeAllowance: (key: string, perMinute: number) => takeAllowance(db, key, perMinute),
@@ -57,6 +65,7 @@ export function withRoute<
     });
     return finish(outcome.response, requestId);
   };
+  routes.add(route);
   return Object.assign(route, { declaration });
 }
 
