@@ -13,6 +13,7 @@ import {
   unique,
   uuid,
 } from "drizzle-orm/pg-core";
+import type { ProfileOutline } from "@/lib/contracts/profile";
 import type { ProfileDocument } from "@/lib/profile/document";
 import { user } from "@/db/schema/user";
 
@@ -33,6 +34,8 @@ export const profile = pgTable(
     title: text("title").notNull(),
     summary: text("summary").notNull().default(""),
     currentRevision: integer("current_revision").notNull(),
+    /** Its first modes and counts, for lists: documents can be a thousand times larger. */
+    outline: jsonb("outline").$type<ProfileOutline>().notNull(),
     /** Slowest and fastest line rate of its modes. Null: it states no timing. */
     lineRateMinHz: doublePrecision("line_rate_min_hz"),
     lineRateMaxHz: doublePrecision("line_rate_max_hz"),
