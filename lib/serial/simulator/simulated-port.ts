@@ -77,8 +77,8 @@ export class SimulatedSerialPort extends EventTree implements SerialPortLike {
   }
 
   get readable(): ReadableStream<Uint8Array> | null {
-    if (this.#readable) return this.#readable;
-    if (this.#state !== "opened" || this.#readFatal) return null;
+    if (this.#state !== "opened") return null;
+    if (this.#readable || this.#readFatal) return this.#readable;
     const pipe = new BytePipe(this.#bufferBytes);
     const source = new StreamSource(pipe, {
       isClosing: () => this.#state === "closing",
@@ -92,8 +92,8 @@ export class SimulatedSerialPort extends EventTree implements SerialPortLike {
   }
 
   get writable(): WritableStream<Uint8Array> | null {
-    if (this.#writable) return this.#writable;
-    if (this.#state !== "opened" || this.#writeFatal) return null;
+    if (this.#state !== "opened") return null;
+    if (this.#writable || this.#writeFatal) return this.#writable;
     const pipe = new BytePipe(this.#bufferBytes);
     const sink = new StreamSink(pipe, {
       isClosing: () => this.#state === "closing",

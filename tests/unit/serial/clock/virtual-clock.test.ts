@@ -59,7 +59,9 @@ describe("virtual clock", () => {
 
   test("says so when nothing is left that could settle the promise", async () => {
     const clock = createVirtualClock({ startMs: 4 });
-    await expect(clock.run(new Promise(() => undefined))).rejects.toThrow("Nothing can settle the promise: at 4.000 ms no timer is set.");
+    await expect(clock.run(new Promise(() => undefined))).rejects.toThrow(
+      "Nothing can settle the promise: at 4.000 ms no timer is set.",
+    );
   });
 
   test("stops at the limit and names what is pending", async () => {
