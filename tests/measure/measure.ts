@@ -1,0 +1,44 @@
+import { readdirSync, writeFileSync } from "node:fs";
+import path from "node:path";
+
+/** One figure and the most that it may be, in the same unit. */
+export type Measurement = {
+  readonly name: string;
+  readonly value: number;
+  readonly unit: string;
+  readonly limit: number;
+};
+
+type Measure = () => Promise<readonly Measurement[]>;
+
+/** Every `measure…` function that the files beside this one export, by file and name. */
+async function findMeasures(): Promise<readonly (readonly [string, Measure])[]> {
+  const files = readdirSync(import.meta.dirname).filter((file) => file.endsWith(".ts") && file !== "measure.ts");
+  const found: (readonly [string, Measure])[] = [];
+  for (const file of files.sort()) {
+    const exported = (await import(path.join(import.meta.dirname, file))) as Record<string, unknown>;
+    for (const [name, measure] of Object.entries(exported)) {
+      // The cast holds by the convention of this folder; what comes back is checked before it is used.
+      if (name.startsWith("measure") && typeof measure === "function") found.push([`${file} ${name}`, measure as Measure]);
+    }
+  }
+  return found;
+}
+
+function line({ name, value, unit, limit }: Measurement): string {
+  const share = (value / limit).toFixed(3);
+  const verdict = value <= limit ? "within" : "OVER";
+  return `${name.padEnd(60)} ${value.toPrecision(5).padStart(12)} ${unit.padEnd(8)} limit ${limit.toPrecision(5)}  ${share} ${verdict}`;
+}
+
+const measurements: Measurement[] = [];
+for (const [name, measure] of await findMeasures()) {
+  for (const one of await measure()) {
+    if (!Number.isFinite(one.value) || !(one.limit > 0)) throw new Error(`${name}: ${one.name} is no figure.`);
+    measurements.push(one);
+    console.log(line(one));
+  }
+}
+writeFileSync("measurements.json", `${JSON.stringify(measurements, null, 2)}\n`);
+if (measurements.length === 0) throw new Error("Nothing was measured.");
+process.exit(measurements.every(({ value, limit }) => value <= limit) ? 0 : 1);
