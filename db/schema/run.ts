@@ -17,25 +17,15 @@ import {
 import type { JournalEntry, OwnerWord, RunState } from "@/lib/serial/run/types";
 import { backup } from "@/db/schema/backup";
 import { plan } from "@/db/schema/plan";
+import { runTransitions } from "@/db/schema/run-transitions";
 
 /** States in which a run no longer holds its device. */
 const final = sql.raw(`('kept', 'called-off', 'put-back', 'left')`);
 
-/**
- * Every step that a run may take, as "from>to". After a loss a run may stand in any state that a whole read can show,
- * so the states between ready and the end lead to several others.
- */
-const transitions = sql.raw(
-  [
-    ["ready", ["writing", "called-off"]],
-    ["writing", ["trying", "keeping", "kept", "putting-back", "put-back", "unconfirmed", "mixed"]],
-    ["trying", ["keeping", "putting-back", "put-back", "unconfirmed", "mixed"]],
-    ["keeping", ["trying", "kept", "putting-back", "put-back", "unconfirmed", "mixed"]],
-    ["putting-back", ["trying", "kept", "put-back", "unconfirmed", "mixed"]],
-    ["unconfirmed", ["writing", "trying", "putting-back", "kept", "put-back", "mixed", "left"]],
-    ["mixed", ["writing", "trying", "putting-back", "kept", "put-back", "unconfirmed", "left"]],
-  ]
-    .flatMap(([from, targets]) => (targets as string[]).map((to) => `'${from as string}>${to}'`))
+/** Every allowed move, as "from>to". */
+const moves = sql.raw(
+  Object.entries(runTransitions)
+    .flatMap(([from, targets]) => targets.map((to) => `'${from}>${to}'`))
     .join(", "),
 );
 
@@ -83,7 +73,7 @@ export const run = pgTable(
     ),
     check(
       "run_transition_allowed",
-      sql`(${table.cameFrom} is null and ${table.state} = 'ready') or coalesce(${table.cameFrom}, '') || '>' || ${table.state} in (${transitions})`,
+      sql`(${table.cameFrom} is null and ${table.state} = 'ready') or coalesce(${table.cameFrom}, '') || '>' || ${table.state} in (${moves})`,
     ),
     check("run_end_stated", sql`(${table.endedAt} is not null) = (${table.state} in ${final})`),
     check("run_countdown_bounds", sql`${table.countdownSeconds} between 10 and 120`),
