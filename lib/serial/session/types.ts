@@ -1,6 +1,6 @@
 import type { Result } from "@/lib/result";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
-import type { NativeKey, NativeValues, NativeWrite } from "../native";
+import type { NativeKey, NativeValues, NativeWrite } from "@/lib/serial/native";
 
 /** Why a request gave no answer, or not the wanted one. `lost` and `timeout` of a write mean *unknown*, never "failed". */
 export type RequestError = {
@@ -44,6 +44,15 @@ export type ReadProgress = { readonly done: number; readonly total: number; read
 
 /** The outcome of one write request. `unknown`: the reply was lost; read it back. */
 export type WriteOutcome = { readonly outcome: "acknowledged" } | { readonly outcome: "unknown"; readonly message: string };
+
+/** Why a session did not come to be. `open-refused`: the system refuses, with one message for all causes. */
+export type OpenFailure =
+  | { readonly code: "open-refused" }
+  | { readonly code: "already-open" }
+  | { readonly code: "other-device"; readonly found: string; readonly wanted: string }
+  /** The port is open and nobody answers; `detail` says what was awaited. */
+  | { readonly code: "silent"; readonly detail: string }
+  | { readonly code: "other"; readonly detail: string };
 
 export type SessionState =
   | { readonly name: "closed" }

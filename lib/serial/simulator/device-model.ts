@@ -21,6 +21,8 @@ export type DeviceModelOptions = {
   readonly source?: SourceFormat | null | undefined;
   /** The slot that is on at first; by default the one of the device's own setting. */
   readonly activeSlot?: number | undefined;
+  /** How often it was started before, this time included; 1 by default. */
+  readonly bootCount?: number | undefined;
 };
 
 /** A simulated device: bytes on one side, and on the other what only a simulated device can show. */
@@ -64,6 +66,7 @@ export function createDeviceModel(driver: CompiledDriver, options: DeviceModelOp
     serialNumber: options.serialNumber ?? `${definition.model.replace(/[^A-Za-z0-9]/gu, "")}-0001`,
   };
   const memory = createMemory(driver, options.values ?? {}, options.activeSlot);
+  memory.bootCount = options.bootCount ?? 1;
   memory.source = options.source === undefined ? DEFAULT_SOURCE : options.source;
   const core = createDeviceCore(driver, memory, clock, identity);
   const changed = new Set<() => void>();
