@@ -1,0 +1,173 @@
+"use client";
+
+import Link from "next/link";
+import { useRouter } from "next/navigation";
+import { useState } from "react";
+import { ScreenDetail } from "@/components/screens/screen-detail";
+import { bandsInShort } from "@/components/screens/limit-words";
+import { useDeleteScreen, useScreens } from "@/components/screens/use-screens";
+import { signInPath } from "@/components/shell/navigation";
+import { useSignedIn } from "@/components/shell/signed-in";
+import { Button, ButtonLink } from "@/components/ui/button";
+import { classNames } from "@/components/ui/class-names";
+import { Confirm } from "@/components/ui/dialog";
+import { PageHead } from "@/components/ui/page-head";
+import { ProblemMessage } from "@/components/ui/problem-message";
+import { useToast } from "@/components/ui/toast";
+import type { ScreenView } from "@/lib/contracts/screen";
+import type { ScreenEnvelope } from "@/lib/timing/envelope";
+import { screenPresets } from "@/lib/timing/screen-presets";
+import type { ScreenPreset } from "@/lib/timing/screen-presets";
+
+/** Screens of the owner and standard envelopes in a list, the chosen one whole beside it. */
+export function ScreensView({ shown }: { readonly shown: string | null }) {
+  const user = useSignedIn();
+  const screens = useScreens();
+  const mine = screens.data ?? [];
+  const isWaiting = user !== null && screens.isPending;
+  const chosen = mine.find((screen) => screen.id === shown);
+  const preset = screenPresets.find((each) => each.id === shown) ?? (shown === null && mine.length === 0 && !isWaiting ? screenPresets[0] : undefined);
+  const first = chosen ?? (preset === undefined ? mine[0] : undefined);
+  return (
+    <div className="gutter flex flex-1 flex-col">
+      <PageHead
+        title="Screens"
+        lead="What each CRT takes, and where that figure comes from. Every check before a write is made against one of these."
+        acts={
+          <ButtonLink kind="primary" href={user === null ? signInPath("/screens/new") : "/screens/new"}>
+            Add a screen
+          </ButtonLink>
+        }
+      />
+      <div className="-mx-4 grid flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
+        <div className="px-4 py-4 max-lg:border-b lg:border-r md:px-7 border-line">
+          <OwnScreens screens={mine} current={first?.id} isWaiting={isWaiting} />
+          {screens.error === null ? null : <ProblemMessage error={screens.error} act={<Button onClick={() => void screens.refetch()}>Try again</Button>} />}
+          <h2 className="mt-6 mb-1 text-lg">Standard envelopes</h2>
+          <p className="mb-2 text-sm text-muted">To start from. The set’s service literature decides.</p>
+          <ul>
+            {screenPresets.map((each) => (
+              <ScreenLink key={each.id} id={each.id} envelope={each.envelope} current={preset?.id === each.id} />
+            ))}
+          </ul>
+          <p className="mt-6 border-l-3 border-edge pl-3 text-sm text-muted">
+            Inside a CRT cabinet voltages stay lethal after switch-off. Service work belongs to a licensed technician; local codes come first.
+          </p>
+        </div>
+        <div className="min-w-0 px-4 pt-5 pb-10 md:px-7">
+          {first !== undefined ? <OwnScreenDetail key={first.id} screen={first} /> : preset !== undefined ? <PresetDetail preset={preset} /> : null}
+        </div>
+      </div>
+    </div>
+  );
+}
+
+function OwnScreens({ screens, current, isWaiting }: { readonly screens: readonly ScreenView[]; readonly current: string | undefined; readonly isWaiting: boolean }) {
+  const user = useSignedIn();
+  return (
+    <>
+      <h2 className="mb-1 text-lg">Yours</h2>
+      {screens.length > 0 ? (
+        <ul>
+          {screens.map((screen) => (
+            <ScreenLink
+              key={screen.id}
+              id={screen.id}
+              envelope={screen.envelope}
+              current={screen.id === current}
+              aside={screen.devices.map((device) => device.name).join(", ")}
+            />
+          ))}
+        </ul>
+      ) : (
+        <p className="text-sm text-muted">
+          {isWaiting
+            ? "Loading"
+            : user === null
+              ? "Sign in to keep your own. The envelopes below can be looked at by everybody."
+              : "None yet. Start from an envelope below, or add one by hand."}
+        </p>
+      )}
+    </>
+  );
+}
+
+function ScreenLink({ id, envelope, current, aside }: { readonly id: string; readonly envelope: ScreenEnvelope; readonly current: boolean; readonly aside?: string }) {
+  return (
+    <li>
+      <Link
+        href={`/screens?show=${id}`}
+        scroll={false}
+        aria-current={current ? "true" : undefined}
+        className={classNames("block border-b border-line px-3 py-2 hover:bg-surface", current && "bg-surface shadow-[inset_3px_0_0_var(--lamp)]")}
+      >
+        <span className="block font-strong">{envelope.name}</span>
+        <span className="figure block text-muted">{bandsInShort(envelope)}</span>
+        {aside === undefined || aside === "" ? null : <span className="block text-sm text-muted">before it: {aside}</span>}
+      </Link>
+    </li>
+  );
+}
+
+function PresetDetail({ preset }: { readonly preset: ScreenPreset }) {
+  const user = useSignedIn();
+  const target = `/screens/new?from=${preset.id}`;
+  const notes = Object.fromEntries(Object.entries(preset.basis).map(([limit, basis]) => [limit, basis.note]));
+  return (
+    <ScreenDetail
+      envelope={preset.envelope}
+      above="Standard envelope"
+      notes={notes}
+      acts={<ButtonLink href={user === null ? signInPath(target) : target}>Start from this</ButtonLink>}
+    />
+  );
+}
+
+function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
+  const [asking, setAsking] = useState(false);
+  const router = useRouter();
+  const toast = useToast();
+  const remove = useDeleteScreen();
+  const onDelete = () =>
+    remove.mutate(screen, {
+      onSuccess: () => {
+        toast({ text: `${screen.name} was deleted.` });
+        router.replace("/screens");
+      },
+    });
+  return (
+    <ScreenDetail
+      envelope={screen.envelope}
+      above={screen.devices.length === 0 ? "No device stands before it" : `Before it: ${screen.devices.map((device) => device.name).join(", ")}`}
+      acts={
+        <>
+          <ButtonLink href={`/screens/${screen.id}/edit`}>Edit</ButtonLink>
+          <ButtonLink href={`/library?screen=${screen.id}`}>Profiles that fit</ButtonLink>
+          <Button kind="halt" onClick={() => setAsking(true)}>
+            Delete
+          </Button>
+        </>
+      }
+      foot={
+        <>
+          {screen.notes === "" ? null : (
+            <>
+              <h3 className="mt-6 mb-1 text-lg">Notes</h3>
+              <p className="max-w-[70ch] whitespace-pre-wrap">{screen.notes}</p>
+            </>
+          )}
+          {remove.error === null ? null : <ProblemMessage error={remove.error} />}
+          <Confirm
+            open={asking}
+            onOpenChange={setAsking}
+            title={`Delete ${screen.name}?`}
+            description="Its limits are gone then. Devices that stand before it have no screen, and nothing is written to a device without one."
+            act="Delete"
+            actKind="halt"
+            onAct={onDelete}
+          />
+        </>
+      }
+    />
+  );
+}
