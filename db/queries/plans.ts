@@ -42,7 +42,19 @@ function viewOf({ checked, createdAt, ...row }: Row): PlanView {
 export type StoredTarget =
   | { readonly kind: "revision"; readonly revisionId: string; readonly document: ProfileDocument }
   | { readonly kind: "restore"; readonly backupId: string }
-  | { readonly kind: "document"; readonly document: ProfileDocument };
+  | { readonly kind: "document"; readonly document: ProfileDocument }
+  | { readonly kind: "edits"; readonly target: PlanInput["target"] };
+
+function targetColumns(target: StoredTarget) {
+  const made = target.kind === "edits" ? target.target : null;
+  return {
+    targetKind: target.kind,
+    targetRevisionId: target.kind === "revision" ? target.revisionId : null,
+    targetBackupId: target.kind === "restore" ? target.backupId : null,
+    targetDocument: "document" in target ? target.document : made?.kind === "profile" ? made.document : null,
+    targetContent: made?.kind === "restore" ? made.content : null,
+  };
+}
 
 export type PlanValues = {
   readonly deviceId: string;
@@ -74,10 +86,7 @@ export async function createPlan(db: Db, ownerId: string, values: PlanValues): P
         ownerId,
         deviceId,
         backupId,
-        targetKind: target.kind,
-        targetRevisionId: target.kind === "revision" ? target.revisionId : null,
-        targetBackupId: target.kind === "restore" ? target.backupId : null,
-        targetDocument: target.kind === "restore" ? null : target.document,
+        ...targetColumns(target),
         leftOut: checked.input.leftOut,
         screen: screen?.envelope ?? null,
         screenId: screen?.id ?? null,
@@ -112,7 +121,7 @@ export async function getPlan(db: Db, { ownerId, id }: OwnedKey): Promise<Result
   if (row === undefined) return fail("absent");
   const rested = await getBackup(db, { ownerId, id: row.backupId });
   if (!rested.ok) return rested;
-  const target = await targetOf(db, ownerId, row.targetDocument, row.targetBackupId);
+  const target = await targetOf(db, ownerId, row);
   if (!target.ok) return target;
   const { content, arriving, rasterOut } = rested.value;
   return ok({
@@ -131,14 +140,12 @@ export async function getPlan(db: Db, { ownerId, id }: OwnedKey): Promise<Result
   });
 }
 
-async function targetOf(
-  db: Db,
-  ownerId: string,
-  document: ProfileDocument | null,
-  backupId: string | null,
-): Promise<Result<PlanInput["target"], "absent">> {
-  if (document !== null) return ok({ kind: "profile", document });
-  // The table's own check says that one of the two stands.
-  const found = await getBackup(db, { ownerId, id: backupId ?? "" });
+type TargetColumns = Pick<ReturnType<typeof targetColumns>, "targetBackupId" | "targetDocument" | "targetContent">;
+
+/** The table's own check says that exactly one of the three stands. */
+async function targetOf(db: Db, ownerId: string, row: TargetColumns): Promise<Result<PlanInput["target"], "absent">> {
+  if (row.targetDocument !== null) return ok({ kind: "profile", document: row.targetDocument });
+  if (row.targetContent !== null) return ok({ kind: "restore", content: row.targetContent });
+  const found = await getBackup(db, { ownerId, id: row.targetBackupId ?? "" });
   return found.ok ? ok({ kind: "restore", content: found.value.content }) : found;
 }

@@ -13,12 +13,13 @@ import {
   uuid,
 } from "drizzle-orm/pg-core";
 import type { ProfileDocument } from "@/lib/profile/document";
+import type { BackupContent } from "@/lib/serial/backup/types";
 import type { CheckedPlan } from "@/lib/serial/plan/types";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { backup } from "@/db/schema/backup";
 import { revision } from "@/db/schema/profile";
 
-export const targetKinds = ["revision", "restore", "document"] as const;
+export const targetKinds = ["revision", "restore", "document", "edits"] as const;
 
 /** What a run carries out, for the page and the journal: the whole input is in the other columns. */
 export type StoredPlan = Pick<
@@ -38,8 +39,10 @@ export const plan = pgTable(
     targetKind: text("target_kind", { enum: targetKinds }).notNull(),
     targetRevisionId: uuid("target_revision_id").references(() => revision.id),
     targetBackupId: uuid("target_backup_id"),
-    /** As laid over the backup; for a restore, null. */
+    /** As laid over the backup. */
     targetDocument: jsonb("target_document").$type<ProfileDocument>(),
+    /** The backup's own content with settings edited that no document has a word for. */
+    targetContent: jsonb("target_content").$type<BackupContent>(),
     leftOut: jsonb("left_out").$type<readonly number[]>().notNull(),
     /** The envelope that was checked against, as it was then. Null: the owner accepted an unknown screen. */
     screen: jsonb("screen").$type<ScreenEnvelope>(),
@@ -67,11 +70,12 @@ export const plan = pgTable(
     check("plan_screen_or_accepted", sql`(${table.screen} is null) = ${table.acceptedUnknown}`),
     check(
       "plan_target_whole",
-      sql`(${table.targetKind} = 'revision') = (${table.targetRevisionId} is not null)
+      sql`num_nonnulls(${table.targetBackupId}, ${table.targetDocument}, ${table.targetContent}) = 1
+        and (${table.targetKind} = 'revision') = (${table.targetRevisionId} is not null)
         and (${table.targetKind} = 'restore') = (${table.targetBackupId} is not null)
-        and (${table.targetKind} = 'restore') = (${table.targetDocument} is null)`,
+        and (${table.targetKind} = 'edits' or ${table.targetContent} is null)`,
     ),
-    check("plan_target_kind_known", sql`${table.targetKind} in ('revision', 'restore', 'document')`),
+    check("plan_target_kind_known", sql`${table.targetKind} in ('revision', 'restore', 'document', 'edits')`),
     check("plan_hash_form", sql`${table.hash} ~ '^[0-9a-f]{64}$'`),
   ],
 );

@@ -5,6 +5,8 @@ import { idSchema, timeSchema } from "@/lib/contracts/page";
 
 const hash = z.string().regex(/^[0-9a-f]{64}$/u, "is not a SHA-256 in hex");
 
+const nativeWrite = z.object({ key: z.string().max(160), value: z.union([z.number().int(), z.string().max(128)]) });
+
 export const planTarget = z.discriminatedUnion("kind", [
   /** A published revision, with the remedies that were taken, in their order. */
   z.object({
@@ -14,8 +16,14 @@ export const planTarget = z.discriminatedUnion("kind", [
   }),
   /** A backup of this device or of another of the same driver. */
   z.object({ kind: z.literal("restore"), backupId: idSchema }),
-  /** Settings changed by hand, or a file that was not published. */
+  /** A document that was not published. */
   z.object({ kind: z.literal("document"), document: profileDocumentSchema }),
+  /** Settings changed by hand, by the backup's own slots and modes; `native` for those that no document has a word for. */
+  z.object({
+    kind: z.literal("edits"),
+    edits: z.array(documentPatchSchema).max(2000),
+    native: z.array(nativeWrite).max(2000).default([]),
+  }),
 ]);
 
 /**
@@ -32,8 +40,6 @@ export const newPlan = z.object({
   hash,
 });
 export type NewPlan = z.input<typeof newPlan>;
-
-const nativeWrite = z.object({ key: z.string(), value: z.union([z.number(), z.string()]) });
 
 /** The ETag is the hash. */
 export const planView = z.object({
