@@ -19,19 +19,21 @@ function timingsOf(modes: readonly ProfileMode[]): ReadonlyMap<string, ProfileMo
 
 /**
  * What `merged` leaves as `base` has it: slots whose own values and whose mode's timing are the same, and modes that
- * no changed slot uses.
+ * are the same and that no changed slot uses.
  */
 export function unchangedBetween(base: ProfileDocument, merged: ProfileDocument): Unchanged {
   const [before, after] = [timingsOf(base.modes ?? []), timingsOf(merged.modes ?? [])];
   const slotsBefore = new Map((base.slots ?? []).map((slot) => [slot.number, slot]));
+  const modesBefore = new Map((base.modes ?? []).map((mode) => [mode.key, mode]));
   const changed = (merged.slots ?? []).filter((slot) => {
     const timingSame = slot.mode === undefined || same(before.get(slot.mode), after.get(slot.mode));
     return !timingSame || !same(held(slotsBefore.get(slot.number)), held(slot));
   });
   const changedNumbers = new Set(changed.map((slot) => slot.number));
   const usedByChanged = new Set(changed.map((slot) => slot.mode));
+  const stays = (mode: ProfileMode) => !usedByChanged.has(mode.key) && same(modesBefore.get(mode.key), mode);
   return {
     slots: (merged.slots ?? []).map((slot) => slot.number).filter((number) => !changedNumbers.has(number)),
-    modes: (merged.modes ?? []).map((mode) => mode.key).filter((key) => !usedByChanged.has(key)),
+    modes: (merged.modes ?? []).filter(stays).map((mode) => mode.key),
   };
 }
