@@ -60,8 +60,10 @@ export type CheckedPlan = {
   /** Rasters allowed on the way, the one out at the start first. */
   readonly rasterBefore: RasterTiming | null;
   readonly rasterAfter: RasterTiming | null;
+  /** Of the writes, read-backs and recalls, at the device's pace; whole reads come on top. */
   readonly bytes: number;
   readonly seconds: number;
+  readonly wholeReadSeconds: number;
   readonly input: PlanInput;
 };
 

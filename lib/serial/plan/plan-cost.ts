@@ -1,0 +1,34 @@
+import type { CompiledDriver } from "@/lib/serial/driver/compiled";
+import { recallCost, wholeReadCost, writeCost, type WireCost } from "@/lib/serial/driver/costs";
+import type { PlanStep } from "./types";
+
+const NOTHING: WireCost = { bytes: 0, seconds: 0 };
+
+function stepCost(driver: CompiledDriver, step: PlanStep): WireCost {
+  switch (step.kind) {
+    case "write":
+      return writeCost(driver, step.writes);
+    case "recall":
+      return recallCost(driver, step.slot);
+    case "mute":
+      // One order without a read-back; what it costs is lost beside a single write.
+      return NOTHING;
+  }
+}
+
+const wholeReads = new WeakMap<CompiledDriver, number>();
+
+/** Seconds of a whole read, for a device with a new one's values: texts make it longer by less than a second. */
+export function wholeReadSeconds(driver: CompiledDriver): number {
+  const known = wholeReads.get(driver) ?? wholeReadCost(driver).seconds;
+  wholeReads.set(driver, known);
+  return known;
+}
+
+/** Bytes both ways and seconds of a plan's requests and their read-backs. */
+export function stepsCost(driver: CompiledDriver, steps: readonly PlanStep[]): WireCost {
+  return steps.map((step) => stepCost(driver, step)).reduce(
+    (sum, cost) => ({ bytes: sum.bytes + cost.bytes, seconds: sum.seconds + cost.seconds }),
+    NOTHING,
+  );
+}
