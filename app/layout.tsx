@@ -2,8 +2,10 @@ import type { Metadata, Viewport } from "next";
 import { cookies, headers } from "next/headers";
 import type { ReactNode } from "react";
 import { headingFont, monoFont, textFont } from "@/app/fonts";
+import { BenchProvider } from "@/components/bench/bench-provider";
 import { Providers } from "@/components/shell/providers";
 import { readTheme, THEME_COOKIE } from "@/components/shell/theme";
+import { getSessionUser } from "@/lib/server/session";
 import "./globals.css";
 
 export const metadata: Metadata = {
@@ -23,6 +25,8 @@ export default async function RootLayout({ children }: { readonly children: Reac
   const nonce = (await headers()).get("x-nonce") ?? undefined;
   // The cookie gives the theme with the first byte, so nothing flashes.
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
+  // The link outlives a page: its bench stands above all of them.
+  const user = await getSessionUser();
   return (
     <html
       lang="en-GB"
@@ -32,7 +36,9 @@ export default async function RootLayout({ children }: { readonly children: Reac
       className={`${headingFont.variable} ${textFont.variable} ${monoFont.variable}`}
     >
       <body>
-        <Providers nonce={nonce}>{children}</Providers>
+        <Providers nonce={nonce}>
+          <BenchProvider account={user === null ? null : { id: user.id, name: user.name, role: user.role }}>{children}</BenchProvider>
+        </Providers>
       </body>
     </html>
   );

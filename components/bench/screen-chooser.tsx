@@ -1,0 +1,41 @@
+"use client";
+
+import Link from "next/link";
+import { SelectField } from "@/components/ui/field";
+import { useBench, useBenchActions } from "@/components/bench/bench-provider";
+import { useScreenChoices } from "@/components/bench/use-screen-choices";
+import type { BenchScreen } from "@/components/bench/store/types";
+
+const NONE = "none";
+const UNKNOWN = "unknown";
+
+function keyOf(screen: BenchScreen): string {
+  if (screen.kind === "none") return NONE;
+  return screen.kind === "accepted-unknown" ? UNKNOWN : (screen.id ?? `name:${screen.envelope.name}`);
+}
+
+/** Which screen the signal goes to: everything is checked against it. */
+export function ScreenChooser() {
+  const choices = useScreenChoices();
+  const screen = useBench((state) => state.screen);
+  const isRunning = useBench((state) => state.activity === "running");
+  const { chooseScreen, acceptUnknownScreen, forgetScreen } = useBenchActions();
+  const current = screen.kind === "known" ? choices.find((choice) => (screen.id === null ? choice.envelope.name === screen.envelope.name : choice.id === screen.id)) : undefined;
+  const choose = (key: string) => {
+    const choice = choices.find((one) => one.key === key);
+    if (choice) chooseScreen(choice.envelope, choice.id);
+    else if (key === UNKNOWN) acceptUnknownScreen();
+    else forgetScreen();
+  };
+  return (
+    <SelectField
+      label="Screen" disabled={isRunning} value={current?.key ?? keyOf(screen)} onChange={(event) => choose(event.target.value)}
+      aside={<Link className="link" href="/screens">Screens</Link>}
+      options={[
+        { value: NONE, label: "Not chosen" },
+        ...choices.map(({ key, label }) => ({ value: key, label })),
+        { value: UNKNOWN, label: "Unknown, and I accept that" },
+      ]}
+    />
+  );
+}

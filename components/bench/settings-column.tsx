@@ -1,0 +1,81 @@
+"use client";
+
+import { useState } from "react";
+import { Button } from "@/components/ui/button";
+import { SelectField } from "@/components/ui/field";
+import { Segmented } from "@/components/ui/segmented";
+import { RangeRuler } from "@/components/video/range-ruler";
+import { formatCount } from "@/components/ui/figures";
+import { applyPatch } from "@/lib/profile/paths";
+import { safeStretch } from "@/lib/profile/safe-stretch";
+import { alsoMoved, settingRows, type Reach, type SettingRow } from "@/components/bench/setting-rows";
+import { useBench, useBenchActions, useSettled } from "@/components/bench/bench-provider";
+import { formatSetting } from "@/components/bench/format-value";
+
+const REACHES = [
+  { value: "everywhere", label: "Everywhere" },
+  { value: "mode", label: "This mode" },
+  { value: "slot", label: "This slot" },
+] as const;
+
+function reachWords(reach: Reach, slot: number, others: readonly number[]): string {
+  if (reach === "slot") return `Moves slot ${slot} alone.`;
+  const list = others.length === 0 ? "no other slot" : `slots ${others.join(", ")} too`;
+  return reach === "mode" ? `Moves every slot with this mode: ${list}.` : `Moves every slot: ${list}.`;
+}
+
+/** Settings by what they act on, each on its range ruler. Changes gather until they are reviewed as a plan. */
+export function SettingsColumn({ slot }: { readonly slot: number }) {
+  const [reach, setReach] = useState<Reach>("slot");
+  const device = useBench((state) => state.device);
+  const reading = useBench((state) => state.reading);
+  const edits = useBench((state) => state.edits);
+  const screen = useBench((state) => state.screen);
+  const { edit, clearEdits, reviewEdits } = useBenchActions();
+  const isFree = useSettled();
+  if (!device || !reading) return null;
+  const now = reading.content.document;
+  const planned = applyPatch(now, edits);
+  const rows = settingRows(reach, now, planned, device.limits, slot);
+  const envelope = screen.kind === "known" ? screen.envelope : undefined;
+  return (
+    <section aria-labelledby="settings-head">
+      <h2 id="settings-head" className="mb-2 text-xl">Settings</h2>
+      <Segmented label="What a setting acts on" value={reach} onChange={setReach} choices={REACHES} />
+      <p className="mt-2 mb-1 text-sm text-muted">{reachWords(reach, slot, alsoMoved(reach, planned, slot))}</p>
+      {rows.length === 0 ? <p className="py-4 text-muted">Slot {slot} is empty: it has no mode to adjust.</p> : null}
+      {rows.map((row) => (
+        <SettingControl
+          key={row.path} row={row} disabled={!isFree} onChange={(value) => edit({ path: row.path, value })}
+          safe={envelope && row.range ? safeStretch(row.path, { document: planned, device: device.limits, screen: envelope }) : undefined}
+        />
+      ))}
+      <div className="mt-4 flex flex-wrap items-center gap-3 border-t border-line pt-4" aria-live="polite">
+        <Button kind="primary" disabled={!isFree || edits.length === 0} onClick={reviewEdits}>Review the plan</Button>
+        <Button disabled={edits.length === 0} onClick={clearEdits}>Discard</Button>
+        <span className="text-sm text-muted">{edits.length === 0 ? "Nothing is changed yet." : `${formatCount(edits.length, "value", "values")} changed here, nothing sent.`}</span>
+      </div>
+    </section>
+  );
+}
+
+type ControlProps = { readonly row: SettingRow; readonly safe: readonly [number, number] | null | undefined; readonly disabled: boolean; readonly onChange: (value: number | string) => void };
+
+function SettingControl({ row, safe, disabled, onChange }: ControlProps) {
+  const { setting, range, choices } = row;
+  if (range !== undefined && typeof row.planned === "number") {
+    return (
+      <RangeRuler
+        label={setting.label} unit={setting.unit ?? ""} range={range} safe={safe} disabled={disabled} onChange={onChange}
+        now={typeof row.now === "number" ? row.now : undefined} planned={row.planned === row.now ? undefined : row.planned}
+      />
+    );
+  }
+  if (choices === undefined || typeof row.planned !== "string") return null;
+  return (
+    <SelectField
+      label={setting.label} value={row.planned} disabled={disabled} onChange={(event) => onChange(event.target.value)} fieldClassName="py-2"
+      options={choices.map((choice) => ({ value: choice, label: formatSetting(choice, setting) }))}
+    />
+  );
+}

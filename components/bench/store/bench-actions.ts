@@ -1,0 +1,89 @@
+import { getValue } from "@/lib/profile/paths";
+import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
+import type { SourceFormat } from "@/lib/timing/raster";
+import type { ScreenEnvelope } from "@/lib/timing/envelope";
+import { say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
+import { connectReal, connectSimulated, disconnect, reconnect } from "@/components/bench/store/linking";
+import { backUp, readDevice } from "@/components/bench/store/reading";
+import { askRecall, recallHeld } from "@/components/bench/store/recalling";
+import { acknowledge, leaveOut, openReview, setCountdown, takeRemedy, withEdit } from "@/components/bench/store/review";
+import { act } from "@/components/bench/store/run-control";
+import { acceptUnknownScreen, chooseScreen, forgetScreen } from "@/components/bench/store/screens";
+import { backUpAndTry } from "@/components/bench/store/try-plan";
+import type { BenchTarget } from "@/components/bench/store/types";
+
+/** Everything that a person can do on the bench, by the name of the act. */
+export type BenchActions = ReturnType<typeof createBenchActions>;
+
+function edit(core: BenchCore, patch: DocumentPatch): void {
+  core.store.setState((state) => {
+    const asRead = state.reading ? getValue(state.reading.content.document, patch.path) : undefined;
+    return { edits: withEdit(state.edits, patch, asRead === patch.value) };
+  });
+}
+
+async function nameDevice(core: BenchCore, name: string): Promise<void> {
+  const { device } = core.store.getState();
+  if (!device?.stored) return;
+  try {
+    const row = await core.around.server.findDevice(device.driver.slug, device.identity.serialNumber ?? "");
+    if (!row) throw new Error("The server no longer has this device.");
+    const named = await core.around.server.changeDevice(row, { name });
+    core.store.setState((state) => ({ device: state.device && { ...state.device, stored: state.device.stored && { ...state.device.stored, name: named.name } } }));
+  } catch (error) {
+    say(core, "halt", `The name was not stored: ${sentenceOf(error)}`);
+  }
+}
+
+/** What only a simulated device lets a page do to it. */
+function simulatedActions(core: BenchCore) {
+  const withSimulated = (what: (simulated: NonNullable<NonNullable<BenchCore["line"]>["simulated"]>) => void) => {
+    if (core.line?.simulated) what(core.line.simulated);
+  };
+  return {
+    setSource: (source: SourceFormat | null) => { withSimulated(({ model }) => model.setSource(source)); void readDevice(core); },
+    switchOffAndOn: () => withSimulated(({ model }) => model.powerCycle()),
+    pullCable: () => withSimulated(({ plug }) => plug.unplug()),
+  };
+}
+
+/** Binds the acts to one bench. */
+export function createBenchActions(core: BenchCore) {
+  const { store } = core;
+  return {
+    connectReal: (slug: string) => connectReal(core, slug),
+    connectSimulated: (slug: string) => connectSimulated(core, slug),
+    reconnect: () => reconnect(core),
+    disconnect: () => disconnect(core),
+    readAgain: () => readDevice(core),
+    backUp: () => backUp(core, "by-hand"),
+    cancel: () => core.abort?.abort(),
+    nameDevice: (name: string) => nameDevice(core, name),
+    edit: (patch: DocumentPatch) => edit(core, patch),
+    clearEdits: () => store.setState({ edits: [] }),
+    reviewEdits: () => openReview(core, { kind: "edits", patches: store.getState().edits }),
+    openReview: (target: BenchTarget) => openReview(core, target),
+    closeReview: () => store.setState({ review: null }),
+    leaveOut: (slot: number, isOut: boolean) => leaveOut(core, slot, isOut),
+    acknowledge: (key: string, isRead: boolean) => acknowledge(core, key, isRead),
+    setCountdown: (seconds: number) => setCountdown(core, seconds),
+    takeRemedy: (remedy: Remedy) => takeRemedy(core, remedy),
+    backUpAndTry: () => backUpAndTry(core),
+    chooseScreen: (envelope: ScreenEnvelope, id: string | null) => void chooseScreen(core, envelope, id),
+    acceptUnknownScreen: () => acceptUnknownScreen(core),
+    forgetScreen: () => forgetScreen(core),
+    keep: () => void act(core, (run) => run.keep()),
+    putBack: () => void act(core, (run) => run.putBack()),
+    finish: () => void act(core, (run) => run.finish()),
+    look: (slot: number) => void act(core, (run) => run.look(slot)),
+    readRunAgain: () => void act(core, (run) => run.readAgain()),
+    stateCycled: () => void act(core, (run) => run.stateCycled()),
+    leaveRun: () => void act(core, (run) => run.leave()),
+    dismissRun: () => store.setState({ run: null }),
+    askRecall: (slot: number) => askRecall(core, slot),
+    recallAnyway: () => recallHeld(core),
+    dropRecall: () => store.setState({ heldRecall: null }),
+    dismissNotice: () => store.setState({ notice: null }),
+    ...simulatedActions(core),
+  };
+}

@@ -1,0 +1,154 @@
+import { createRun, restoreRun, type Run } from "@/lib/serial/run/create-run";
+import { planChanges } from "@/lib/serial/plan/plan-changes";
+import { reconcileJournals } from "@/lib/serial/run/reconcile-journals";
+import { FINAL_RUN_STATES, type JournalEntry, type RunActRefusal } from "@/lib/serial/run/types";
+import type { CheckedPlan } from "@/lib/serial/plan/types";
+import type { Result } from "@/lib/result";
+import { ApiProblem } from "@/components/ui/api";
+import { createJournal, type BenchJournal } from "@/components/bench/store/journal";
+import { dropKeptRun, keptRunKey, saveKeptRun, type KeptRun } from "@/components/bench/store/kept-run";
+import { say, type BenchCore } from "@/components/bench/store/bench-core";
+import { backUp, readDevice } from "@/components/bench/store/reading";
+
+const REFUSALS: Record<RunActRefusal, string> = {
+  "wrong-state": "The run has moved on; this no longer applies.",
+  busy: "Something else is under way. Try again in a moment.",
+  "too-late": "The countdown has ended, so the former values are put back.",
+  "link-lost": "The device is out of reach.",
+  "not-allowed": "That slot's raster does not fit the screen.",
+  "other-device": "Another device answers than the one that this run began with. Nothing was sent to it.",
+};
+
+/** Takes the lock that keeps two tabs from one device's run. False: another tab has it. */
+export async function takeHold(core: BenchCore, name: string): Promise<boolean> {
+  const { locks } = core.around;
+  if (!locks || core.releaseHold) return true;
+  return new Promise<boolean>((resolve) => {
+    void locks.request(name, { ifAvailable: true }, (lock) => {
+      resolve(lock !== null);
+      return lock === null ? undefined : new Promise<void>((release) => { core.releaseHold = release; });
+    });
+  });
+}
+
+function letGo(core: BenchCore): void {
+  core.releaseHold?.();
+  core.releaseHold = null;
+}
+
+function runKey(core: BenchCore): string {
+  const device = core.store.getState().device;
+  return keptRunKey(device?.driver.slug ?? "", device?.identity.serialNumber);
+}
+
+/** A browser tab's delivery of the journal. What the server will never take is not sent again. */
+function delivery(core: BenchCore, runId: string): (entries: readonly JournalEntry[]) => Promise<void> {
+  return async (entries) => {
+    try {
+      await core.around.server.appendSteps(runId, { holder: core.around.tabId, entries: [...entries] as never });
+    } catch (error) {
+      const status = error instanceof ApiProblem ? error.problem.status : 0;
+      if (status === 0 || status === 429 || status >= 500) throw error;
+      say(core, "halt", `The server no longer takes this run's journal: ${error instanceof Error ? error.message : ""} This browser keeps it.`);
+    }
+  };
+}
+
+function journalOf(core: BenchCore, kept: KeptRun): BenchJournal {
+  const key = runKey(core);
+  return createJournal({
+    clock: core.around.clock, entries: kept.entries,
+    keep: (entries) => saveKeptRun(core.around.storage, key, { ...kept, entries }),
+    deliver: kept.runId === null ? undefined : delivery(core, kept.runId),
+  });
+}
+
+function show(core: BenchCore, run: Run, plan: CheckedPlan, notice: string | null = null): void {
+  core.store.setState((state) => ({
+    activity: FINAL_RUN_STATES.includes(run.view.state) ? (state.activity === "running" ? "idle" : state.activity) : "running",
+    run: {
+      view: run.view, changeCount: plan.changes.length, changedSlots: plan.changedSlots, notice,
+      storesAtOnce: !plan.input.driver.memory.volatileWrites,
+    },
+  }));
+}
+
+/** After the last word: the lock goes, the device is read, and a kept run ends in a new backup. */
+async function afterEnd(core: BenchCore, run: Run, kept: KeptRun, journal: BenchJournal): Promise<void> {
+  core.run = null;
+  letGo(core);
+  dropKeptRun(core.around.storage, runKey(core));
+  core.store.setState({ edits: [], review: null });
+  if (run.view.state === "kept") {
+    const backup = await backUp(core, "after-run");
+    if (backup?.id && kept.runId !== null) {
+      await journal.settled();
+      await core.around.server.closeRun(kept.runId, backup.id).catch((error: unknown) => say(core, "halt", `The new backup is stored, but not yet joined to the run: ${String(error)}`));
+    }
+  } else {
+    await readDevice(core);
+  }
+}
+
+function follow(core: BenchCore, run: Run, plan: CheckedPlan, kept: KeptRun, journal: BenchJournal): void {
+  core.run = run;
+  show(core, run, plan);
+  let hasEnded = false;
+  run.onView((view) => {
+    show(core, run, plan);
+    if (!hasEnded && FINAL_RUN_STATES.includes(view.state) && !view.busy) {
+      hasEnded = true;
+      void afterEnd(core, run, kept, journal);
+    }
+  });
+}
+
+export type StartRun = { readonly plan: CheckedPlan; readonly runId: string | null; readonly countdownSeconds: number };
+
+/** Starts the run of a plan. The page shows it until its last word. */
+export async function startRun(core: BenchCore, { plan, runId, countdownSeconds }: StartRun): Promise<void> {
+  const device = core.store.getState().device;
+  if (!core.line || !device) return;
+  if (!(await takeHold(core, runKey(core)))) {
+    say(core, "halt", "Another tab of this browser has a run open on this device. Go on there.");
+    return;
+  }
+  const kept: KeptRun = { runId, hash: plan.hash, countdownSeconds, identity: device.identity, input: plan.input, entries: [] };
+  const journal = journalOf(core, kept);
+  const run = createRun({ session: core.line.session, plan, journal, clock: core.around.clock, countdownSeconds, identity: device.identity });
+  follow(core, run, plan, kept, journal);
+  await act(core, (one) => one.start());
+}
+
+/** Takes up a run that a closed tab, a reload or another browser left open. */
+export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: readonly JournalEntry[]): Promise<void> {
+  if (!core.line) return;
+  if (!(await takeHold(core, runKey(core)))) {
+    say(core, "halt", "Another tab of this browser has a run open on this device. Go on there.");
+    return;
+  }
+  const { plan } = planChanges(kept.input);
+  if (plan?.hash !== kept.hash) {
+    say(core, "halt", "A run was left open, but its plan can no longer be made the same. Restore a backup to know how the device stands.");
+    return;
+  }
+  const entries = reconcileJournals(kept.entries, fromServer);
+  const whole = { ...kept, entries };
+  const journal = journalOf(core, whole);
+  const run = restoreRun({ plan, journal, clock: core.around.clock, countdownSeconds: kept.countdownSeconds, identity: kept.identity, entries });
+  follow(core, run, plan, whole, journal);
+  await act(core, (one) => one.resume(requireSession(core)));
+}
+
+function requireSession(core: BenchCore) {
+  if (!core.line) throw new Error("A run is taken up over a live session only");
+  return core.line.session;
+}
+
+/** One act of the owner; a refusal becomes a sentence beside the run. */
+export async function act(core: BenchCore, what: (run: Run) => Promise<Result<void, RunActRefusal>>): Promise<void> {
+  const { run } = core;
+  if (!run) return;
+  const done = await what(run);
+  if (!done.ok) core.store.setState((state) => ({ run: state.run && { ...state.run, notice: REFUSALS[done.error] } }));
+}

@@ -1,0 +1,50 @@
+import type { Page } from "@playwright/test";
+import { expect } from "@/tests/e2e/fixtures";
+
+/** How the page reaches its device: the simulated one inside it, or `npm run sim` over TCP. */
+export type Wire = "simulated" | "sim over TCP";
+
+/** Longer than any whole read at the wire's own pace, on a busy machine. */
+export const READ_MS = 30_000;
+
+let people = 0;
+
+/** Registers somebody new, so that no test meets another's devices. */
+export async function register(page: Page, returnPath = "/bench"): Promise<void> {
+  people += 1;
+  await page.goto(`/register?from=${encodeURIComponent(returnPath)}`);
+  await page.getByLabel("Name").fill("Tove Halvard");
+  await page.getByLabel("E-mail address").fill(`tove.${Date.now()}.${process.pid}.${people}@example.org`);
+  await page.getByLabel("Password").fill("a long plain password");
+  await page.getByRole("button", { name: "Register" }).click();
+  await page.waitForURL(`**${returnPath}`);
+}
+
+/** Connects, and waits until the device was read whole. */
+export async function connect(page: Page, wire: Wire): Promise<void> {
+  await page.getByRole("button", { name: wire === "simulated" ? "Use a simulated device" : "Choose a port" }).click();
+  await expect(page.getByRole("heading", { name: "Slots" })).toBeVisible({ timeout: READ_MS });
+  await settled(page);
+}
+
+/** Nothing is under way any more. */
+export async function settled(page: Page): Promise<void> {
+  await expect(page.getByRole("button", { name: "Back up", exact: true })).toBeEnabled({ timeout: READ_MS });
+}
+
+export async function chooseScreen(page: Page, label: string): Promise<void> {
+  await page.getByLabel("Screen", { exact: true }).selectOption({ label });
+}
+
+/** Ticks every caution under review. */
+export async function readCautions(page: Page): Promise<void> {
+  const open = page.getByRole("checkbox", { name: "I have read this", checked: false });
+  // Bounded: no demo plan has so many cautions.
+  for (let n = 0; n < 40 && (await open.count()) > 0; n += 1) await open.first().click();
+  await expect(open).toHaveCount(0);
+}
+
+/** The trial bar in one of its states. */
+export function trial(page: Page, state: string) {
+  return page.locator(`[data-run-state="${state}"]`);
+}
