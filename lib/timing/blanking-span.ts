@@ -1,10 +1,5 @@
 import { ctaCatalogue } from "@/lib/timing/catalogue/catalogue";
-import {
-  analogBackPorchUs,
-  analogFieldBlankLines,
-  analogSystems,
-  type AnalogSystem,
-} from "@/lib/timing/catalogue/analog-systems";
+import { analogBackPorchUs, analogSystems, type AnalogSystem } from "@/lib/timing/catalogue/analog-systems";
 import type { Span } from "@/lib/timing/envelope";
 import type { RasterTiming } from "@/lib/timing/raster";
 import { axisBlank, fieldBlankLines, fieldRateHz, horizontalUs, lineRateHz } from "@/lib/timing/rates";
@@ -59,7 +54,7 @@ function sampleOfTiming(name: string, timing: RasterTiming): Sample {
 }
 
 function sampleOfSystem(system: AnalogSystem): Sample {
-  const blank = analogFieldBlankLines(system);
+  const blank = system.fieldBlankLines;
   const before = system.equalisingLines + system.fieldSyncLines;
   return {
     name: `BT.470 ${system.name}`,
@@ -84,7 +79,7 @@ const samples: readonly Sample[] = [
   ...ctaCatalogue
     .filter((entry) => fieldRateHz(entry.timing) >= SLOWEST_CRT_FIELD_HZ)
     .map((entry) => sampleOfTiming(`CTA-861 code ${entry.code}`, entry.timing)),
-];
+].sort((a, b) => a.lineRateHz - b.lineRateHz);
 
 function union(spans: readonly Span[]): Span {
   return [Math.min(...spans.map(([min]) => min)), Math.max(...spans.map(([, max]) => max))];
@@ -99,6 +94,17 @@ function unionOf(axes: readonly BlankingSpans[]): BlankingSpans {
   };
 }
 
+function spanOfKin(kin: readonly Sample[]): BlankingSpan {
+  return {
+    horizontalUs: unionOf(kin.map((sample) => sample.horizontalUs)),
+    verticalLines: unionOf(kin.map((sample) => sample.verticalLines)),
+    from: [...new Set(kin.map((sample) => sample.name))],
+  };
+}
+
+/** Kin are neighbours in the sorted samples, so there are few sets of them: each is put together once. */
+const spansOfKin = new Map<string, BlankingSpan>();
+
 /**
  * What BT.470 and the CTA-861 rasters within 3 % of a line rate span together.
  *
@@ -107,11 +113,14 @@ function unionOf(axes: readonly BlankingSpans[]): BlankingSpans {
  * which means that nothing can be said, not that anything goes.
  */
 export function blankingSpan(rateHz: number): BlankingSpan | undefined {
-  const kin = samples.filter((sample) => Math.abs(rateHz / sample.lineRateHz - 1) <= LINE_RATE_KINSHIP);
-  if (kin.length === 0) return undefined;
-  return {
-    horizontalUs: unionOf(kin.map((sample) => sample.horizontalUs)),
-    verticalLines: unionOf(kin.map((sample) => sample.verticalLines)),
-    from: [...new Set(kin.map((sample) => sample.name))],
-  };
+  const isKin = (sample: Sample) => Math.abs(rateHz / sample.lineRateHz - 1) <= LINE_RATE_KINSHIP;
+  const first = samples.findIndex(isKin);
+  if (first < 0) return undefined;
+  const last = samples.findLastIndex(isKin);
+  const key = `${first} ${last}`;
+  const known = spansOfKin.get(key);
+  if (known !== undefined) return known;
+  const span = spanOfKin(samples.slice(first, last + 1));
+  spansOfKin.set(key, span);
+  return span;
 }

@@ -33,6 +33,11 @@ export type SourceFormat = {
   readonly fieldRateHz: number;
 };
 
+/** Ends of what a device can hold for each part of an axis, in the axis's own unit. */
+export type DevicePartSpans = {
+  readonly [part in "active" | "frontPorch" | "sync" | "backPorch"]?: readonly [min: number, max: number] | undefined;
+};
+
 /** Pixel-clock and total limits of a device, as the fitting engine needs them. Absent = unknown. */
 export type DeviceTimingLimits = {
   readonly clockHz?: { readonly min: number; readonly max: number; readonly step: number } | undefined;
@@ -41,4 +46,9 @@ export type DeviceTimingLimits = {
   readonly maxLineTotal?: number | undefined;
   /** Lines per field, in all. */
   readonly maxFieldLines?: number | undefined;
+  readonly interlace?: boolean | undefined;
+  readonly horizontal?: DevicePartSpans | undefined;
+  readonly vertical?: DevicePartSpans | undefined;
+  /** `input`: the clock follows what arrives, so that the field rate that comes out is the source's. */
+  readonly outputClock?: "free" | "input" | undefined;
 };

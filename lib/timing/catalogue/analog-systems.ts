@@ -9,7 +9,7 @@ export type AnalogSystem = {
   readonly lineBlankUs: Span;
   readonly frontPorchUs: Span;
   readonly syncUs: Span;
-  /** Field blanking without its added line blanking ("19 to 21 H + a"), in lines. */
+  /** Field blanking in lines: "19 to 21 H + a", where a is the line blanking that the last of them begins with. */
   readonly fieldBlankLines: Span;
   /** Equalising pulses before the field sync, and the field sync itself, in lines. */
   readonly equalisingLines: number;
@@ -53,9 +53,4 @@ export const analogSystems: readonly AnalogSystem[] = [
 export function analogBackPorchUs(system: AnalogSystem): Span {
   const [blank, front, sync] = [system.lineBlankUs, system.frontPorchUs, system.syncUs];
   return [blank[0] - front[1] - sync[1], blank[1] - front[0] - sync[0]];
-}
-
-/** Field blanking in whole lines: what "+ a", a part of a line, adds at the upper end is counted as a line. */
-export function analogFieldBlankLines(system: AnalogSystem): Span {
-  return [system.fieldBlankLines[0], system.fieldBlankLines[1] + 1];
 }

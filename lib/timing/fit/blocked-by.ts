@@ -1,0 +1,70 @@
+import { describeBlock } from "@/lib/timing/fit/describe-block";
+import type { FitBlock, FitConstraint, FitRequest } from "@/lib/timing/fit/fit-types";
+import { holdsRaster, search } from "@/lib/timing/fit/search";
+import { searchSpace } from "@/lib/timing/fit/search-space";
+
+/**
+ * All constraints. Where only several together make a raster fit, they are put back in this order, so that what is
+ * left is what says most: a line rate that is out of reach rather than the sync that would go with it.
+ */
+const constraints: readonly FitConstraint[] = [
+  "wish-field-rate",
+  "wish-clock",
+  "wish-line-rate",
+  "wish-line-total",
+  "wish-field-lines",
+  "standard-line-blank",
+  "standard-field-blank",
+  "device-clock-step",
+  "device-multiple",
+  "device-clock",
+  "device-field-lines",
+  "device-line-total",
+  "device-parts",
+  "device-interlace",
+  "screen-field-rate",
+  "screen-field-blank",
+  "screen-back-porch",
+  "screen-clock",
+  "screen-sync",
+  "screen-line-rate",
+  "screen-interlace",
+];
+
+const fitsWithout = (request: FitRequest, without: readonly FitConstraint[]) =>
+  holdsRaster(searchSpace(request, new Set(without)));
+
+/** The constraints without which a raster fits, each alone; the wished field rate only where it is the only one. */
+function singles(request: FitRequest): FitConstraint[] {
+  const alone = constraints.filter((constraint) => fitsWithout(request, [constraint]));
+  const others = alone.filter((constraint) => constraint !== "wish-field-rate");
+  return others.length > 0 ? others : alone;
+}
+
+/** A set of constraints that have to go together: leave one of them in place and nothing fits. */
+function together(request: FitRequest): FitConstraint[] {
+  let gone = [...constraints];
+  if (!fitsWithout(request, gone)) return [];
+  for (const constraint of constraints) {
+    const fewer = gone.filter((one) => one !== constraint);
+    if (fitsWithout(request, fewer)) gone = fewer;
+  }
+  return gone;
+}
+
+/**
+ * What keeps everything from fitting, with the figures of the best raster that would fit without it.
+ *
+ * Each of the list alone is enough to take away (`alone`), or all of them together are. Empty only where no raster
+ * could meet the wish with nothing in the way.
+ * @param request a request for which `search` found nothing
+ */
+export function blockedBy(request: FitRequest): FitBlock[] {
+  const alone = singles(request);
+  const names = alone.length > 0 ? alone : together(request);
+  return names.flatMap((constraint) => {
+    const without = new Set(alone.length > 0 ? [constraint] : names);
+    const [best] = search(searchSpace(request, without));
+    return best === undefined ? [] : [{ ...describeBlock(request, constraint, best.timing), alone: alone.length > 0 }];
+  });
+}
