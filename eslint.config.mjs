@@ -111,8 +111,8 @@ const config = [
       "test-results/**",
       "drizzle/**",
       "public/**",
-    // Copied from elsewhere as they are.
-    "tests/fixtures/**",
+      // Copied from elsewhere as they are.
+      "tests/fixtures/**",
     ],
   },
   ...nextVitals,

@@ -25,7 +25,8 @@ export default defineConfig({
     allowOnly: false,
     restoreMocks: true,
     projects: [
-      project("unit", "unit"),
+      // Generous: a limit here is for a test that hangs, not for a machine that is busy.
+      project("unit", "unit", { testTimeout: 30_000 }),
       project("integration", "integration", {
         globalSetup: "tests/integration/helpers/global-setup.ts",
         setupFiles: "tests/integration/helpers/setup.ts",

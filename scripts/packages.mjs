@@ -71,14 +71,26 @@ export async function ensurePackages(names, say) {
     );
   }
   say(`Installing ${debian.join(", ")} from Debian`, 20 + 10 * debian.length);
-  const result = await run(...asCommand([...prefix, "sh", "-c", line]), {
-    env: { ...process.env, DEBIAN_FRONTEND: "noninteractive" },
-  });
+  const result = await run(
+    ...asCommand([...prefix, "sh", "-c", `${noClusterOfDebian} && ${line} -o Dpkg::Options::=--force-confold`]),
+    {
+      env: { ...process.env, DEBIAN_FRONTEND: "noninteractive" },
+    },
+  );
   const still = missing.filter((name) => !packages[name].present());
   if (still.length > 0) {
     throw new Prerequisite(`${result.output}\nThe installation failed. Run this by hand:\n  sudo sh -c '${line}'`);
   }
 }
+
+/**
+ * Debian's package would make and start a server for the whole machine. The project runs one of its own, so that one
+ * is left out unless the machine's owner has settled it already.
+ */
+const noClusterOfDebian = [
+  "mkdir -p /etc/postgresql-common",
+  "{ test -e /etc/postgresql-common/createcluster.conf || echo 'create_main_cluster = false' > /etc/postgresql-common/createcluster.conf; }",
+].join(" && ");
 
 function asCommand([command, ...args]) {
   return [command, args];

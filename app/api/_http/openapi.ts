@@ -2,6 +2,7 @@ import { z } from "zod";
 import type { ZodType } from "zod";
 import type { RouteDeclaration } from "@/app/api/_http/declaration";
 import { problemTitles } from "@/app/api/_http/problem";
+import { problemSchema } from "@/lib/contracts/problem";
 
 /** The route files by their path in the address (`/api/backups/{id}`), as their modules export them. */
 export type RouteModules = Readonly<Record<string, Readonly<Record<string, unknown>>>>;
@@ -30,7 +31,7 @@ export function describeApi(modules: RouteModules): JsonObject {
     info: { title: "Backporch", version: "1" },
     paths,
     components: {
-      schemas: { Problem: problemSchema },
+      schemas: { Problem: jsonSchema(problemSchema, "output") },
       securitySchemes: { session: { type: "apiKey", in: "cookie", name: "authjs.session-token" } },
     },
   };
@@ -96,25 +97,3 @@ function jsonSchema(schema: ZodType, io: "input" | "output"): JsonObject {
   const { $schema: _, ...rest } = z.toJSONSchema(schema, { io, unrepresentable: "any" });
   return rest;
 }
-
-/** Source: RFC 9457, section 3.1. */
-const problemSchema = {
-  type: "object",
-  required: ["type", "title", "status", "requestId"],
-  properties: {
-    type: { type: "string" },
-    title: { type: "string" },
-    status: { type: "integer" },
-    detail: { type: "string" },
-    code: { type: "string" },
-    requestId: { type: "string", format: "uuid" },
-    errors: {
-      type: "array",
-      items: {
-        type: "object",
-        required: ["path", "message"],
-        properties: { path: { type: "string" }, message: { type: "string" } },
-      },
-    },
-  },
-};
