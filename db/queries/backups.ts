@@ -1,8 +1,7 @@
-import { and, desc, eq, isNotNull, isNull, sql } from "drizzle-orm";
+import { and, desc, eq, isNull, sql } from "drizzle-orm";
 import type { Db } from "@/db/client";
 import { writeAudit } from "@/db/queries/audit";
 import { changedValues } from "@/db/queries/changed-values";
-import { isRestrictViolation } from "@/db/queries/errors";
 import { pageFrom, readCursor } from "@/db/queries/paging";
 import type { OwnedKey } from "@/db/queries/paging";
 import { backup, backupContent } from "@/db/schema/backup";
@@ -100,7 +99,8 @@ export async function listBackups(
   );
 }
 
-async function findBackup(db: Db, key: OwnedKey): Promise<BackupView | null> {
+/** A backup as lists show it, or null where it is not the owner's or was deleted. */
+export async function findBackup(db: Db, key: OwnedKey): Promise<BackupView | null> {
   const [row] = await selectBackups(db).where(and(owned(key), isNull(backup.deletedAt)));
   return row === undefined ? null : viewOf(row, (await changesOf(db, key.ownerId, [row]))(row));
 }
@@ -205,77 +205,4 @@ async function isOwned(tx: Db, ownerId: string, deviceId: string): Promise<boole
     .from(device)
     .where(and(eq(device.ownerId, ownerId), eq(device.id, deviceId), isNull(device.deletedAt)));
   return found.length > 0;
-}
-
-/** Renames a backup that still has `version`. Errors: "absent"; "stale" when it moved on. */
-export async function renameBackup(
-  db: Db,
-  key: OwnedKey & { readonly version?: number | undefined },
-  name: string,
-): Promise<Result<BackupView, "absent" | "stale">> {
-  return db.transaction(async (tx) => {
-    const changed = await tx
-      .update(backup)
-      .set({ name, version: sql`${backup.version} + 1` })
-      .where(
-        and(
-          owned(key),
-          isNull(backup.deletedAt),
-          key.version === undefined ? undefined : eq(backup.version, key.version),
-        ),
-      )
-      .returning({ id: backup.id });
-    const found = await findBackup(tx, key);
-    if (found === null) return fail("absent");
-    if (changed.length === 0) return fail("stale");
-    await writeAudit(tx, { actorId: key.ownerId, action: "backup.rename", subject: key.id });
-    return ok(found);
-  });
-}
-
-/** Hides a backup; `undeleteBackup` shows it again. Errors: "absent"; "in-use" by a plan, or as known good. */
-export async function deleteBackup(db: Db, key: OwnedKey): Promise<Result<null, "absent" | "in-use">> {
-  try {
-    return await db.transaction(async (tx) => {
-      const gone = await tx
-        .update(backup)
-        .set({ deletedAt: sql`now()` })
-        .where(and(owned(key), isNull(backup.deletedAt)))
-        .returning({ id: backup.id });
-      if (gone.length === 0) return fail("absent");
-      await writeAudit(tx, { actorId: key.ownerId, action: "backup.delete", subject: key.id });
-      return ok(null);
-    });
-  } catch (error) {
-    if (isRestrictViolation(error)) return fail("in-use");
-    throw error;
-  }
-}
-
-/** Takes a deletion back. Error: "absent" when there is no deleted backup of that id. */
-export async function undeleteBackup(db: Db, key: OwnedKey): Promise<Result<BackupView, "absent">> {
-  return db.transaction(async (tx) => {
-    await tx
-      .update(backup)
-      .set({ deletedAt: null })
-      .where(and(owned(key), isNotNull(backup.deletedAt)));
-    const found = await findBackup(tx, key);
-    if (found === null) return fail("absent");
-    await writeAudit(tx, { actorId: key.ownerId, action: "backup.undelete", subject: key.id });
-    return ok(found);
-  });
-}
-
-/** Pins a backup as its device's known good one, or takes the pin away. Error: "absent". */
-export async function pinBackup(db: Db, key: OwnedKey, pinned: boolean): Promise<Result<BackupView, "absent">> {
-  return db.transaction(async (tx) => {
-    const found = await findBackup(tx, key);
-    if (found === null) return fail("absent");
-    await tx
-      .update(device)
-      .set({ knownGoodBackupId: pinned ? key.id : null, version: sql`${device.version} + 1`, updatedAt: sql`now()` })
-      .where(and(eq(device.id, found.deviceId), pinned ? undefined : eq(device.knownGoodBackupId, key.id)));
-    await writeAudit(tx, { actorId: key.ownerId, action: pinned ? "backup.pin" : "backup.unpin", subject: key.id });
-    return ok({ ...found, knownGood: pinned });
-  });
 }

@@ -66,13 +66,8 @@ export type BackupChange = z.input<typeof backupChange>;
 /** What changed from `id` to `with`: neutral paths, and the native settings that have none. */
 export const backupCompareQuery = z.object({ with: idSchema });
 
-const changeValue = z.union([z.string(), z.number(), z.boolean(), z.null()]);
-export const valueChange = z.object({
-  path: z.string(),
-  left: changeValue.optional(),
-  right: changeValue.optional(),
-  unit: z.string().optional(),
-});
+/** One value that differs; null stands for "not named". The unit is empty for texts and words. */
+export const valueChange = z.object({ path: z.string(), left: z.unknown(), right: z.unknown(), unit: z.string() });
 export const backupComparison = z.object({
   left: backupView.pick({ id: true, deviceId: true, name: true, takenAt: true }),
   right: backupView.pick({ id: true, deviceId: true, name: true, takenAt: true }),

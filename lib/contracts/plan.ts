@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { profileDocumentSchema } from "@/lib/profile/document";
-import { documentPatchSchema, findingSchema } from "@/lib/contracts/finding";
+import { documentPatchSchema } from "@/lib/contracts/finding";
 import { idSchema, timeSchema } from "@/lib/contracts/page";
 
 const hash = z.string().regex(/^[0-9a-f]{64}$/u, "is not a SHA-256 in hex");
@@ -59,6 +59,3 @@ export type PlanView = z.infer<typeof planView>;
 
 /** Everything that is needed to take up a run again in another browser: the input of `planChanges`, whole. */
 export const planDetail = planView.extend({ input: z.unknown() });
-
-/** A problem that says why there is no plan carries what the server found. */
-export const planRefusal = z.object({ findings: z.array(findingSchema), toAcknowledge: z.array(z.string()) });
