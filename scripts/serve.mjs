@@ -3,7 +3,10 @@
  * `x-forwarded-for` as a proxy would, and drops what a client may not say about itself when no proxy stands before it.
  */
 import { createServer } from "node:http";
-import next from "next";
+
+process.env.NODE_ENV ??= "production";
+// Read after the line above: Next looks at it when it is loaded.
+const { default: next } = await import("next");
 
 const port = Number(process.env.PORT ?? "3000");
 const hostname = "127.0.0.1";
