@@ -3,6 +3,7 @@ import { FindingWord } from "@/components/ui/finding-icon";
 import { fitOf } from "@/components/screens/fit-words";
 import { limitOrder, limitValues, limitWords, sourceWords } from "@/components/screens/limit-words";
 import { ModeMark } from "@/components/video/mode-glyph";
+import { nearBands } from "@/components/video/plane-geometry";
 import { RatePlane } from "@/components/video/rate-plane";
 import type { RatePoint } from "@/components/video/rate-plane";
 import type { EnvelopeLimit, ScreenEnvelope } from "@/lib/timing/envelope";
@@ -26,7 +27,7 @@ function pointsFor(envelope: ScreenEnvelope): readonly RatePoint[] {
 
 /** Where the standard rasters fall in the bands of a screen. */
 export function ScreenPlane({ envelope, heightPx }: { readonly envelope: ScreenEnvelope; readonly heightPx?: number }) {
-  return <RatePlane screenName={envelope.name} bands={envelope.bands} points={pointsFor(envelope)} rayLines={rayLines} heightPx={heightPx} />;
+  return <RatePlane screenName={envelope.name} bands={envelope.bands} points={nearBands(pointsFor(envelope), envelope.bands)} rayLines={rayLines} heightPx={heightPx} />;
 }
 
 /** Each limit of a screen, with where it comes from. */
@@ -77,7 +78,7 @@ export function StandardFits({ envelope }: { readonly envelope: ScreenEnvelope }
           <li key={name} className="grid grid-cols-1 items-center gap-x-4 gap-y-0.5 py-1.5 sm:grid-cols-[230px_1fr]">
             <ModeMark timing={timing} name={name} />
             <FindingWord severity={fit.fits ? "fits" : "stop"}>
-              {fit.fits ? "fits" : <span className="font-normal">{fit.words}</span>}
+              {fit.fits ? "fits" : <span className="font-normal text-muted">{fit.words.split("; ")[0]}</span>}
             </FindingWord>
           </li>
         );

@@ -64,3 +64,40 @@ export function raySegment(linesPerField: number, domain: PlaneDomain): RaySegme
   const point = (lineRateHz: number): PlanePoint => ({ lineRateHz, fieldRateHz: lineRateHz / linesPerField });
   return { from: point(from), to: point(to) };
 }
+
+export type RayLabel = { readonly x: number; readonly y: number };
+
+const LABEL_WIDTH_PX = 62;
+const LABEL_HEIGHT_PX = 13;
+
+/**
+ * Places for the names of rays, right-aligned at their upper end, or a step further down the ray where another name
+ * stands already. A ray without room for its name has none.
+ *
+ * Bound: 8 steps a ray.
+ */
+export function rayLabels(rays: readonly (RaySegment | undefined)[], domain: PlaneDomain, frame: PlaneFrame): readonly (RayLabel | undefined)[] {
+  const placed: RayLabel[] = [];
+  return rays.map((ray) => {
+    if (ray === undefined) return undefined;
+    for (let step = 0; step < 8; step += 1) {
+      const share = 1 - step / 10;
+      const lineRateHz = ray.from.lineRateHz + share * (ray.to.lineRateHz - ray.from.lineRateHz);
+      const fieldRateHz = ray.from.fieldRateHz + share * (ray.to.fieldRateHz - ray.from.fieldRateHz);
+      const label = { x: xOf(lineRateHz, domain, frame) - 5, y: Math.max(yOf(fieldRateHz, domain, frame) + 4, frame.topPx + 11) };
+      const isInside = label.x - LABEL_WIDTH_PX >= frame.leftPx;
+      const isFree = placed.every((other) => Math.abs(other.x - label.x) >= LABEL_WIDTH_PX || Math.abs(other.y - label.y) >= LABEL_HEIGHT_PX);
+      if (isInside && isFree) {
+        placed.push(label);
+        return label;
+      }
+    }
+    return undefined;
+  });
+}
+
+/** Rasters near enough to a band to be worth showing with it: within a quarter of its line rates. */
+export function nearBands<P extends PlanePoint>(points: readonly P[], bands: readonly EnvelopeBand[]): readonly P[] {
+  if (bands.length === 0) return points;
+  return points.filter(({ lineRateHz }) => bands.some((band) => lineRateHz >= band.lineRateHz[0] * 0.75 && lineRateHz <= band.lineRateHz[1] * 1.25));
+}

@@ -3,8 +3,8 @@
 import { useId } from "react";
 import { formatFieldRate, formatLineRate, formatLineRateSpan, formatNumber, formatSpan } from "@/components/ui/figures";
 import { useWidth } from "@/components/ui/use-width";
-import { planeDomain, planeTicks, raySegment, xOf, yOf } from "@/components/video/plane-geometry";
-import type { PlaneDomain, PlaneFrame, PlanePoint } from "@/components/video/plane-geometry";
+import { planeDomain, planeTicks, rayLabels, raySegment, xOf, yOf } from "@/components/video/plane-geometry";
+import type { PlaneDomain, PlaneFrame, PlanePoint, RayLabel, RaySegment } from "@/components/video/plane-geometry";
 import type { EnvelopeBand } from "@/lib/timing/envelope";
 
 export type RatePoint = PlanePoint & {
@@ -34,6 +34,7 @@ export function RatePlane({ screenName, bands, points, rayLines = [], heightPx =
   const domain = planeDomain(bands, points);
   if (domain === undefined) return <p className="text-muted">No rates are known for {screenName}.</p>;
   const frame: PlaneFrame = { leftPx: LEFT_PX, topPx: 6, widthPx: widthPx - LEFT_PX - 6, heightPx: heightPx - BOTTOM_PX - 6 };
+  const rays = rayLines.map((lines) => raySegment(lines, domain));
   return (
     <figure ref={attach} className="min-w-0">
       <svg role="img" aria-label={planeWords(screenName, bands, points)} width={widthPx} height={heightPx} className="figure block max-w-full">
@@ -45,10 +46,11 @@ export function RatePlane({ screenName, bands, points, rayLines = [], heightPx =
           {bands.map((band) => (
             <PlaneBand key={band.lineRateHz.join()} band={band} domain={domain} frame={frame} />
           ))}
-          {rayLines.map((lines) => (
-            <PlaneRay key={lines} lines={lines} domain={domain} frame={frame} />
-          ))}
+          {rays.map((ray, index) => (ray === undefined ? null : <PlaneRay key={rayLines[index]} ray={ray} domain={domain} frame={frame} />))}
         </g>
+        {rayLabels(rays, domain, frame).map((label, index) => (
+          <PlaneRayName key={rayLines[index]} label={label} lines={rayLines[index]} />
+        ))}
         {points.map((point) => (
           <PlanePointMark key={point.id} point={point} domain={domain} frame={frame} />
         ))}
@@ -91,18 +93,17 @@ function PlaneBand({ band, domain, frame }: Placed & { readonly band: EnvelopeBa
   return <rect x={(left + right - widthPx) / 2} y={top} width={widthPx} height={Math.max(3, bottom - top)} className="fill-signal/15 stroke-signal" />;
 }
 
-function PlaneRay({ lines, domain, frame }: Placed & { readonly lines: number }) {
-  const ray = raySegment(lines, domain);
-  if (ray === undefined) return null;
-  const end = { x: xOf(ray.to.lineRateHz, domain, frame), y: yOf(ray.to.fieldRateHz, domain, frame) };
-  const fromTop = end.y < frame.topPx + 14;
+function PlaneRay({ ray, domain, frame }: Placed & { readonly ray: RaySegment }) {
+  const at = (point: PlanePoint) => `${xOf(point.lineRateHz, domain, frame)} ${yOf(point.fieldRateHz, domain, frame)}`;
+  return <path d={`M${at(ray.from)}L${at(ray.to)}`} className="fill-none stroke-muted" strokeDasharray="1 4" />;
+}
+
+function PlaneRayName({ label, lines }: { readonly label: RayLabel | undefined; readonly lines: number | undefined }) {
+  if (label === undefined || lines === undefined) return null;
   return (
-    <g>
-      <path d={`M${xOf(ray.from.lineRateHz, domain, frame)} ${yOf(ray.from.fieldRateHz, domain, frame)}L${end.x} ${end.y}`} className="fill-none stroke-muted" strokeDasharray="1 4" />
-      <text x={end.x - 4} y={fromTop ? end.y + 14 : end.y - 5} textAnchor="end" className="fill-muted">
-        {formatNumber(lines)} lines
-      </text>
-    </g>
+    <text x={label.x} y={label.y} textAnchor="end" className="fill-muted">
+      {formatNumber(lines)} lines
+    </text>
   );
 }
 

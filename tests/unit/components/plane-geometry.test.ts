@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { planeDomain, planeTicks, raySegment, xOf, yOf } from "@/components/video/plane-geometry";
+import { nearBands, planeDomain, planeTicks, rayLabels, raySegment, xOf, yOf } from "@/components/video/plane-geometry";
 
 const band = { lineRateHz: [15_450, 15_890], fieldRateHz: [48, 62] } as const;
 // CTA-861 code 8.
@@ -37,5 +37,22 @@ describe("rate plane", () => {
   it("ticks on round values within the view", () => {
     expect(planeTicks([15_300, 17_800], 6)).toEqual([15_500, 16_000, 16_500, 17_000, 17_500]);
     expect(planeTicks([46.5, 63.4], 6)).toEqual([50, 55, 60]);
+  });
+
+  it("lets no two names of rays stand on each other, and none outside the plane", () => {
+    const domain = { lineRateHz: [14_000, 18_000], fieldRateHz: [45, 65] } as const;
+    const rays = [262, 264, 266, 290, 312, 525].map((lines) => raySegment(lines, domain));
+    const labels = rayLabels(rays, domain, frame).filter((label) => label !== undefined);
+    labels.forEach((label, index) => {
+      expect(label.x - 62).toBeGreaterThanOrEqual(frame.leftPx);
+      expect(label.y).toBeGreaterThanOrEqual(frame.topPx);
+      labels.slice(index + 1).forEach((other) => expect(Math.abs(other.x - label.x) >= 62 || Math.abs(other.y - label.y) >= 13).toBe(true));
+    });
+    expect(labels.length).toBeGreaterThanOrEqual(4);
+    expect(rayLabels(rays, domain, frame).at(-1)).toBeUndefined();
+  });
+
+  it("leaves rasters of other kinds of screens out", () => {
+    expect(nearBands([point, { lineRateHz: 31_469, fieldRateHz: 59.94 }], [band])).toEqual([point]);
   });
 });

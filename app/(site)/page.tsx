@@ -1,0 +1,5 @@
+import { Front } from "@/components/site/front";
+
+export default function FrontPage() {
+  return <Front />;
+}
