@@ -5,7 +5,7 @@ import { documentFromNative, nativeFromDocument } from "@/lib/serial/backup/docu
 import type { CompiledSetting } from "@/lib/serial/driver/compiled";
 import { toNative, toNeutral } from "@/lib/serial/driver/neutral";
 import type { NativeValue, NativeValues } from "@/lib/serial/native";
-import { lf8 } from "../simulated-rig";
+import { lf8 } from "@/tests/unit/serial/simulated-rig";
 
 const factory: NativeValues = Object.fromEntries(lf8.settings.map((setting) => [setting.key, setting.initial]));
 

@@ -4,7 +4,7 @@ import type { ActionName } from "@/lib/serial/driver/definition";
 import type { NativeKey, NativeValue } from "@/lib/serial/native";
 import { createDeviceModel, type DeviceModelOptions } from "@/lib/serial/simulator/device-model";
 import { modeNameOf } from "./mode-name-of";
-import { lf8 } from "../simulated-rig";
+import { lf8 } from "@/tests/unit/serial/simulated-rig";
 
 function device(options: Omit<DeviceModelOptions, "clock"> = {}) {
   const clock = createVirtualClock();

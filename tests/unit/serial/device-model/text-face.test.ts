@@ -4,7 +4,7 @@ import { createVirtualClock } from "@/lib/serial/clock/virtual-clock";
 import { encodeLine } from "@/lib/serial/protocols/text/line";
 import { createDeviceModel } from "@/lib/serial/simulator/device-model";
 import { MAX_WAITING } from "@/lib/serial/simulator/work-queue";
-import { lf8 } from "../simulated-rig";
+import { lf8 } from "@/tests/unit/serial/simulated-rig";
 
 const { protocol } = lf8.definition;
 

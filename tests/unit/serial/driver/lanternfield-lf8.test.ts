@@ -7,7 +7,7 @@ import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
 import { shippedDriver, findShippedDriver } from "@/lib/serial/drivers/shipped";
 import { rasterOfMode } from "@/lib/serial/plan/output-raster";
 import { deviceLimits } from "@/lib/serial/limits";
-import { lf8 } from "../simulated-rig";
+import { lf8 } from "@/tests/unit/serial/simulated-rig";
 
 type Published = { [field: string]: number | boolean | string };
 const values = new Map(lf8.settings.map((setting) => [setting.key, setting.initial]));

@@ -4,7 +4,7 @@ import { createLineDecoder, encodeLine } from "@/lib/serial/protocols/text/line"
 import { compileDriver } from "@/lib/serial/driver/compile";
 import { driverDefinitionSchema } from "@/lib/serial/driver/definition";
 import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
-import { lf8 } from "../simulated-rig";
+import { lf8 } from "@/tests/unit/serial/simulated-rig";
 
 const bytes = (text: string) => new TextEncoder().encode(text);
 const text = (line: Uint8Array) => new TextDecoder().decode(line);
