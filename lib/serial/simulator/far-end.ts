@@ -20,6 +20,8 @@ export type FarEndOptions = {
   readonly linesOnOpen?: { readonly dataTerminalReady: boolean; readonly requestToSend: boolean };
   /** Whether the system tells of bytes that it lost: Windows does, POSIX does not. */
   readonly reportsOverrun?: boolean;
+  /** What the system has to do before the port is open, such as connecting to the real thing; false or a throw refuses. */
+  readonly prepareOpen?: (options: SerialOpenOptions) => Promise<boolean>;
 };
 
 /** What the page's port hears from the system. */
@@ -51,6 +53,7 @@ export class SimulatedFarEnd {
   readonly transmitLine: TransmitLine;
   readonly #clock: Clock;
   readonly #linesOnOpen: { readonly dataTerminalReady: boolean; readonly requestToSend: boolean };
+  readonly #prepareOpen: (options: SerialOpenOptions) => Promise<boolean>;
   #listener: SystemListener | null = null;
   #openOptions: SerialOpenOptions | null = null;
   #outputLines: OutputLines = ALL_OFF;
@@ -68,6 +71,7 @@ export class SimulatedFarEnd {
     this.#clock = clock;
     this.identity = options.identity ?? {};
     this.#linesOnOpen = options.linesOnOpen ?? { dataTerminalReady: true, requestToSend: false };
+    this.#prepareOpen = options.prepareOpen ?? (() => Promise.resolve(true));
     const osBufferBytes = options.osBufferBytes ?? 0;
     const task = (fire: () => void): void => void clock.after(0, fire);
     this.receiveLine = new ReceiveLine({
@@ -163,8 +167,10 @@ export class SimulatedFarEnd {
   /* The system's side, for the page's port. */
 
   /** @returns false where the system refuses: gone, in use, not allowed */
-  openBySystem(options: SerialOpenOptions, listener: SystemListener): boolean {
-    if (!this.#present || this.#refusesOpen || this.#openOptions) return false;
+  async openBySystem(options: SerialOpenOptions, listener: SystemListener): Promise<boolean> {
+    if (!this.#mayOpen()) return false;
+    const isPrepared = await this.#prepareOpen(options).catch(() => false);
+    if (!isPrepared || !this.#mayOpen()) return false;
     this.#openOptions = options;
     this.#listener = listener;
     this.receiveLine.reset();
@@ -211,6 +217,10 @@ export class SimulatedFarEnd {
   /** Runs `fire` in a later task. */
   task(fire: () => void): void {
     this.#clock.after(0, fire);
+  }
+
+  #mayOpen(): boolean {
+    return this.#present && !this.#refusesOpen && !this.#openOptions;
   }
 
   #setLine(change: Partial<OutputLines>): void {

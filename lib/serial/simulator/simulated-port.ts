@@ -123,14 +123,15 @@ export class SimulatedSerialPort extends EventTree implements SerialPortLike {
     checkOpenOptions(wanted);
     this.#state = "opening";
     await this.#later(() => undefined);
-    // `forget` may have come in between.
-    if (this.#currentState() !== "opening") throw networkError("Failed to open serial port.");
     const listener = {
       onReadFault: (fault: ReadFault) => this.#readFault(fault),
       onWriteFault: (fault: WriteFault) => this.#writeFault(fault),
     };
-    if (!this.#far.openBySystem(wanted, listener)) {
-      this.#state = "closed";
+    const isOpen = await this.#far.openBySystem(wanted, listener);
+    // `forget` may have come in between.
+    if (!isOpen || this.#currentState() !== "opening") {
+      if (isOpen) this.#far.closeBySystem();
+      if (this.#currentState() === "opening") this.#state = "closed";
       throw networkError("Failed to open serial port.");
     }
     this.#bufferBytes = wanted.bufferSize;

@@ -1,0 +1,119 @@
+import type { Clock } from "@/lib/serial/clock";
+import type { SerialOpenOptions, SerialPortIdentity } from "@/lib/serial/port";
+import type { SimulatedFarEnd } from "@/lib/serial/simulator/far-end";
+import type { SimulatedSerialPort } from "@/lib/serial/simulator/simulated-port";
+import { SimulatedMachine } from "@/lib/serial/simulator/simulated-serial";
+
+/** A two-way byte stream as Node has it (a socket, a serial device), as far as it is needed here. */
+export interface ByteDuplex {
+  on(event: "data", listener: (bytes: Uint8Array) => void): unknown;
+  on(event: "close", listener: () => void): unknown;
+  on(event: "error", listener: (error: Error) => void): unknown;
+  write(bytes: Uint8Array, done: (error?: Error | null) => void): unknown;
+  pause(): unknown;
+  resume(): unknown;
+  destroy(): unknown;
+}
+
+export type DuplexPortOptions = {
+  readonly clock: Clock;
+  /** Connects to the real thing; a rejection makes `open()` fail with NetworkError. */
+  readonly connect: (options: SerialOpenOptions) => Promise<ByteDuplex>;
+  readonly identity?: SerialPortIdentity;
+};
+
+/** Bytes held for a page that does not read; past that the stream is paused. */
+const OS_BUFFER_BYTES = 65_536;
+
+/**
+ * A real byte stream behind a port that behaves as the W3C says: connected when the port is opened, destroyed when it is
+ * closed, unplugged when the stream ends by itself. Line settings are the business of `connect`.
+ */
+export class DuplexPort {
+  readonly machine: SimulatedMachine;
+  readonly #options: DuplexPortOptions;
+  #far: SimulatedFarEnd;
+  #next: ByteDuplex | null = null;
+
+  constructor(options: DuplexPortOptions) {
+    this.#options = options;
+    this.machine = new SimulatedMachine(options.clock);
+    this.#far = this.#attach();
+  }
+
+  /** The port object that is good now. Throws while the adapter is out. */
+  get port(): SimulatedSerialPort {
+    const port = this.machine.portOf(this.#far);
+    if (!port) throw new Error("The adapter is unplugged.");
+    return port;
+  }
+
+  /** Pulls the adapter, whatever the stream does. */
+  unplug(): void {
+    this.machine.detach(this.#far);
+    this.#far.closeBySystem();
+  }
+
+  /** Plugs an adapter in again: a new port object. */
+  replug(): SimulatedSerialPort {
+    if (!this.machine.portOf(this.#far)) this.#far = this.#attach();
+    return this.port;
+  }
+
+  #attach(): SimulatedFarEnd {
+    const far = this.machine.attach({
+      identity: this.#options.identity,
+      osBufferBytes: OS_BUFFER_BYTES,
+      linesOnOpen: { dataTerminalReady: true, requestToSend: true },
+      prepareOpen: async (options) => {
+        this.#next = await this.#options.connect(options);
+        return true;
+      },
+    });
+    far.onOpenChange = (isOpen) => {
+      if (isOpen && this.#next) this.#run(far, this.#next);
+    };
+    return far;
+  }
+
+  /** Moves bytes both ways until either side ends. */
+  #run(far: SimulatedFarEnd, duplex: ByteDuplex): void {
+    let isOver = false;
+    const end = (): void => {
+      if (isOver) return;
+      isOver = true;
+      duplex.destroy();
+    };
+    far.onOpenChange = (isOpen) => {
+      if (isOpen && this.#next) this.#run(far, this.#next);
+      else end();
+    };
+    const goAway = (): void => {
+      if (isOver) return;
+      end();
+      this.machine.detach(far);
+    };
+    duplex.on("error", goAway);
+    duplex.on("close", goAway);
+    duplex.on("data", (bytes) => {
+      if (isOver) return;
+      duplex.pause();
+      // A refusal says that the host threw the bytes away: that is its right.
+      void far
+        .send(bytes)
+        .catch(() => undefined)
+        .then(() => duplex.resume());
+    });
+    void this.#forward(far, duplex, () => isOver, goAway);
+  }
+
+  async #forward(far: SimulatedFarEnd, duplex: ByteDuplex, isOver: () => boolean, goAway: () => void): Promise<void> {
+    while (!isOver()) {
+      const { value } = await far.receive();
+      if (isOver()) return;
+      if (!value) continue;
+      const error = await new Promise<Error | null | undefined>((resolve) => duplex.write(value, resolve));
+      if (error) goAway();
+    }
+  }
+}
