@@ -82,7 +82,7 @@ describe("what a plan holds", () => {
     const known = backupOf(onRecall);
     const { "slots[2].placement.offsetPx": _unasked, ...values } = known.values;
     const backup = { ...known, values, unreadable: ["slots[2].placement.offsetPx"] };
-    const document = profileOf({ slots: [{ number: 2, name: "Arcade", placement: { offsetPx: 3, widthPct: 96 } }] });
+    const document = profileOf({ slots: [{ number: 2, name: "Arcade", placement: { offsetPx: 3, widthPct: 88 } }] });
     const plan = planned(inputOf(onRecall, { backup, target: { kind: "profile", document } }));
     expect(plan.changes.map(({ key }) => key)).not.toContain("slots[2].placement.offsetPx");
     expect(plan.byHand).toEqual([{ key: "slots[2].placement.offsetPx", label: "Slot 2: Horizontal position", value: 3 }]);

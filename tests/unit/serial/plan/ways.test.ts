@@ -38,7 +38,7 @@ function profileWithTiming(timing: RasterTiming, slots: readonly number[] = [1])
 
 describe("way 1: single writes in an order that is safe", () => {
   it("writes each changed setting once, and nothing else", () => {
-    const document = profileOf({ slots: [{ number: 2, name: "Arcade", placement: { offsetPx: 12, widthPct: 96 } }] });
+    const document = profileOf({ slots: [{ number: 2, name: "Arcade", placement: { offsetPx: 12, widthPct: 88 } }] });
     const plan = planned(inputOf(onRecall, { target: { kind: "profile", document } }));
     expect(plan.way).toBe(1);
     expect(writesOf(plan).map(({ key }) => key).sort()).toEqual(["slots[2].name", "slots[2].placement.offsetPx", "slots[2].placement.widthPct"]);
