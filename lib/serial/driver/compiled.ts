@@ -76,6 +76,11 @@ export interface ProtocolCodec {
   createDecoder(): FrameDecoder;
   /** The frame repeats a request word for word: a line that echoes. */
   isEcho(frame: Frame, request: WireRequest): boolean;
+  /**
+   * The same bytes with every name and serial number in them replaced by as many `x`, and their check renewed.
+   * @param request what these bytes answer, where that is known
+   */
+  strikeOut(bytes: Uint8Array, request?: Uint8Array): Uint8Array;
 }
 
 /** A driver definition with everything worked out once that its use needs again and again. */

@@ -4,6 +4,7 @@ import type { ActionName, DriverDefinition } from "@/lib/serial/driver/definitio
 import type { NativeKey, NativeValues, NativeWrite } from "@/lib/serial/native";
 import { checkField, createLineDecoder, encodeLine, type TextProtocol } from "./line";
 import { compileExchanges, type BoundExchange, type SettingExchange, type TextExchanges } from "./exchanges";
+import { createStrikeOut } from "./strike-out";
 import { compileTemplate, fillTemplate, parseTemplate, type Template } from "./template";
 
 const TEXT = new TextEncoder();
@@ -119,6 +120,7 @@ function textCodec(
       return exchange ? plainRequest(exchange, fields, name === "commit" ? definition.memory.commitTakesMs : 0, REPEATABLE.includes(name), false) : null;
     },
     createDecoder: () => createLineDecoder(protocol),
+    strikeOut: createStrikeOut(definition, protocol, exchanges, byKey),
     isEcho: (frame, sent) => frame.bytes.length === sent.bytes.length && frame.bytes.every((byte, index) => byte === sent.bytes[index]),
   };
 }
