@@ -66,9 +66,10 @@ function overlayModes(input: ModesInput): ProfileMode[] {
 /** Everywhere-settings reach every slot: with one left out, trim is shared with it and stays. */
 function overlayEverywhere(base: ProfileDocument, profile: ProfileDocument, keepTrim: boolean): ProfileDocument["everywhere"] {
   if (!base.everywhere && !profile.everywhere) return undefined;
-  const trim = keepTrim ? base.everywhere?.trim : { ...base.everywhere?.trim, ...profile.everywhere?.trim };
+  const [held, named] = [base.everywhere?.trim, keepTrim ? undefined : profile.everywhere?.trim];
+  const trim = held || named ? { ...held, ...named } : undefined;
   const { trim: _laidAbove, ...rest } = { ...base.everywhere, ...profile.everywhere };
-  return { ...rest, ...(trim && Object.keys(trim).length > 0 && { trim }) };
+  return { ...rest, ...(trim && { trim }) };
 }
 
 /** Modes that only left-out slots use are left out with them; modes that nobody uses are part of the profile. */

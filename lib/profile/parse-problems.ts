@@ -24,10 +24,9 @@ const kinds: Readonly<Record<string, string>> = {
 };
 
 function sizeMessage(issue: z.core.$ZodIssueTooBig | z.core.$ZodIssueTooSmall): string {
-  const bound = issue.code === "too_big" ? `${issue.maximum} at most` : `${issue.minimum} at least`;
-  const holds: Readonly<Record<string, string>> = { string: "characters", array: "entries" };
-  const noun = holds[issue.origin];
-  return noun === undefined ? `Must be ${bound}.` : `Must have ${bound} ${noun}.`;
+  const bound = issue.code === "too_big" ? `at most ${issue.maximum}` : `at least ${issue.minimum}`;
+  if (issue.origin === "string") return `Its length must be ${bound}.`;
+  return issue.origin === "array" ? `The number of entries must be ${bound}.` : `Must be ${bound}.`;
 }
 
 function message(issue: z.core.$ZodIssue): string {

@@ -49,18 +49,29 @@ function readText(text: string): Result<unknown, PathMessage[]> {
   }
 }
 
-type Visit = { readonly value: unknown; readonly path: readonly PropertyKey[] };
+/** A value still to be looked at, and how it was reached; paths are only spelt out where something is wrong. */
+type Visit = { readonly value: unknown; readonly depth: number; readonly name: PropertyKey | null; readonly parent: Visit | null };
 
-function children({ value, path }: Visit): Visit[] {
-  if (Array.isArray(value)) return value.map((inner: unknown, index) => ({ value: inner, path: [...path, index] }));
-  if (typeof value !== "object" || value === null) return [];
-  return Object.entries(value).map(([name, inner]) => ({ value: inner, path: [...path, name] }));
+function pathOf(visit: Visit): string {
+  const parts: PropertyKey[] = [];
+  for (let at: Visit | null = visit; at !== null; at = at.parent) if (at.name !== null) parts.push(at.name);
+  return positionPath(parts.reverse());
 }
 
-function valueProblem({ value, path }: Visit): string | null {
-  if (path.length > MAX_DOCUMENT_DEPTH) return `Is nested more than ${MAX_DOCUMENT_DEPTH} levels deep.`;
-  if (path.at(-1) === "__proto__") return "This field name is not allowed.";
-  const texts = [value, path.at(-1)].filter((text) => typeof text === "string");
+function pushChildren(open: Visit[], parent: Visit): void {
+  const { value } = parent;
+  const depth = parent.depth + 1;
+  if (Array.isArray(value)) {
+    for (const [name, inner] of value.entries()) open.push({ value: inner as unknown, depth, name, parent });
+  } else if (typeof value === "object" && value !== null) {
+    for (const [name, inner] of Object.entries(value)) open.push({ value: inner as unknown, depth, name, parent });
+  }
+}
+
+function valueProblem({ value, depth, name }: Visit): string | null {
+  if (depth > MAX_DOCUMENT_DEPTH) return `Is nested more than ${MAX_DOCUMENT_DEPTH} levels deep.`;
+  if (name === "__proto__") return "This field name is not allowed.";
+  const texts = [value, name].filter((text) => typeof text === "string");
   if (texts.some((text) => !text.isWellFormed())) return "Has half a surrogate pair, which is not Unicode text.";
   return null;
 }
@@ -68,11 +79,11 @@ function valueProblem({ value, path }: Visit): string | null {
 /** What JSON allows and the document does not, wherever it stands. Linear: each value is visited once. */
 function valueProblems(value: unknown): PathMessage[] {
   const problems: PathMessage[] = [];
-  const open: Visit[] = [{ value, path: [] }];
+  const open: Visit[] = [{ value, depth: 0, name: null, parent: null }];
   for (let visit = open.pop(); visit !== undefined && problems.length < MAX_PROBLEMS; visit = open.pop()) {
     const message = valueProblem(visit);
-    if (message === null) open.push(...children(visit));
-    else problems.push({ path: positionPath(visit.path), message });
+    if (message === null) pushChildren(open, visit);
+    else problems.push({ path: pathOf(visit), message });
   }
   return problems;
 }

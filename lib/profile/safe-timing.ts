@@ -1,5 +1,6 @@
 import type { EnvelopeBand, ScreenEnvelope } from "@/lib/timing/envelope";
-import { fieldLines, lineRateHz, lineTotal, linesPerField } from "@/lib/timing/rates";
+import { fieldLines, fieldRateHz, lineRateHz, lineTotal, linesPerField } from "@/lib/timing/rates";
+import { inSpan } from "@/lib/timing/span";
 import type { RasterTiming } from "@/lib/timing/raster";
 import { isRasterAllowed } from "./check/allowed-raster";
 import type { DeviceLimits, NumberLimit } from "./limits";
@@ -71,6 +72,8 @@ export function bandTests(screen: ScreenEnvelope | undefined): readonly { readon
   if (!screen || screen.bands.length === 0) return [{ band: null, allows: (timing) => isRasterAllowed(timing, screen) }];
   return screen.bands.map((band) => {
     const alone = { ...screen, bands: [band] };
-    return { band, allows: (timing: RasterTiming) => isRasterAllowed(timing, alone) };
+    // Rates first: they are two divisions, and most probes fail by them.
+    const holdsRates = (timing: RasterTiming) => inSpan(lineRateHz(timing), band.lineRateHz) && inSpan(fieldRateHz(timing), band.fieldRateHz);
+    return { band, allows: (timing: RasterTiming) => holdsRates(timing) && isRasterAllowed(timing, alone) };
   });
 }

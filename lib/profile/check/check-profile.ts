@@ -44,7 +44,7 @@ const families: readonly RuleFamily[] = [
 
 const order: readonly Severity[] = ["stop", "caution", "note"];
 
-/** How far a finding is softened: by how many severities, or `Infinity` for one that says nothing new. */
+/** How far a finding is softened, in severities. A mode that stays and that no slot uses says nothing new. */
 function softening(finding: Finding, family: RuleFamily["family"], context: CheckContext): number {
   const path = parsePath(finding.path);
   if (path?.scope === "slot") return context.unchangedSlots.has(path.number) ? 1 : 0;
@@ -54,7 +54,7 @@ function softening(finding: Finding, family: RuleFamily["family"], context: Chec
   const stays = context.unchangedModes.has(path.key);
   // A mode that is written although no slot uses it still has to be one that the device can hold.
   if ((family === "shape" || family === "device") && !stays) return 0;
-  return stays && mode.users.length === 0 ? 2 : 1;
+  return stays && mode.users.length === 0 ? Number.POSITIVE_INFINITY : 1;
 }
 
 /** Slots that do not change, and modes that no changed slot uses, give cautions at most; lesser things go unsaid. */

@@ -42,7 +42,7 @@ function textFindings(text: Text, context: CheckContext): Finding[] {
       ...base,
       rule: "device.name-characters",
       measured: strange.join(""),
-      sentence: `${text.what} has characters that this device does not show: ${strange.slice(0, 10).join(" ")}`,
+      sentence: `${text.what} has characters that this device does not show: ${strange.slice(0, 10).join(" ")}.`,
     },
   ];
   return [...long, ...unknown];
