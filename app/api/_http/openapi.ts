@@ -32,7 +32,7 @@ export function describeApi(modules: RouteModules): JsonObject {
     paths,
     components: {
       schemas: { Problem: jsonSchema(problemSchema, "output") },
-      securitySchemes: { session: { type: "apiKey", in: "cookie", name: "authjs.session-token" } },
+      securitySchemes: { session: { type: "apiKey", in: "cookie", name: "backporch.session" } },
     },
   };
 }
