@@ -5,11 +5,11 @@ import { TryPicture } from "@/components/site/try-picture";
 import { ButtonLink } from "@/components/ui/button";
 import { screenPresets } from "@/lib/timing/screen-presets";
 
-/** A set of both systems with the frame that such a set may have: invented, for the picture of the front page. */
+/** A wide set of both systems with the frame that such a set may have: invented, for the picture of the front page. */
 function demoScreen() {
   const preset = screenPresets.find(({ id }) => id === "bt470-both");
   if (preset === undefined) throw new Error("The preset of the front page is gone");
-  return { ...preset.envelope, name: "15 kHz CRT", visiblePct: { left: 2.5, right: 2.5, top: 2.5, bottom: 2.5 } };
+  return { ...preset.envelope, name: "wide CRT", aspect: "16:9", visiblePct: { left: 2.5, right: 2.5, top: 2.5, bottom: 2.5 } };
 }
 
 /** What this is, and a simulated device to try at once. */

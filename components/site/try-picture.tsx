@@ -56,7 +56,7 @@ export function TryPicture({ deviceName, document, source, screen }: TryPictureP
         <ScreenCanvas screen={simulated} label={`Simulated picture: ${state}`} />
         <div className="mt-2.5 flex flex-wrap justify-between gap-x-4 gap-y-1 text-muted">
           <span>
-            Simulated: slot {number} of a {deviceName} on a {screen.name.toLowerCase()}
+            Simulated: slot {number} of a {deviceName} on a {screen.name}
           </span>
           <span aria-live="polite" className="figure">
             {simulated.locked ? ratio : state}

@@ -25,6 +25,8 @@ export type ApiRequest<T> = {
   readonly method?: "GET" | "POST" | "PUT" | "PATCH" | "DELETE";
   /** Sent as JSON. */
   readonly body?: unknown;
+  /** A file that is the body, byte for byte. */
+  readonly file?: Blob;
   /** The revision that a change rests on. */
   readonly ifMatch?: string;
   /** The same key for the same act, so that a repeat after a lost answer changes nothing twice. */
@@ -54,6 +56,7 @@ function parseJson(text: string): unknown {
 function headersOf(request: ApiRequest<unknown>): Headers {
   const headers = new Headers({ accept: "application/json" });
   if (request.body !== undefined) headers.set("content-type", "application/json");
+  if (request.file !== undefined) headers.set("content-type", "application/octet-stream");
   if (request.ifMatch !== undefined) headers.set("if-match", request.ifMatch);
   const isWrite = request.method !== undefined && request.method !== "GET";
   if (isWrite) headers.set("idempotency-key", request.idempotencyKey ?? crypto.randomUUID());
@@ -79,7 +82,7 @@ async function send(path: string, request: ApiRequest<unknown>): Promise<Respons
     return await fetch(path, {
       method: request.method ?? "GET",
       headers: headersOf(request),
-      body: request.body === undefined ? undefined : JSON.stringify(request.body),
+      body: request.file ?? (request.body === undefined ? undefined : JSON.stringify(request.body)),
       credentials: "same-origin",
       signal: request.signal,
     });
