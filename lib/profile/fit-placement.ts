@@ -6,6 +6,9 @@ import { isInRange, nearestStep, roundToStep, stepCount, valueOfStep } from "./r
 const FREE_PCT: NumberLimit = { min: 0, max: 200, step: 0.1, unit: "%" };
 const FREE_OFFSET: NumberLimit = { min: -65_535, max: 65_535, step: 1 };
 
+/** More steps than any setting has; keeps a search by halving finite whatever a stranger's limits say. */
+export const MAX_STEPS = 2 ** 40;
+
 /** A stretch of the active raster, ends as counts from its start: all of it, or what a frame leaves visible. */
 export type Window = { readonly from: number; readonly to: number };
 
@@ -17,14 +20,14 @@ function isInside(active: number, sizePct: number, offset: number, window: Windo
 /**
  * The largest size in % that lies inside a window at an offset, on the device's steps; null when none does.
  *
- * An extent grows at both ends as its size does, so the last step that fits is found by halving (bound: 32 probes).
+ * An extent grows at both ends as its size does, so the last step that fits is found by halving (bound: 40 probes).
  */
 export function largestPctInside(active: number, offset: number, window: Window, limit: NumberLimit = FREE_PCT): number | null {
   const fits = (step: number) => {
     const { first, size } = placeExtent(active, valueOfStep(limit, step), offset);
     return first >= window.from && first + size <= window.to;
   };
-  let [low, high] = [0, stepCount(limit)];
+  let [low, high] = [0, Math.min(stepCount(limit), MAX_STEPS)];
   if (!fits(low)) return null;
   while (low < high) {
     const middle = Math.ceil((low + high) / 2);

@@ -19,11 +19,17 @@ export type Overlay = {
 
 type Laid = { readonly slots: readonly ProfileSlot[]; readonly leftOut: ReadonlySet<number> };
 
+/** Without fields that hold `undefined`: they name nothing, and would take the device's value out. */
+function namedOnly<T extends object>(group: T): T {
+  // The same fields but for optional ones that are absent in all but name.
+  return Object.fromEntries(Object.entries(group).filter(([, value]) => value !== undefined)) as T;
+}
+
 function overlaySlot(base: ProfileSlot | undefined, named: ProfileSlot, mode: string | undefined): ProfileSlot {
-  const placement = named.placement && { placement: { ...base?.placement, ...named.placement } };
-  const colour = named.colour && { colour: { ...base?.colour, ...named.colour } };
+  const placement = named.placement && { placement: { ...base?.placement, ...namedOnly(named.placement) } };
+  const colour = named.colour && { colour: { ...base?.colour, ...namedOnly(named.colour) } };
   const { mode: _theProfilesOwn, ...values } = named;
-  return { ...base, ...values, ...placement, ...colour, ...(mode !== undefined && { mode }) };
+  return { ...base, ...namedOnly(values), ...placement, ...colour, ...(mode !== undefined && { mode }) };
 }
 
 function overlaySlots(base: ProfileDocument, laid: Laid, deviceMode: (key: string) => string | undefined): ProfileSlot[] {
@@ -67,8 +73,8 @@ function overlayModes(input: ModesInput): ProfileMode[] {
 function overlayEverywhere(base: ProfileDocument, profile: ProfileDocument, keepTrim: boolean): ProfileDocument["everywhere"] {
   if (!base.everywhere && !profile.everywhere) return undefined;
   const [held, named] = [base.everywhere?.trim, keepTrim ? undefined : profile.everywhere?.trim];
-  const trim = held || named ? { ...held, ...named } : undefined;
-  const { trim: _laidAbove, ...rest } = { ...base.everywhere, ...profile.everywhere };
+  const trim = held || named ? { ...held, ...namedOnly(named ?? {}) } : undefined;
+  const { trim: _laidAbove, ...rest } = { ...base.everywhere, ...namedOnly(profile.everywhere ?? {}) };
   return { ...rest, ...(trim && { trim }) };
 }
 

@@ -54,7 +54,9 @@ export function roundToStep(value: number, limit: NumberLimit): number {
   const last = stepCount(limit);
   const step = nearestStep(value, limit);
   // A range need not end on a step: what lies past the last one but within the range is held as the last one.
-  return valueOfStep(limit, step > last && value <= limit.max + BINARY_NOISE ? last : step);
+  const held = valueOfStep(limit, step > last && value <= limit.max + BINARY_NOISE ? last : step);
+  // So far out of range that its steps cannot be counted.
+  return Number.isFinite(held) ? held : value;
 }
 
 /** Whether a value that stands on the steps lies within them. */
@@ -125,6 +127,7 @@ function roundLeaf(value: unknown, { path, pattern }: At, device: DeviceLimits, 
 
 function roundGroup<T extends object>(group: T, at: At, device: DeviceLimits, notes: Notes): T {
   const entries = Object.entries(group).flatMap(([name, value]: [string, unknown]) => {
+    if (value === undefined) return [];
     const inner = { path: at.path === "" ? name : `${at.path}.${name}`, pattern: at.pattern === "" ? name : `${at.pattern}.${name}` };
     const isGroup = typeof value === "object" && value !== null && !Array.isArray(value);
     const held = isGroup ? roundGroup(value, inner, device, notes) : roundLeaf(value, inner, device, notes);

@@ -4,7 +4,7 @@ import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import type { RasterTiming } from "@/lib/timing/raster";
 import { placementAxes } from "./check/placement";
 import type { Placement, ProfileDocument } from "./document";
-import { nearestOffsetInside, outsideRaster } from "./fit-placement";
+import { MAX_STEPS, nearestOffsetInside, outsideRaster } from "./fit-placement";
 import type { DeviceLimits, NumberLimit } from "./limits";
 import { findMode, findSlot, getValue, parsePath, patternOf, type DocumentPath } from "./paths";
 import { nearestStep, numberLimit, roundTiming, stepCount, valueOfStep } from "./round";
@@ -22,7 +22,7 @@ type Steps = readonly [low: number, high: number];
 /** What makes a value safe, and values near which safe ones lie. Those that pass form one stretch. */
 type Test = { readonly passes: (value: number) => boolean; readonly seeds: readonly number[] };
 
-/** The last step that passes between one that does and `end`, by halving: at most 53 probes. */
+/** The last step that passes between one that does and `end`, by halving: at most 40 probes. */
 function edge(from: number, end: number, passes: (step: number) => boolean): number {
   if (passes(end)) return end;
   let [inside, outside] = [from, end];
@@ -35,7 +35,7 @@ function edge(from: number, end: number, passes: (step: number) => boolean): num
 }
 
 function stepsOf(test: Test, limit: NumberLimit): Steps | null {
-  const last = stepCount(limit);
+  const last = Math.min(stepCount(limit), MAX_STEPS);
   const passes = (step: number) => test.passes(valueOfStep(limit, step));
   const seeds = test.seeds.flatMap((value) => [0, -1, 1].map((by) => Math.min(Math.max(nearestStep(value, limit) + by, 0), last)));
   const seed = [...seeds, 0, last].find(passes);
@@ -126,7 +126,7 @@ function testsFor(path: DocumentPath, input: SafeStretchInput): Test[] {
  * mode's raster for a placement, allowed on the screen for a timing, something left of the picture for trim.
  *
  * @returns the ends, on the device's steps; of several stretches the one that holds the value, or lies nearest to it.
- * Null where the device has no such number or no value of it is safe. Bound: about 60 probes an end and band.
+ * Null where the device has no such number or no value of it is safe. Bound: about 60 probes a band and end.
  */
 export function safeStretch(path: string, input: SafeStretchInput): readonly [number, number] | null {
   const parsed = parsePath(path);

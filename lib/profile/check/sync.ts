@@ -11,6 +11,9 @@ import { leaveOut, setValue } from "./remedies";
 /** Impedance of video. Source: common practice, no source. */
 const VIDEO_LOAD_OHM = 75;
 
+/** Beyond this a cable's own capacitance rounds the sync off. Ours, no source: only a screen's limits that cannot be ask for more. */
+const MAX_SERIES_OHM = 100_000;
+
 export const syncNames: Readonly<Record<SyncKind, string>> = {
   separate: "separate sync",
   composite: "composite sync",
@@ -74,7 +77,8 @@ function levelFinding(number: number, kind: SyncKind, context: CheckContext, scr
   const strong = !atMost(level.loadedVpp, syncVpp[1]);
   if (!strong && atLeast(level.loadedVpp, syncVpp[0])) return [];
   const target = (syncVpp[0] + syncVpp[1]) / 2;
-  const ohm = withUnit(seriesOhm(level, loadOhm, target), "Ω", 0);
+  const ohm = seriesOhm(level, loadOhm, target);
+  const about = ohm > 0 && ohm <= MAX_SERIES_OHM ? ` of about ${withUnit(ohm, "Ω", 0)} for ${withUnit(target, "V", 2)}` : "";
   const span = spanText(syncVpp, (value) => withUnit(value, "V", 2));
   const name = capital(syncNames[kind]);
   return [
@@ -89,7 +93,7 @@ function levelFinding(number: number, kind: SyncKind, context: CheckContext, scr
       detail:
         `This device drives ${withUnit(level.vpp, "V", 2)} before a load, ${withUnit(level.loadedVpp, "V", 2)} into ${withUnit(loadOhm, "Ω", 0)}; ` +
         `your screen lists ${span}. ` +
-        (strong ? `Measure first, or fit an in-line resistor of about ${ohm} for ${withUnit(target, "V", 2)}.` : "Only an amplifier helps."),
+        (strong ? `Measure first, or fit an in-line resistor${about}.` : "Only an amplifier helps."),
       limitSource: limitSourceText(screen.sources?.syncVpp),
       slots: [number],
       remedies: [],

@@ -36,6 +36,15 @@ describe("overlay: what is not named stays", () => {
     expect(merged.modes).toEqual(base.modes);
   });
 
+  it("takes a field that holds undefined for one that is not named", () => {
+    const nothing = documentOf({
+      everywhere: { powerOnSlot: undefined, trim: { leftPx: undefined } },
+      slots: [{ number: 1, name: undefined, mode: undefined, placement: { widthPct: undefined }, syncKind: undefined }],
+    });
+    expect(lay(base, nothing).merged).toEqual(base);
+    expect(lay(base, nothing).unchanged.slots).toEqual([1, 2, 3]);
+  });
+
   it("never changes a left-out slot, nor what it shares: its mode's timing and name, and trim", () => {
     fc.assert(
       fc.property(anyBase, anyProfile, fc.subarray([1, 2, 3, 4, 5]), (from, profile, leftOut) => {
