@@ -10,6 +10,9 @@ import { serveTcp } from "./sim/serve-tcp";
 
 /* A simulated device outside the browser, which keeps its memory over connections for as long as this runs. */
 
+/** Some six bytes at 115 200 baud: fewer writes to the stream, for a reply that is half a ms late at most. */
+const GRAIN_MS = 0.5;
+
 function makeDevice({ definition, pacing }: Wanted): ServedDevice {
   const compiled = compileDriver(definition);
   if (!compiled.ok)
@@ -20,6 +23,7 @@ function makeDevice({ definition, pacing }: Wanted): ServedDevice {
     transport: definition.transport,
     clock,
     pacing,
+    grainMs: GRAIN_MS,
     onBytes: (bytes) => device.onBytes(bytes),
   });
   const device: ServedDevice = { wire, onBytes: () => undefined };

@@ -22,8 +22,10 @@ export type DuplexPortOptions = {
   readonly identity?: SerialPortIdentity;
 };
 
-/** Bytes held for a page that does not read; past that the stream is paused. */
+/** Bytes held for a page that does not read. */
 const OS_BUFFER_BYTES = 65_536;
+/** Bytes that found no room yet; past that the stream is paused. */
+const PAUSE_BYTES = 16_384;
 
 /**
  * A real byte stream behind a port that behaves as the W3C says: connected when the port is opened, destroyed when it is
@@ -95,14 +97,17 @@ export class DuplexPort {
     };
     duplex.on("error", goAway);
     duplex.on("close", goAway);
+    let unread = 0;
     duplex.on("data", (bytes) => {
       if (isOver) return;
-      duplex.pause();
+      unread += bytes.length;
+      if (unread > PAUSE_BYTES) duplex.pause();
       // A refusal says that the host threw the bytes away: that is its right.
-      void far
-        .send(bytes)
-        .catch(() => undefined)
-        .then(() => duplex.resume());
+      const taken = far.send(bytes).catch(() => undefined);
+      void taken.then(() => {
+        unread -= bytes.length;
+        if (unread <= PAUSE_BYTES) duplex.resume();
+      });
     });
     void this.#forward(far, duplex, () => isOver, goAway);
   }

@@ -13,6 +13,11 @@ export type LineOptions = {
   /** Asked for each byte; null: none. */
   readonly fault: () => WireFault | null;
   readonly onEvent: (event: WireEvent) => void;
+  /**
+   * How long bytes that are due may wait for the ones behind them, in ms; 0 by default: each byte at its own moment.
+   * For real streams, where every delivery is a system call.
+   */
+  readonly grainMs?: number;
 };
 
 const PASS: ByteFate = { kind: "pass" };
@@ -95,7 +100,7 @@ export class PacedLine {
 
   #schedule(): void {
     if (this.#dueMs === null || this.#takeBack) return;
-    const waitMs = this.#dueMs - this.#options.clock.nowMs();
+    const waitMs = this.#wakeMs(this.#dueMs) - this.#options.clock.nowMs();
     if (waitMs > 0) {
       this.#takeBack = this.#options.clock.after(waitMs, () => this.#tick());
       return;
@@ -108,6 +113,13 @@ export class PacedLine {
     queueMicrotask(() => {
       if (live) this.#tick();
     });
+  }
+
+  /** When to look: at the next byte's moment, or, with a grain, when as many are due as may wait for one another. */
+  #wakeMs(dueMs: number): number {
+    const { grainMs = 0, source } = this.#options;
+    if (grainMs === 0 || this.#held !== null) return dueMs;
+    return dueMs + Math.min(grainMs, Math.max(0, source.available - 1) * this.#characterMs);
   }
 
   /** Delivers what is due. Each turn takes a byte from the source or ends. */

@@ -18,6 +18,8 @@ export type WiredDeviceOptions = {
   /** Bytes that leave the device's end of the line, when they are due. */
   readonly onBytes: (bytes: Uint8Array) => void;
   readonly fault?: WireFault;
+  /** See `LineOptions`. */
+  readonly grainMs?: number;
 };
 
 /** A device with its line and no port: for byte streams outside the browser, which have no pace of their own. */
@@ -36,12 +38,14 @@ export function createWiredDevice({
   pacing,
   onBytes,
   fault,
+  grainMs,
 }: WiredDeviceOptions): WiredDevice {
   const toDevice = new ByteQueue();
   const toHost = new ByteQueue();
   let room: (() => void) | null = null;
   const shared = {
     clock,
+    grainMs,
     fault: () => fault ?? null,
     onEvent: (event: WireEvent) => {
       if (event.kind === "restart") model.restart();

@@ -8,7 +8,7 @@ import type { ByteFault, WireEvent, WireFault } from "@/lib/serial/simulator/wir
 
 type Arrival = { readonly byte: number; readonly atMs: number };
 
-function line(clock: Clock, fault: WireFault | null = null) {
+function line(clock: Clock, fault: WireFault | null = null, grainMs = 0) {
   const source = new ByteQueue();
   const arrivals: Arrival[] = [];
   const events: WireEvent[] = [];
@@ -23,6 +23,7 @@ function line(clock: Clock, fault: WireFault | null = null) {
     },
     deliver: (bytes) => bytes.forEach((byte) => arrivals.push({ byte, atMs: clock.nowMs() })),
     fault: () => fault,
+    grainMs,
     onEvent: (event) => events.push(event),
   });
   paced.setPace(1);
@@ -84,6 +85,16 @@ describe("a paced line", () => {
     expect(arrivals).toHaveLength(1000);
     // 1000 bytes of 0.1 ms are 100 ms; the last timer comes at most 16 ms late.
     expect(arrivals.at(-1)?.atMs).toBeLessThanOrEqual(116);
+  });
+
+  test("with a grain brings bytes in groups, none later than the grain and none early", async () => {
+    const clock = createVirtualClock();
+    const { put, arrivals } = line(clock, null, 3);
+    put(0, 1, 2, 3, 4, 5);
+    await clock.advance(20);
+    put(6);
+    await clock.advance(20);
+    expect(arrivals.map(({ atMs }) => atMs)).toEqual([4, 4, 4, 4, 6, 6, 21]);
   });
 
   test("with no pace brings bytes before any time passes", async () => {
