@@ -47,7 +47,7 @@ function idleFindings({ device, screen, slot }: RecallInput): Finding[] {
     ];
   }
   if (!screen) return [];
-  return idleFinding(device, screen, "withoutInput").map((finding) => ({
+  return idleFinding(device, screen, ["withoutInput"]).map((finding) => ({
     ...finding,
     severity: "stop",
     detail: `Nothing arrives for slot ${slot}, so this raster comes out. ${finding.detail ?? ""}`,

@@ -21,6 +21,8 @@ export const syncNames: Readonly<Record<SyncKind, string>> = {
   onLuma: "sync on luma",
 };
 
+const syncKinds = Object.keys(syncNames) as SyncKind[]; // the record's own keys
+
 function isKind(word: string): word is SyncKind {
   return word in syncNames;
 }
@@ -69,7 +71,13 @@ function seriesOhm(level: Level, loadOhm: number, targetVpp: number): number {
   return (loadOhm * level.vpp) / targetVpp - loadOhm - (level.sourceOhm ?? 0);
 }
 
-function levelFinding(number: number, kind: SyncKind, context: CheckContext, screen: ScreenEnvelope): Finding[] {
+/** A level is the output's, not the slot's: one finding a kind, about the slots that change, or else those that have it. */
+function levelFinding(kind: SyncKind, context: CheckContext, screen: ScreenEnvelope): Finding[] {
+  const users = context.slots.filter(({ slot }) => slot.syncKind === kind).map(({ number }) => number);
+  const changed = users.filter((number) => !context.unchangedSlots.has(number));
+  const slots = changed.length > 0 ? changed : users;
+  const [first] = slots;
+  if (first === undefined) return [];
   const output = context.device?.syncOutputs.find((one) => one.kind === kind);
   const { syncVpp, loadOhm = VIDEO_LOAD_OHM } = screen;
   const level = output && levelAt(output, loadOhm);
@@ -84,7 +92,7 @@ function levelFinding(number: number, kind: SyncKind, context: CheckContext, scr
   return [
     {
       rule: "sync.level",
-      path: slotPath(number, "syncKind"),
+      path: slotPath(first, "syncKind"),
       severity: "caution",
       measured: level.loadedVpp,
       limit: syncVpp,
@@ -95,7 +103,7 @@ function levelFinding(number: number, kind: SyncKind, context: CheckContext, scr
         `your screen lists ${span}. ` +
         (strong ? `Measure first, or fit an in-line resistor${about}.` : "Only an amplifier helps."),
       limitSource: limitSourceText(screen.sources?.syncVpp),
-      slots: [number],
+      slots,
       remedies: [],
     },
   ];
@@ -105,8 +113,6 @@ function levelFinding(number: number, kind: SyncKind, context: CheckContext, scr
 export function syncFindings(context: CheckContext): Finding[] {
   const { screen, device } = context;
   if (!screen) return [];
-  return context.slots.flatMap(({ number, slot }) => [
-    ...syncKindFinding(number, slot.syncKind, screen, device),
-    ...(slot.syncKind === undefined ? [] : levelFinding(number, slot.syncKind, context, screen)),
-  ]);
+  const kinds = context.slots.flatMap(({ number, slot }) => syncKindFinding(number, slot.syncKind, screen, device));
+  return [...kinds, ...syncKinds.flatMap((kind) => levelFinding(kind, context, screen))];
 }

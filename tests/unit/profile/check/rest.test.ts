@@ -63,6 +63,13 @@ describe("sync", () => {
     expect(level(0.6, 75)).toEqual([]);
   });
 
+  it("tells a level once a kind of sync, for the slots that change", () => {
+    const slots = [1, 2, 3].map((number) => ({ number, syncKind: "composite" as const }));
+    const level = (unchanged: number[]) => theOne("sync.level", { document: documentOf({ slots }), device: lf8, screen: television, unchanged: { slots: unchanged, modes: [] } });
+    expect(level([1])).toMatchObject({ severity: "caution", path: "slots[2].syncKind", slots: [2, 3] });
+    expect(level([1, 2, 3])).toMatchObject({ severity: "note", path: "slots[1].syncKind", slots: [1, 2, 3] });
+  });
+
   it("states a level that ngspice gives for the same divider", () => {
     // ngspice, one resistor chain, .op: 5 V behind 50 Ω and 430 Ω in series into 75 Ω give 0.675 676 V.
     const device = { ...lf8, syncOutputs: [{ kind: "composite" as const, vpp: 5, sourceOhm: 480 }] };

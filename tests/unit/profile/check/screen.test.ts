@@ -72,6 +72,15 @@ describe("screen", () => {
   });
 });
 
+describe("screen idle", () => {
+  it("is told once where the device puts the same raster out at several moments", () => {
+    const raster = timingOf("480p60");
+    const device = { ...lf8, idle: { switchOn: raster, withoutInput: raster, afterReset: timingOf("240p60") } };
+    const idle = theOne("screen.idle", { document: oneSlot({}), device, screen: television });
+    expect(idle.sentence).toBe("The raster at switch-on and without input runs at 31.469 kHz, too fast for this screen.");
+  });
+});
+
 describe("what softens a finding", () => {
   const bad = documentOf({
     modes: [{ key: "1", timing: timingOf("480p60") }, { key: "2", timing: timingOf("480p60") }, { key: "3", timing: timingOf("480p60") }],
