@@ -131,6 +131,8 @@ export async function getBackup(db: Db, key: OwnedKey): Promise<Result<BackupDet
 }
 
 export type BackupValues = {
+  /** Chosen by the demo alone. */
+  readonly id?: string | undefined;
   readonly deviceId: string;
   readonly name: string;
   readonly cause: "by-hand" | "before-run" | "after-run";

@@ -121,6 +121,8 @@ export async function getDevice(db: Db, key: OwnedKey): Promise<Result<DeviceVie
 }
 
 export type DeviceValues = {
+  /** Chosen by the demo alone. */
+  readonly id?: string | undefined;
   readonly name: string;
   readonly driver: { readonly slug: string; readonly version: string };
   readonly maker: string;

@@ -51,17 +51,21 @@ async function insertRevision(tx: Db, values: RevisionValues): Promise<string> {
   return made.id;
 }
 
-/** Makes a profile with its first revision. The document has a title. */
+/**
+ * Makes a profile with its first revision. The document has a title.
+ * An `id` is chosen by the demo alone.
+ */
 export async function createProfile(
   db: Db,
   author: Author,
-  { visibility, ...made }: NewDocument & { readonly visibility: "private" | "shared" },
+  { visibility, id, ...made }: NewDocument & { readonly visibility: "private" | "shared"; readonly id?: string },
 ): Promise<ProfileDetail> {
   return db.transaction(async (tx) => {
     const [row] = await tx
       .insert(profile)
       .values({
         ...searchedColumns(made.document),
+        id,
         ownerId: author.id,
         visibility,
         currentRevision: 1,

@@ -72,6 +72,8 @@ export async function getScreen(db: Db, key: OwnedKey): Promise<Result<ScreenVie
 }
 
 export type ScreenValues = {
+  /** Chosen by the demo alone. */
+  readonly id?: string | undefined;
   readonly envelope: ScreenEnvelope;
   readonly presetId?: string | undefined;
   readonly notes?: string | undefined;
@@ -80,10 +82,10 @@ export type ScreenValues = {
 /** Stores a new screen; its name is the envelope's. */
 export async function createScreen(db: Db, ownerId: string, values: ScreenValues): Promise<ScreenView> {
   return db.transaction(async (tx) => {
-    const { envelope, presetId, notes } = values;
+    const { id, envelope, presetId, notes } = values;
     const [made] = await tx
       .insert(screen)
-      .values({ ownerId, name: envelope.name, envelope, presetId, notes })
+      .values({ id, ownerId, name: envelope.name, envelope, presetId, notes })
       .returning(columns);
     if (made === undefined) throw new Error("an insert gave no row");
     await writeAudit(tx, { actorId: ownerId, action: "screen.create", subject: made.id });
