@@ -13,3 +13,8 @@ export type CatalogueEntry = {
   /** What the name does not say, such as the variant of a line count. */
   readonly note?: string | undefined;
 };
+
+/** A DMT identifier as VESA prints it: "0x0f". */
+export function dmtCode(code: number): string {
+  return `0x${code.toString(16).padStart(2, "0")}`;
+}

@@ -1,5 +1,5 @@
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
-import type { CatalogueEntry } from "@/lib/timing/catalogue/catalogue-entry";
+import { dmtCode, type CatalogueEntry } from "@/lib/timing/catalogue/catalogue-entry";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { figure, withUnit } from "@/lib/timing/figure-text";
 import type { FittedRaster } from "@/lib/timing/fit/fit-types";
@@ -36,9 +36,7 @@ function blankingNote({ axis, part, measured, unit, span }: BlankingVerdict): st
 /** "CTA-861, code 8, 262 lines in all" */
 export function standardWords(entry: CatalogueEntry): string {
   const code =
-    entry.code === undefined
-      ? entry.name
-      : `code ${entry.document === "VESA DMT" ? `0x${entry.code.toString(16)}` : entry.code}`;
+    entry.code === undefined ? entry.name : `code ${entry.document === "VESA DMT" ? dmtCode(entry.code) : entry.code}`;
   return [entry.document, code, entry.note].filter((word) => word !== undefined).join(", ");
 }
 

@@ -1,0 +1,74 @@
+import { catalogue } from "@/lib/timing/catalogue/catalogue";
+import type { ScreenEnvelope } from "@/lib/timing/envelope";
+import { fitRaster } from "@/lib/timing/fit/fit-raster";
+import type { FitWish } from "@/lib/timing/fit/fit-types";
+import { judgeBlanking } from "@/lib/timing/judge-blanking";
+import { judgeEnvelope } from "@/lib/timing/judge-envelope";
+import { screenPresets } from "@/lib/timing/screen-presets";
+
+/** One measured figure and what it may be at most. */
+export type TimingMeasurement = {
+  readonly name: string;
+  readonly value: number;
+  readonly unit: string;
+  readonly limit: number;
+};
+
+const RUNS = 25;
+
+/** Median of `RUNS` runs in ms, after as many that warm up. */
+function medianMs(run: () => void): number {
+  for (let index = 0; index < RUNS; index += 1) run();
+  const times = Array.from({ length: RUNS }, () => {
+    const start = performance.now();
+    run();
+    return performance.now() - start;
+  });
+  return times.sort((a, b) => a - b)[Math.floor(RUNS / 2)] ?? Infinity;
+}
+
+const wide: ScreenEnvelope = { name: "wide band", bands: [{ lineRateHz: [15_000, 80_000], fieldRateHz: [45, 100] }] };
+const device = { clockHz: { min: 5e6, max: 165e6, step: 50_000 } };
+const wish: FitWish = { activeLines: 240, activePx: 1440, fieldRateHz: 60, interlaced: false };
+
+function fit(request: Parameters<typeof fitRaster>[0], fits: boolean): void {
+  const result = fitRaster(request);
+  if (!result.ok || result.value.fits.length > 0 !== fits) throw new Error("not the outcome that is measured");
+}
+
+/** How long the engine takes: a fit in a wide band, the answer when nothing fits, the whole catalogue against a screen. */
+export function measureTiming(): Promise<TimingMeasurement[]> {
+  const television = screenPresets[0]?.envelope ?? wide;
+  const figures: TimingMeasurement[] = [
+    {
+      name: "fit 240 lines in a wide band",
+      value: medianMs(() => fit({ wish, screen: wide, device }, true)),
+      unit: "ms",
+      limit: 20,
+    },
+    {
+      name: "fit 1080 lines in a wide band",
+      value: medianMs(() => fit({ wish: { ...wish, activeLines: 1080, activePx: 1920 }, screen: wide, device }, true)),
+      unit: "ms",
+      limit: 20,
+    },
+    {
+      name: "270 lines that fit nowhere, with reasons and the nearest",
+      value: medianMs(() => fit({ wish: { ...wish, activeLines: 270 }, screen: television, device }, false)),
+      unit: "ms",
+      limit: 100,
+    },
+    {
+      name: "the whole catalogue against a screen",
+      value: medianMs(() => {
+        for (const { timing } of catalogue) {
+          judgeEnvelope(timing, television);
+          judgeBlanking(timing);
+        }
+      }),
+      unit: "ms",
+      limit: 50,
+    },
+  ];
+  return Promise.resolve(figures);
+}
