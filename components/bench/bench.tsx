@@ -48,7 +48,7 @@ function BenchColumns() {
   const [chosen, setChosen] = useState<number | null>(null);
   const slot = chosen ?? activeSlot ?? firstSlot;
   return (
-    <div className="grid flex-1 lg:grid-cols-[minmax(380px,420px)_minmax(0,1fr)] xl:grid-cols-[420px_minmax(0,1fr)_372px]">
+    <div className="grid flex-1 lg:grid-cols-[minmax(400px,452px)_minmax(0,1fr)] xl:grid-cols-[452px_minmax(0,1fr)_352px]">
       <div className="gutter border-line py-4 lg:border-r">
         <h1 className="sr-only">Bench</h1>
         <SlotsColumn chosen={slot} onChoose={setChosen} />

@@ -1,5 +1,6 @@
 "use client";
 
+import { useQueryClient } from "@tanstack/react-query";
 import Link from "next/link";
 import { SelectField } from "@/components/ui/field";
 import { useBench, useBenchActions } from "@/components/bench/bench-provider";
@@ -21,9 +22,10 @@ export function ScreenChooser() {
   const isRunning = useBench((state) => state.activity === "running");
   const { chooseScreen, acceptUnknownScreen, forgetScreen } = useBenchActions();
   const current = screen.kind === "known" ? choices.find((choice) => (screen.id === null ? choice.envelope.name === screen.envelope.name : choice.id === screen.id)) : undefined;
+  const client = useQueryClient();
   const choose = (key: string) => {
     const choice = choices.find((one) => one.key === key);
-    if (choice) chooseScreen(choice.envelope, choice.id);
+    if (choice) void chooseScreen(choice).then(() => client.invalidateQueries({ queryKey: ["screens"] }));
     else if (key === UNKNOWN) acceptUnknownScreen();
     else forgetScreen();
   };

@@ -34,7 +34,7 @@ function SlotRow({ line, isChosen, onChoose }: { readonly line: SlotLine; readon
   const { askRecall } = useBenchActions();
   const isFree = useBench((state) => state.activity === "idle" && state.link.name === "ready");
   return (
-    <li className={classNames("grid grid-cols-[26px_minmax(0,1fr)_auto] items-center gap-x-3 border-l-3 py-1.5 pr-2 pl-2", line.active ? "border-lamp" : "border-transparent", isChosen && "bg-surface")}>
+    <li className={classNames("grid grid-cols-[18px_minmax(0,1fr)_112px_64px] items-center gap-x-2.5 border-l-3 py-1.5 pl-2", line.active ? "border-lamp" : "border-transparent", isChosen && "bg-surface")}>
       <span className={classNames("figure", line.active ? "text-lamp" : "text-muted")}>{line.number}</span>
       <button
         type="button" aria-pressed={isChosen} onClick={() => onChoose(line.number)}
@@ -43,19 +43,15 @@ function SlotRow({ line, isChosen, onChoose }: { readonly line: SlotLine; readon
       >
         <Tape name={line.name} className="w-full" />
       </button>
-      <div className="flex w-[196px] items-center justify-between gap-2">
-        {line.timing === null ? <span /> : (
-          <span className="flex items-center gap-1.5">
-            {line.changed ? <><ChangedRing /><span className="sr-only">changed</span></> : null}
-            <ModeMark timing={line.timing} stacked />
-          </span>
-        )}
-        {line.timing === null || line.active ? (
-          <span className="text-sm text-muted">{line.active ? "active" : ""}</span>
-        ) : (
-          <Button size="small" disabled={!isFree} onClick={() => void askRecall(line.number)} aria-label={`Recall slot ${line.number}`}>Recall</Button>
-        )}
-      </div>
+      <span className="flex items-center gap-1.5">
+        {line.changed ? <><ChangedRing /><span className="sr-only">changed</span></> : null}
+        {line.timing === null ? null : <ModeMark timing={line.timing} stacked />}
+      </span>
+      {line.timing === null || line.active ? (
+        <span className="text-center text-sm text-muted">{line.active ? "active" : ""}</span>
+      ) : (
+        <Button size="small" disabled={!isFree} onClick={() => void askRecall(line.number)} aria-label={`Recall slot ${line.number}`}>Recall</Button>
+      )}
     </li>
   );
 }

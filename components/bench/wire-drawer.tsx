@@ -3,8 +3,11 @@
 import { useState } from "react";
 import { ChevronDown, ChevronUp } from "lucide-react";
 import { Button } from "@/components/ui/button";
+import { Checkbox } from "@/components/ui/checkbox";
 import { TextField } from "@/components/ui/field";
 import { formatFigure, formatNumber } from "@/components/ui/figures";
+import { useBenchCore } from "@/components/bench/bench-provider";
+import { downloadRecording } from "@/components/bench/save-recording";
 import { useWireLines } from "@/components/bench/use-wire-lines";
 import type { WireLine } from "@/components/bench/wire-lines";
 
@@ -15,6 +18,8 @@ const LINES_SHOWN = 200;
 export function WireDrawer() {
   const [isOpen, setOpen] = useState(false);
   const [filter, setFilter] = useState("");
+  const [strikeOut, setStrikeOut] = useState(true);
+  const core = useBenchCore();
   const { lines, total } = useWireLines(isOpen ? filter : "", isOpen ? LINES_SHOWN : 3);
   return (
     <section aria-labelledby="wire-head" className="border-t border-line bg-sunk">
@@ -22,6 +27,12 @@ export function WireDrawer() {
         <h2 id="wire-head" className="text-[15px]">Wire log</h2>
         <span className="figure text-muted">{formatNumber(total)} exchanges</span>
         <span className="flex-1" />
+        {isOpen ? (
+          <>
+            <Checkbox label="Strike out names and serial numbers" checked={strikeOut} onChange={setStrikeOut} />
+            <Button size="small" onClick={() => downloadRecording(core, strikeOut)}>Save a recording</Button>
+          </>
+        ) : null}
         <Button size="small" aria-expanded={isOpen} icon={isOpen ? <ChevronDown aria-hidden size={15} /> : <ChevronUp aria-hidden size={15} />} onClick={() => setOpen(!isOpen)}>{isOpen ? "Close" : "Open"}</Button>
       </div>
       {isOpen ? <div className="gutter pb-2"><TextField label="Filter" placeholder="HPOS" value={filter} onChange={(event) => setFilter(event.target.value)} fieldClassName="max-w-[260px]" /></div> : null}

@@ -27,7 +27,7 @@ const maxProblems = 50;
  */
 export function contentFromRead(
   definition: DriverDefinition,
-  { values, unreadable }: { readonly values: NativeValues; readonly unreadable: readonly NativeKey[] },
+  { values, unreadable, firmware }: { readonly values: NativeValues; readonly unreadable: readonly NativeKey[]; readonly firmware: string },
 ): Result<BackupContent, PathMessage[]> {
   const driver = compiledDriver(definition);
   const foreign = [...Object.keys(values), ...unreadable].filter((key) => !driver.byKey.has(key));
@@ -37,7 +37,7 @@ export function contentFromRead(
     ...foreign.map((path) => ({ path, message: "The driver has no such setting." })),
     ...missing.map((path) => ({ path, message: "Was neither read nor named as unreadable." })),
   ];
-  return problems.length > 0 ? fail(problems.slice(0, maxProblems)) : ok(backupContent(driver, { values, unreadable }));
+  return problems.length > 0 ? fail(problems.slice(0, maxProblems)) : ok(backupContent(driver, { values, unreadable }, firmware));
 }
 
 /** Whether a device of this driver has such a slot. */

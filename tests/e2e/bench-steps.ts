@@ -48,3 +48,34 @@ export async function readCautions(page: Page): Promise<void> {
 export function trial(page: Page, state: string) {
   return page.locator(`[data-run-state="${state}"]`);
 }
+
+/** Moves a figure by so many of the device's steps. */
+export async function moveBy(page: Page, label: string, steps: number): Promise<void> {
+  const slider = page.getByRole("slider", { name: new RegExp(label, "u") });
+  for (let n = 0; n < Math.abs(steps); n += 1) await slider.press(steps > 0 ? "ArrowRight" : "ArrowLeft");
+}
+
+/** Reviews what was changed by hand, and tries it. */
+export async function tryIt(page: Page): Promise<void> {
+  await page.getByRole("button", { name: "Review the plan" }).click();
+  await readCautions(page);
+  await page.getByRole("button", { name: "Back up and try" }).click();
+  await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
+}
+
+/** The texts of the wire log that have the filter in them. */
+export async function wireText(page: Page, filter: string): Promise<string[]> {
+  const log = page.getByRole("region", { name: "Wire log" });
+  if ((await log.getByRole("button", { name: "Open" }).count()) > 0) await log.getByRole("button", { name: "Open" }).click();
+  await log.getByLabel("Filter").fill(filter);
+  await expect(log.getByRole("region", { name: "Exchanges" })).toBeVisible();
+  return log.locator("tbody tr td:nth-child(3)").allInnerTexts();
+}
+
+/** Every way that a page can reach a device in these tests. */
+export const WIRES: readonly Wire[] = ["simulated"];
+
+/** Makes the page ready for a wire, before it is opened. @returns what ends it */
+export async function prepareWire(_page: Page, _wire: Wire): Promise<() => Promise<void>> {
+  return () => Promise.resolve();
+}

@@ -1,14 +1,13 @@
 import { getValue } from "@/lib/profile/paths";
 import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
 import type { SourceFormat } from "@/lib/timing/raster";
-import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { connectReal, connectSimulated, disconnect, reconnect } from "@/components/bench/store/linking";
 import { backUp, readDevice } from "@/components/bench/store/reading";
 import { askRecall, recallHeld } from "@/components/bench/store/recalling";
 import { acknowledge, leaveOut, openReview, setCountdown, takeRemedy, withEdit } from "@/components/bench/store/review";
 import { act } from "@/components/bench/store/run-control";
-import { acceptUnknownScreen, chooseScreen, forgetScreen } from "@/components/bench/store/screens";
+import { acceptUnknownScreen, chooseScreen, forgetScreen, type ScreenChoice } from "@/components/bench/store/screens";
 import { backUpAndTry } from "@/components/bench/store/try-plan";
 import type { BenchTarget } from "@/components/bench/store/types";
 
@@ -26,8 +25,7 @@ async function nameDevice(core: BenchCore, name: string): Promise<void> {
   const { device } = core.store.getState();
   if (!device?.stored) return;
   try {
-    const row = await core.around.server.findDevice(device.driver.slug, device.identity.serialNumber ?? "");
-    if (!row) throw new Error("The server no longer has this device.");
+    const row = await core.around.server.device(device.stored.id);
     const named = await core.around.server.changeDevice(row, { name });
     core.store.setState((state) => ({ device: state.device && { ...state.device, stored: state.device.stored && { ...state.device.stored, name: named.name } } }));
   } catch (error) {
@@ -65,11 +63,11 @@ export function createBenchActions(core: BenchCore) {
     openReview: (target: BenchTarget) => openReview(core, target),
     closeReview: () => store.setState({ review: null }),
     leaveOut: (slot: number, isOut: boolean) => leaveOut(core, slot, isOut),
-    acknowledge: (key: string, isRead: boolean) => acknowledge(core, key, isRead),
+    acknowledge: (keys: readonly string[], isRead: boolean) => acknowledge(core, keys, isRead),
     setCountdown: (seconds: number) => setCountdown(core, seconds),
     takeRemedy: (remedy: Remedy) => takeRemedy(core, remedy),
     backUpAndTry: () => backUpAndTry(core),
-    chooseScreen: (envelope: ScreenEnvelope, id: string | null) => void chooseScreen(core, envelope, id),
+    chooseScreen: (choice: ScreenChoice) => chooseScreen(core, choice),
     acceptUnknownScreen: () => acceptUnknownScreen(core),
     forgetScreen: () => forgetScreen(core),
     keep: () => void act(core, (run) => run.keep()),

@@ -3,9 +3,10 @@ import { devicePage, deviceView, type DeviceChange, type DeviceView, type NewDev
 import { planDetail, planView, type NewPlan, type PlanView } from "@/lib/contracts/plan";
 import { profileDetail, revisionDetail, type ProfileDetail, type RevisionDetail } from "@/lib/contracts/profile";
 import { runPage, runView, stepList, type NewRun, type NewSteps, type RunView } from "@/lib/contracts/run";
-import { screenPage, type ScreenView } from "@/lib/contracts/screen";
+import { screenPage, screenView, type ScreenView } from "@/lib/contracts/screen";
 import { callApi } from "@/components/ui/api";
 import type { z } from "zod";
+import type { ScreenEnvelope } from "@/lib/timing/envelope";
 
 /** The most steps of one run that are asked for in one go; the route allows as many. */
 const STEPS_AT_ONCE = 1000;
@@ -19,6 +20,7 @@ export const benchServer = {
     const query = new URLSearchParams({ driverSlug, serialNumber });
     return (await callApi(`/api/devices?${query}`, { shape: devicePage })).items[0] ?? null;
   },
+  device: (id: string): Promise<DeviceView> => callApi(`/api/devices/${id}`, { shape: deviceView }),
   createDevice: (device: NewDevice): Promise<DeviceView> => callApi("/api/devices", { method: "POST", body: device, shape: deviceView }),
   changeDevice: (device: DeviceView, change: DeviceChange): Promise<DeviceView> =>
     callApi(`/api/devices/${device.id}`, { method: "PATCH", body: change, ifMatch: `"${device.version}"`, shape: deviceView }),
@@ -31,6 +33,8 @@ export const benchServer = {
   async screens(): Promise<readonly ScreenView[]> {
     return (await callApi("/api/screens?limit=100", { shape: screenPage })).items;
   },
+  createScreen: (envelope: ScreenEnvelope, presetId: string | null): Promise<ScreenView> =>
+    callApi("/api/screens", { method: "POST", body: { envelope, presetId: presetId ?? undefined }, shape: screenView }),
   profile: (id: string): Promise<ProfileDetail> => callApi(`/api/profiles/${id}`, { shape: profileDetail }),
   revision: (id: string, number: number): Promise<RevisionDetail> => callApi(`/api/profiles/${id}/revisions/${number}`, { shape: revisionDetail }),
   storePlan: (plan: NewPlan): Promise<PlanView> => callApi("/api/plans", { method: "POST", body: plan, shape: planView }),

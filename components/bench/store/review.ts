@@ -6,6 +6,7 @@ import { planEdits } from "@/lib/serial/plan/plan-edits";
 import { COUNTDOWN_SECONDS } from "@/lib/serial/run/create-run";
 import type { Planned } from "@/lib/serial/plan/types";
 import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
+import { readBefore, rememberRead } from "@/components/bench/store/read-before";
 import type { BenchCore } from "@/components/bench/store/bench-core";
 import type { BenchReview, BenchTarget } from "@/components/bench/store/types";
 
@@ -36,7 +37,7 @@ export function replan(core: BenchCore, change: Partial<Choices> = {}): void {
 }
 
 export function openReview(core: BenchCore, target: BenchTarget): void {
-  const choices: Choices = { target, leftOut: [], acknowledged: [], countdownSeconds: COUNTDOWN_SECONDS.default };
+  const choices: Choices = { target, leftOut: [], acknowledged: knownBefore(core), countdownSeconds: COUNTDOWN_SECONDS.default };
   const next = planFor(core, choices);
   if (next) core.store.setState({ review: { ...choices, planned: next }, notice: null });
 }
@@ -48,11 +49,18 @@ export function leaveOut(core: BenchCore, slot: number, isOut: boolean): void {
   replan(core, { leftOut: isOut ? [...others, slot].sort((a, b) => a - b) : others });
 }
 
-export function acknowledge(core: BenchCore, key: string, isRead: boolean): void {
-  const { review } = core.store.getState();
+/** What the owner read of one screen; unknown limits are acknowledged once a screen, in this browser. */
+function knownBefore(core: BenchCore): readonly string[] {
+  const { screen } = core.store.getState();
+  return screen.kind === "known" ? readBefore(core.around.storage, screen) : [];
+}
+
+export function acknowledge(core: BenchCore, keys: readonly string[], isRead: boolean): void {
+  const { review, screen } = core.store.getState();
   if (!review) return;
-  const others = review.acknowledged.filter((one) => one !== key);
-  replan(core, { acknowledged: isRead ? [...others, key].sort() : others });
+  const others = review.acknowledged.filter((one) => !keys.includes(one));
+  if (screen.kind === "known") rememberRead(core.around.storage, screen, keys, isRead);
+  replan(core, { acknowledged: isRead ? [...others, ...keys].sort() : others });
 }
 
 /** How long the trial will wait: no part of the plan, so nothing is planned again. */

@@ -5,10 +5,14 @@ import type { DeviceSession, ReadProgress, RequestError, WholeRead } from "@/lib
 import { documentFromNative } from "./document";
 import type { BackupContent, TakenBackup } from "./types";
 
-/** The content of a backup made from a whole read. */
-export function backupContent(driver: CompiledDriver, { values, unreadable }: Pick<WholeRead, "values" | "unreadable">): BackupContent {
+/**
+ * The content of a backup made from a whole read.
+ *
+ * @param firmware the version that ran when it was read: it stands in the document, so that a plan can be checked against it
+ */
+export function backupContent(driver: CompiledDriver, { values, unreadable }: Pick<WholeRead, "values" | "unreadable">, firmware: string): BackupContent {
   const { slug, version } = driver.definition;
-  return { driver: { slug, version }, values, unreadable, document: documentFromNative(driver, values) };
+  return { driver: { slug, version }, values, unreadable, document: { ...documentFromNative(driver, values), madeFor: { driver: { slug, firmware } } } };
 }
 
 /**
@@ -27,5 +31,5 @@ export async function takeBackup(
   if (arriving && !arriving.ok) return arriving;
   const { values, activeSlot } = read.value;
   const rasterOut = read.value.rasterOut === undefined ? rasterOfSlot(driver, new Map(Object.entries(values)), activeSlot) : read.value.rasterOut;
-  return ok({ content: backupContent(driver, read.value), identity: state.identity, activeSlot, arriving: arriving?.value.format ?? null, rasterOut });
+  return ok({ content: backupContent(driver, read.value, state.identity.firmware), identity: state.identity, activeSlot, arriving: arriving?.value.format ?? null, rasterOut });
 }

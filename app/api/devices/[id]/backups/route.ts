@@ -41,7 +41,7 @@ export const POST = withRoute(
   async ({ user, params, body }) => {
     const driver = findDriver(body.content.driver);
     if (!driver.ok) return respond(driver, { "no-driver": 422 });
-    const content = contentFromRead(driver.value, body.content);
+    const content = contentFromRead(driver.value, { ...body.content, firmware: body.firmware });
     if (!content.ok) return problem(422, { code: "not-this-driver", errors: content.error });
     if (!hasSlot(driver.value, body.activeSlot)) {
       return problem(422, {

@@ -1,0 +1,36 @@
+import { expect, test } from "@/tests/e2e/fixtures";
+import { chooseScreen, connect, prepareWire, register, settled, WIRES, wireText } from "@/tests/e2e/bench-steps";
+
+for (const wire of WIRES) {
+  test(`switch over ${wire}: a slot is checked against the screen, recalled once, read back`, async ({ page }) => {
+    const end = await prepareWire(page, wire);
+    await register(page);
+    await connect(page, wire);
+    await chooseScreen(page, "Any 525-line television");
+    await page.getByRole("button", { name: "Recall slot 2" }).click();
+    const asked = page.getByRole("dialog", { name: "Recall slot 2" });
+    if (await asked.isVisible()) await asked.getByRole("button", { name: "Recall slot 2" }).click();
+    await expect(page.getByText("Slot 2 is on: recalled once and read back.")).toBeVisible();
+    await settled(page);
+    await expect(page.getByText("480 lines, interlaced")).toBeVisible();
+    await expect(page.locator("[data-locked=true]")).toBeVisible();
+    expect((await wireText(page, "*RCL")).filter((line) => line.startsWith("*RCL 2"))).toHaveLength(1);
+    await end();
+  });
+
+  test(`switch over ${wire}: a slot that the screen cannot take never leaves the page`, async ({ page, expectAccessible }) => {
+    const end = await prepareWire(page, wire);
+    await register(page);
+    await connect(page, wire);
+    await chooseScreen(page, "Any 525-line television");
+    await page.getByRole("button", { name: "Recall slot 5" }).click();
+    const held = page.getByRole("dialog", { name: "Recall slot 5" });
+    await expect(held).toContainText("outside what the screen takes");
+    await expect(held.locator("[data-severity=stop]").first()).toBeVisible();
+    await expect(held.getByRole("button", { name: "Recall slot 5" })).toHaveCount(0);
+    await expectAccessible(page);
+    await held.getByRole("button", { name: "Stay on this slot" }).click();
+    expect((await wireText(page, "*RCL")).filter((line) => line.startsWith("*RCL 5"))).toHaveLength(0);
+    await end();
+  });
+}

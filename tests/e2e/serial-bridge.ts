@@ -1,0 +1,80 @@
+import path from "node:path";
+import type { Page } from "@playwright/test";
+import { build } from "vite";
+import type { UnplugOrder } from "@/lib/serial/simulator/far-end";
+import { BridgeLine } from "./serial-bridge-line";
+import { BRIDGE } from "./serial-bridge-words";
+import type { PageSays } from "./serial-bridge-words";
+
+export type SerialBridge = {
+  /** Pulls the adapter out of the page's machine; the device keeps its power. */
+  readonly unplug: (order?: UnplugOrder) => Promise<void>;
+  /** Plugs it in again: the page gets a new port object. */
+  readonly plugIn: () => Promise<void>;
+  /** Another program has the port, or lets it go. */
+  readonly refuseOpen: (refuses: boolean) => void;
+  /** Ends the byte stream, as a pulled plug at the device's end does. */
+  readonly cut: () => void;
+  readonly isOpen: () => boolean;
+  /** Bytes that the page has sent to the device. */
+  readonly bytesToDevice: () => number;
+};
+
+let pageCode: Promise<string> | null = null;
+
+/** The page's part in one script. */
+async function bundle(): Promise<string> {
+  const result = await build({
+    configFile: false,
+    logLevel: "silent",
+    resolve: { alias: { "@": path.resolve(import.meta.dirname, "../..") } },
+    build: {
+      write: false,
+      minify: false,
+      lib: {
+        entry: path.join(import.meta.dirname, "serial-bridge-page.ts"),
+        formats: ["iife"],
+        name: "backporchSerialPage",
+      },
+    },
+  });
+  const [first] = Array.isArray(result) ? result : [result];
+  const chunk = first && "output" in first ? first.output[0] : undefined;
+  if (chunk?.type !== "chunk") throw new Error("The page's part of the bridge was not built.");
+  return chunk.code;
+}
+
+/**
+ * Replaces `navigator.serial` of a page by a port whose bytes go to `npm run sim --tcp`. Call it before the page is opened.
+ *
+ * The page may connect to its own origin only, so the bytes go through the browser's debugging channel to this process, which
+ * holds the socket.
+ * @param isGranted whether the user has let the page use the port already; else `requestPort` gives it
+ */
+export async function bridgeSerial(
+  page: Page,
+  target: { readonly host: string; readonly port: number },
+  { isGranted = false }: { readonly isGranted?: boolean } = {},
+): Promise<SerialBridge> {
+  const line = new BridgeLine(target, isGranted);
+  await page.exposeBinding(BRIDGE, (_, says: PageSays) => line.answer(says));
+  pageCode ??= bundle();
+  await page.addInitScript({ content: await pageCode });
+  page.on("close", () => line.cut());
+  return {
+    unplug: async (order = "stream-first") => {
+      line.isPlugged = false;
+      await page.evaluate((how) => window.backporchSerialControls?.unplug(how), order);
+    },
+    plugIn: async () => {
+      line.isPlugged = true;
+      await page.evaluate(() => window.backporchSerialControls?.plugIn());
+    },
+    refuseOpen: (refuses) => {
+      line.refuses = refuses;
+    },
+    cut: () => line.cut(),
+    isOpen: () => line.isOpen,
+    bytesToDevice: () => line.bytesToDevice,
+  };
+}
