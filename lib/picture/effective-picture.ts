@@ -21,7 +21,12 @@ export type PicturePlacement = {
 export type Extent = { readonly first: number; readonly size: number };
 
 /** A rectangle in px and lines. */
-export type PictureRect = { readonly leftPx: number; readonly topLines: number; readonly widthPx: number; readonly heightLines: number };
+export type PictureRect = {
+  readonly leftPx: number;
+  readonly topLines: number;
+  readonly widthPx: number;
+  readonly heightLines: number;
+};
 
 export type EffectivePicture = {
   /** What is taken of the source, in px and lines of its frame; starts below 0 where trim adds black. */
@@ -31,7 +36,12 @@ export type EffectivePicture = {
   /** The part of `placed` inside the active raster. */
   readonly raster: PictureRect;
   /** What the edges cut, in px and lines of the mode's frame. */
-  readonly cut: { readonly leftPx: number; readonly rightPx: number; readonly topLines: number; readonly bottomLines: number };
+  readonly cut: {
+    readonly leftPx: number;
+    readonly rightPx: number;
+    readonly topLines: number;
+    readonly bottomLines: number;
+  };
   readonly sourcePxPerOutputPx: number;
   /** Source lines per frame line of the output, over the size before the cut. */
   readonly sourceLinesPerOutputLine: number;
@@ -100,7 +110,12 @@ export function effectivePicture(input: {
   const topLines = (down.first + cutDown.before) * fields;
   return ok({
     source,
-    placed: { leftPx: across.first, topLines: down.first * fields, widthPx: across.size, heightLines: down.size * fields },
+    placed: {
+      leftPx: across.first,
+      topLines: down.first * fields,
+      widthPx: across.size,
+      heightLines: down.size * fields,
+    },
     raster: { leftPx: across.first + cutAcross.before, topLines, widthPx, heightLines: fieldLines * fields },
     cut: {
       leftPx: cutAcross.before,

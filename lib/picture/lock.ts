@@ -27,14 +27,21 @@ const IDLE = { ownLineRateHz: 4_500_000 / 286, ownFieldRateHz: 60_000 / 1001 };
  *
  * A simulation, not a promise: a real set may hold on beyond its limits, or let go within them.
  */
-export function lockOf(mode: RasterTiming | null, screen: ScreenEnvelope | undefined, syncKind: SyncKind | undefined): Lock {
+export function lockOf(
+  mode: RasterTiming | null,
+  screen: ScreenEnvelope | undefined,
+  syncKind: SyncKind | undefined,
+): Lock {
   if (!mode || rasterProblems(mode).length > 0) return { locked: false, why: ["no-raster"], ...IDLE };
   const rates = { ownLineRateHz: lineRateHz(mode), ownFieldRateHz: fieldRateHz(mode) };
   if (mode.horizontal.sync === 0 || mode.vertical.sync === 0) return { locked: false, why: ["no-sync"], ...rates };
   if (!screen) return { locked: true, why: [], ...rates };
-  const broken = judgeEnvelope(mode, screen).filter(({ outcome, rule }) => outcome === "outside" && losesLock.has(rule));
+  const broken = judgeEnvelope(mode, screen).filter(
+    ({ outcome, rule }) => outcome === "outside" && losesLock.has(rule),
+  );
   const nearest = (rule: RasterRule) => broken.find((verdict) => verdict.rule === rule)?.nearest;
-  const kind: LockTrouble[] = syncKind !== undefined && screen.syncKinds?.includes(syncKind) === false ? ["sync-kind"] : [];
+  const kind: LockTrouble[] =
+    syncKind !== undefined && screen.syncKinds?.includes(syncKind) === false ? ["sync-kind"] : [];
   const why = [...broken.map(({ rule }): LockTrouble => rule), ...kind];
   return {
     locked: why.length === 0,

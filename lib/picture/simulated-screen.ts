@@ -1,7 +1,13 @@
 import type { ScreenEnvelope, SyncKind } from "@/lib/timing/envelope";
 import { activeFrameLines, fieldLines, fieldRateHz, lineRateHz, lineTotal } from "@/lib/timing/rates";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
-import { effectivePicture, type EffectivePicture, type PicturePlacement, type PictureProblem, type TrimEdges } from "./effective-picture";
+import {
+  effectivePicture,
+  type EffectivePicture,
+  type PicturePlacement,
+  type PictureProblem,
+  type TrimEdges,
+} from "./effective-picture";
 import { lockOf, type Lock, type LockTrouble } from "./lock";
 import { BLACK, inkAt, type Ink, type Pattern, type PatternFrame } from "./patterns";
 
@@ -22,7 +28,12 @@ export type ScreenInput = {
 export type InkRun = { readonly leftPx: number; readonly widthPx: number; readonly ink: Ink };
 /** One row, or what is drawn of it: a dark gap stays between the lines of a raster that has few. */
 export type ScreenRow = { readonly topPx: number; readonly heightPx: number; readonly runs: readonly InkRun[] };
-export type ScreenRect = { readonly leftPx: number; readonly topPx: number; readonly widthPx: number; readonly heightPx: number };
+export type ScreenRect = {
+  readonly leftPx: number;
+  readonly topPx: number;
+  readonly widthPx: number;
+  readonly heightPx: number;
+};
 
 /** A still picture of a screen, as data. Always simulated: whoever shows it says so. */
 export type SimulatedScreen = {
@@ -51,7 +62,9 @@ function aspectOf(screen: ScreenEnvelope | undefined): number {
 function canvasSize(input: ScreenInput): { widthPx: number; heightPx: number } {
   const long = Math.min(input.longSidePx ?? LONG_SIDE_PX, MAX_LONG_SIDE_PX);
   const aspect = aspectOf(input.screen);
-  return aspect >= 1 ? { widthPx: long, heightPx: Math.round(long / aspect) } : { widthPx: Math.round(long * aspect), heightPx: long };
+  return aspect >= 1
+    ? { widthPx: long, heightPx: Math.round(long / aspect) }
+    : { widthPx: Math.round(long * aspect), heightPx: long };
 }
 
 /** The ink at a place of the mode's active raster: px, and line of the frame. */
@@ -79,27 +92,49 @@ function runsOf(widthPx: number, inkOf: (column: number) => Ink): InkRun[] {
 }
 
 /** Rows of a picture of `lines` lines; never more than the canvas has. */
-function rowsOf(lines: number, size: { widthPx: number; heightPx: number }, inkOf: (line: number, across: number) => Ink): ScreenRow[] {
+function rowsOf(
+  lines: number,
+  size: { widthPx: number; heightPx: number },
+  inkOf: (line: number, across: number) => Ink,
+): ScreenRow[] {
   const drawn = Math.max(1, Math.min(lines, size.heightPx));
   return Array.from({ length: drawn }, (_, row) => {
     const topPx = Math.round((row * size.heightPx) / drawn);
     const heightPx = Math.round(((row + 1) * size.heightPx) / drawn) - topPx;
     const line = Math.floor(((row + 0.5) * lines) / drawn);
-    return { topPx, heightPx: heightPx > 1 ? heightPx - 1 : heightPx, runs: runsOf(size.widthPx, (column) => inkOf(line, (column + 0.5) / size.widthPx)) };
+    return {
+      topPx,
+      heightPx: heightPx > 1 ? heightPx - 1 : heightPx,
+      runs: runsOf(size.widthPx, (column) => inkOf(line, (column + 0.5) / size.widthPx)),
+    };
   });
 }
 
-type Painter = { readonly input: ScreenInput; readonly mode: RasterTiming; readonly picture: EffectivePicture; readonly frame: PatternFrame };
+type Painter = {
+  readonly input: ScreenInput;
+  readonly mode: RasterTiming;
+  readonly picture: EffectivePicture;
+  readonly frame: PatternFrame;
+};
 
-function lockedRows({ input, mode, picture, frame }: Painter, size: { widthPx: number; heightPx: number }): ScreenRow[] {
-  return rowsOf(activeFrameLines(mode), size, (line, across) => rasterInk(input, picture, frame, across * mode.horizontal.active, line));
+function lockedRows(
+  { input, mode, picture, frame }: Painter,
+  size: { widthPx: number; heightPx: number },
+): ScreenRow[] {
+  return rowsOf(activeFrameLines(mode), size, (line, across) =>
+    rasterInk(input, picture, frame, across * mode.horizontal.active, line),
+  );
 }
 
 /**
  * A screen that scans at its own rates while the signal runs at others: each of its lines starts where the signal
  * happens to be, so lines tear by the difference of the line rates, and the field rolls by that of the field rates.
  */
-function tornRows({ input, mode, picture, frame }: Painter, lock: Lock, size: { widthPx: number; heightPx: number }): ScreenRow[] {
+function tornRows(
+  { input, mode, picture, frame }: Painter,
+  lock: Lock,
+  size: { widthPx: number; heightPx: number },
+): ScreenRow[] {
   const lineRatio = lineRateHz(mode) / lock.ownLineRateHz;
   const roll = ROLL_FIELDS * (fieldRateHz(mode) / lock.ownFieldRateHz - 1);
   // Whole lines: a roll alone does not shift a line.
@@ -116,7 +151,10 @@ function tornRows({ input, mode, picture, frame }: Painter, lock: Lock, size: { 
   });
 }
 
-function hiddenRects(screen: ScreenEnvelope | undefined, { widthPx, heightPx }: { widthPx: number; heightPx: number }): ScreenRect[] {
+function hiddenRects(
+  screen: ScreenEnvelope | undefined,
+  { widthPx, heightPx }: { widthPx: number; heightPx: number },
+): ScreenRect[] {
   const visible = screen?.visiblePct;
   if (!visible) return [];
   const share = (pct: number, of: number) => Math.round((Math.min(Math.max(pct, 0), 100) * of) / 100);

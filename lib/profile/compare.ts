@@ -65,7 +65,11 @@ function comparePair(pair: Pair): DocumentChange[] {
 }
 
 /** Pairs of two lists by what names their entries: those of the left first in order, then those only of the right. */
-function pairUp<T, K>(left: readonly T[], right: readonly T[], keyOf: (entry: T) => K): [K, T | undefined, T | undefined][] {
+function pairUp<T, K>(
+  left: readonly T[],
+  right: readonly T[],
+  keyOf: (entry: T) => K,
+): [K, T | undefined, T | undefined][] {
   const [lefts, rights] = [left, right].map((list) => new Map(list.map((entry) => [keyOf(entry), entry])));
   const keys = new Set([...(lefts?.keys() ?? []), ...(rights?.keys() ?? [])]);
   return [...keys].map((key) => [key, lefts?.get(key), rights?.get(key)]);
@@ -84,14 +88,28 @@ function without<T extends object>(entry: T | undefined, name: string): object |
 export function compareDocuments(left: ProfileDocument, right: ProfileDocument): DocumentChange[] {
   const fields = knownFields(profileDocumentSchema);
   const entry = (list: "modes" | "slots") => itemSchema(fields?.get(list));
-  const rest = (document: ProfileDocument) => ({ ...document, modes: undefined, slots: undefined, provenance: undefined });
+  const rest = (document: ProfileDocument) => ({
+    ...document,
+    modes: undefined,
+    slots: undefined,
+    provenance: undefined,
+  });
   const modes = pairUp(left.modes ?? [], right.modes ?? [], (mode) => mode.key).flatMap(([key, l, r]) =>
     comparePair({ path: modePath(key), left: without(l, "key"), right: without(r, "key"), schema: entry("modes") }),
   );
   const slots = pairUp(left.slots ?? [], right.slots ?? [], (slot) => slot.number)
     .sort(([a], [b]) => a - b)
     .flatMap(([number, l, r]) =>
-      comparePair({ path: slotPath(number), left: without(l, "number"), right: without(r, "number"), schema: entry("slots") }),
+      comparePair({
+        path: slotPath(number),
+        left: without(l, "number"),
+        right: without(r, "number"),
+        schema: entry("slots"),
+      }),
     );
-  return [...comparePair({ path: "", left: rest(left), right: rest(right), schema: profileDocumentSchema }), ...modes, ...slots];
+  return [
+    ...comparePair({ path: "", left: rest(left), right: rest(right), schema: profileDocumentSchema }),
+    ...modes,
+    ...slots,
+  ];
 }

@@ -22,7 +22,12 @@ function isInside(active: number, sizePct: number, offset: number, window: Windo
  *
  * An extent grows at both ends as its size does, so the last step that fits is found by halving (bound: 40 probes).
  */
-export function largestPctInside(active: number, offset: number, window: Window, limit: NumberLimit = FREE_PCT): number | null {
+export function largestPctInside(
+  active: number,
+  offset: number,
+  window: Window,
+  limit: NumberLimit = FREE_PCT,
+): number | null {
   const fits = (step: number) => {
     const { first, size } = placeExtent(active, valueOfStep(limit, step), offset);
     return first >= window.from && first + size <= window.to;
@@ -39,7 +44,13 @@ export function largestPctInside(active: number, offset: number, window: Window,
 }
 
 /** The offset nearest to `offset` at which a size lies inside a window, on the device's steps; null when none does. */
-export function nearestOffsetInside(active: number, sizePct: number, offset: number, window: Window, limit: NumberLimit = FREE_OFFSET): number | null {
+export function nearestOffsetInside(
+  active: number,
+  sizePct: number,
+  offset: number,
+  window: Window,
+  limit: NumberLimit = FREE_OFFSET,
+): number | null {
   const { first, size } = placeExtent(active, sizePct, offset);
   const centred = first - offset;
   const [least, most] = [window.from - centred, window.to - size - centred];
@@ -47,12 +58,18 @@ export function nearestOffsetInside(active: number, sizePct: number, offset: num
   const nearest = Math.min(Math.max(offset, least), most);
   // The step may lie just outside, on either side.
   const around = [0, 1, -1].map((by) => valueOfStep(limit, nearestStep(nearest, limit) + by));
-  const fitting = around.filter((value) => isInRange(roundToStep(value, limit), limit) && isInside(active, sizePct, value, window));
+  const fitting = around.filter(
+    (value) => isInRange(roundToStep(value, limit), limit) && isInside(active, sizePct, value, window),
+  );
   return fitting[0] ?? null;
 }
 
 /** How much lies outside a raster, before and after it; `size` is that of the whole picture. */
-export function outsideRaster(active: number, sizePct: number, offset: number): { readonly before: number; readonly after: number; readonly size: number } {
+export function outsideRaster(
+  active: number,
+  sizePct: number,
+  offset: number,
+): { readonly before: number; readonly after: number; readonly size: number } {
   const extent = placeExtent(active, sizePct, offset);
   return { ...cutOff(active, extent), size: extent.size };
 }

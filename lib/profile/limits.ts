@@ -3,7 +3,12 @@ import type { SyncKind } from "@/lib/timing/envelope";
 import type { LineFilter, OutputKind } from "./document";
 
 /** Values are `min + n · step`, n whole; ties round up. */
-export type NumberLimit = { readonly min: number; readonly max: number; readonly step: number; readonly unit?: string | undefined };
+export type NumberLimit = {
+  readonly min: number;
+  readonly max: number;
+  readonly step: number;
+  readonly unit?: string | undefined;
+};
 
 /** A stretch of formats and whether an input locks to them. Spans are inclusive; an absent one holds for all. */
 export type AcceptedFormat = {
@@ -33,10 +38,18 @@ export type DeviceLimits = {
   readonly maxLineTotal?: number | undefined;
   readonly maxFieldLines?: number | undefined;
   readonly interlace: boolean;
-  readonly inputs: readonly { readonly name: string; readonly label: string; readonly accepts: readonly AcceptedFormat[] }[];
+  readonly inputs: readonly {
+    readonly name: string;
+    readonly label: string;
+    readonly accepts: readonly AcceptedFormat[];
+  }[];
   readonly outputKinds: readonly OutputKind[];
   /** Open-circuit level and source impedance of each sync output. */
-  readonly syncOutputs: readonly { readonly kind: SyncKind; readonly vpp?: number | undefined; readonly sourceOhm?: number | undefined }[];
+  readonly syncOutputs: readonly {
+    readonly kind: SyncKind;
+    readonly vpp?: number | undefined;
+    readonly sourceOhm?: number | undefined;
+  }[];
   readonly outsideRaster: "refuses" | "cuts";
   readonly outputClock: "free" | "input";
   readonly lineFilter?: LineFilter | undefined;
@@ -49,4 +62,3 @@ export type DeviceLimits = {
   /** Firmware versions that the driver was made for, inclusive, and the one that runs where it is known. */
   readonly firmware: { readonly min: string; readonly max: string; readonly running?: string | undefined };
 };
-

@@ -75,7 +75,11 @@ export function unplacedModeFinding(slot: ProfileSlot, profile: ProfileDocument)
 }
 
 /** Trim reaches every slot, so it stays as it is where one is left out. */
-export function sharedTrimFinding(base: ProfileDocument, profile: ProfileDocument, leftOut: ReadonlySet<number>): Finding[] {
+export function sharedTrimFinding(
+  base: ProfileDocument,
+  profile: ProfileDocument,
+  leftOut: ReadonlySet<number>,
+): Finding[] {
   const asked = profile.everywhere?.trim;
   const held = base.everywhere?.trim;
   if (!asked || canonicalJson({ ...held, ...asked }) === canonicalJson(held ?? {})) return [];

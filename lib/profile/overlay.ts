@@ -32,7 +32,11 @@ function overlaySlot(base: ProfileSlot | undefined, named: ProfileSlot, mode: st
   return { ...base, ...namedOnly(values), ...placement, ...colour, ...(mode !== undefined && { mode }) };
 }
 
-function overlaySlots(base: ProfileDocument, laid: Laid, deviceMode: (key: string) => string | undefined): ProfileSlot[] {
+function overlaySlots(
+  base: ProfileDocument,
+  laid: Laid,
+  deviceMode: (key: string) => string | undefined,
+): ProfileSlot[] {
   const slots = new Map((base.slots ?? []).map((slot) => [slot.number, slot]));
   for (const named of laid.slots) {
     const mode = named.mode === undefined ? undefined : deviceMode(named.mode);
@@ -70,7 +74,11 @@ function overlayModes(input: ModesInput): ProfileMode[] {
 }
 
 /** Everywhere-settings reach every slot: with one left out, trim is shared with it and stays. */
-function overlayEverywhere(base: ProfileDocument, profile: ProfileDocument, keepTrim: boolean): ProfileDocument["everywhere"] {
+function overlayEverywhere(
+  base: ProfileDocument,
+  profile: ProfileDocument,
+  keepTrim: boolean,
+): ProfileDocument["everywhere"] {
   if (!base.everywhere && !profile.everywhere) return undefined;
   const [held, named] = [base.everywhere?.trim, keepTrim ? undefined : profile.everywhere?.trim];
   const trim = held || named ? { ...held, ...namedOnly(named ?? {}) } : undefined;
@@ -104,7 +112,11 @@ export function overlay(input: {
   const laid: Laid = { leftOut, slots: (profile.slots ?? []).filter((slot) => !leftOut.has(slot.number)) };
   const modes = modesToPlace(profile, laid);
   const timed = new Set(modes.filter((mode) => mode.timing !== undefined).map((mode) => mode.key));
-  const pointed = new Map(laid.slots.flatMap((slot) => (slot.mode !== undefined && timed.has(slot.mode) ? [[slot.number, slot.mode] as const] : [])));
+  const pointed = new Map(
+    laid.slots.flatMap((slot) =>
+      slot.mode !== undefined && timed.has(slot.mode) ? [[slot.number, slot.mode] as const] : [],
+    ),
+  );
   const { places, noRoom } = assignModes({ base, modes, pointed, device });
 
   const deviceMode = (key: string) => places.get(key)?.key;

@@ -50,7 +50,12 @@ function readText(text: string): Result<unknown, PathMessage[]> {
 }
 
 /** A value still to be looked at, and how it was reached; paths are only spelt out where something is wrong. */
-type Visit = { readonly value: unknown; readonly depth: number; readonly name: PropertyKey | null; readonly parent: Visit | null };
+type Visit = {
+  readonly value: unknown;
+  readonly depth: number;
+  readonly name: PropertyKey | null;
+  readonly parent: Visit | null;
+};
 
 function pathOf(visit: Visit): string {
   const parts: PropertyKey[] = [];

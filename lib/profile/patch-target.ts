@@ -27,7 +27,12 @@ function freeKey(document: ProfileDocument, wanted: string): string {
  * @returns the profile with the values set. A device mode that the profile has no word for is taken over whole: the
  * overlay finds its place again by its timing.
  */
-export function patchTarget(target: ProfileDocument, merged: ProfileDocument, modeMap: Readonly<Record<string, string>>, patches: readonly DocumentPatch[]): PatchedTarget {
+export function patchTarget(
+  target: ProfileDocument,
+  merged: ProfileDocument,
+  modeMap: Readonly<Record<string, string>>,
+  patches: readonly DocumentPatch[],
+): PatchedTarget {
   const ownKeys = new Map(Object.entries(modeMap).map(([own, device]) => [device, own]));
   const added: string[] = [];
   const own: DocumentPatch[] = [];

@@ -113,7 +113,12 @@ export function getValue(document: ProfileDocument, path: string): unknown {
   return getIn(owner, parsed.fields);
 }
 
-function setSlot(document: ProfileDocument, number: number, fields: readonly string[], value: unknown): ProfileDocument {
+function setSlot(
+  document: ProfileDocument,
+  number: number,
+  fields: readonly string[],
+  value: unknown,
+): ProfileDocument {
   const slots = document.slots ?? [];
   const known = slots.some((slot) => slot.number === number);
   const all: readonly ProfileSlot[] = known ? slots : [...slots, { number }].sort((a, b) => a.number - b.number);

@@ -13,9 +13,17 @@ export type PorchMove = {
 };
 
 /** `used-up`: a porch would be below 0. `odd-step`: wider and taller go in even steps. `nothing-active`: no picture is left. */
-export type PorchProblem = { readonly code: "used-up" | "odd-step" | "nothing-active"; readonly axis: "horizontal" | "vertical" };
+export type PorchProblem = {
+  readonly code: "used-up" | "odd-step" | "nothing-active";
+  readonly axis: "horizontal" | "vertical";
+};
 
-function moveAxis(name: "horizontal" | "vertical", axis: AxisTiming, by: number, larger: number): Result<AxisTiming, PorchProblem> {
+function moveAxis(
+  name: "horizontal" | "vertical",
+  axis: AxisTiming,
+  by: number,
+  larger: number,
+): Result<AxisTiming, PorchProblem> {
   if (larger % 2 !== 0) return fail({ code: "odd-step", axis: name });
   const moved = {
     ...axis,
@@ -45,7 +53,11 @@ export function movePorches(timing: RasterTiming, move: PorchMove): Result<Raste
  *
  * @returns null where the raster as it is is not allowed. Bound: the porches' own lengths.
  */
-export function porchStretch(timing: RasterTiming, kind: keyof PorchMove, screen: ScreenEnvelope | undefined): readonly [number, number] | null {
+export function porchStretch(
+  timing: RasterTiming,
+  kind: keyof PorchMove,
+  screen: ScreenEnvelope | undefined,
+): readonly [number, number] | null {
   const step = kind === "widerPx" || kind === "tallerLines" ? 2 : 1;
   const allowed = (by: number) => {
     const moved = movePorches(timing, { [kind]: by });

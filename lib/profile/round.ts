@@ -17,7 +17,12 @@ export type RoundedValue = {
 export type LackedValue = { readonly path: string; readonly setting: NeutralSetting; readonly value: unknown };
 
 /** A number beyond what the device holds, on its steps all the same. */
-export type OutOfRangeValue = { readonly path: string; readonly setting: NeutralSetting; readonly value: number; readonly limit: NumberLimit };
+export type OutOfRangeValue = {
+  readonly path: string;
+  readonly setting: NeutralSetting;
+  readonly value: number;
+  readonly limit: NumberLimit;
+};
 
 export type RoundedDocument = {
   readonly document: ProfileDocument;
@@ -95,7 +100,12 @@ export function roundTiming(timing: RasterTiming, device: DeviceLimits): RasterT
     sync: held(timing[name].sync, `${name}.sync`),
     backPorch: held(timing[name].backPorch, `${name}.backPorch`),
   });
-  return { ...timing, pixelClockHz: held(timing.pixelClockHz, "pixelClockHz"), horizontal: axis("horizontal"), vertical: axis("vertical") };
+  return {
+    ...timing,
+    pixelClockHz: held(timing.pixelClockHz, "pixelClockHz"),
+    horizontal: axis("horizontal"),
+    vertical: axis("vertical"),
+  };
 }
 
 type Notes = { rounded: RoundedValue[]; lacks: LackedValue[]; outOfRange: OutOfRangeValue[] };
@@ -128,7 +138,10 @@ function roundLeaf(value: unknown, { path, pattern }: At, device: DeviceLimits, 
 function roundGroup<T extends object>(group: T, at: At, device: DeviceLimits, notes: Notes): T {
   const entries = Object.entries(group).flatMap(([name, value]: [string, unknown]) => {
     if (value === undefined) return [];
-    const inner = { path: at.path === "" ? name : `${at.path}.${name}`, pattern: at.pattern === "" ? name : `${at.pattern}.${name}` };
+    const inner = {
+      path: at.path === "" ? name : `${at.path}.${name}`,
+      pattern: at.pattern === "" ? name : `${at.pattern}.${name}`,
+    };
     const isGroup = typeof value === "object" && value !== null && !Array.isArray(value);
     const held = isGroup ? roundGroup(value, inner, device, notes) : roundLeaf(value, inner, device, notes);
     return held === undefined ? [] : [[name, held] as const];
@@ -145,9 +158,15 @@ function roundGroup<T extends object>(group: T, at: At, device: DeviceLimits, no
  */
 export function roundDocument(document: ProfileDocument, device: DeviceLimits): RoundedDocument {
   const notes: Notes = { rounded: [], lacks: [], outOfRange: [] };
-  const everywhere = document.everywhere && roundGroup(document.everywhere, { path: "everywhere", pattern: "everywhere" }, device, notes);
-  const modes = document.modes?.map((mode) => roundGroup(mode, { path: modePath(mode.key), pattern: "modes[*]" }, device, notes));
-  const slots = document.slots?.map((slot) => roundGroup(slot, { path: slotPath(slot.number), pattern: "slots[*]" }, device, notes));
+  const everywhere =
+    document.everywhere &&
+    roundGroup(document.everywhere, { path: "everywhere", pattern: "everywhere" }, device, notes);
+  const modes = document.modes?.map((mode) =>
+    roundGroup(mode, { path: modePath(mode.key), pattern: "modes[*]" }, device, notes),
+  );
+  const slots = document.slots?.map((slot) =>
+    roundGroup(slot, { path: slotPath(slot.number), pattern: "slots[*]" }, device, notes),
+  );
   const held = { ...document, ...(everywhere && { everywhere }), ...(modes && { modes }), ...(slots && { slots }) };
   return { document: held, ...notes };
 }

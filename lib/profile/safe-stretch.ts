@@ -8,7 +8,15 @@ import { MAX_STEPS, nearestOffsetInside, outsideRaster } from "./fit-placement";
 import type { DeviceLimits, NumberLimit } from "./limits";
 import { findMode, findSlot, getValue, parsePath, patternOf, type DocumentPath } from "./paths";
 import { nearestStep, numberLimit, roundTiming, stepCount, valueOfStep } from "./round";
-import { bandEnds, bandTests, deviceMakes, timingField, timingLimit, withTimingField, type TimingField } from "./safe-timing";
+import {
+  bandEnds,
+  bandTests,
+  deviceMakes,
+  timingField,
+  timingLimit,
+  withTimingField,
+  type TimingField,
+} from "./safe-timing";
 
 export type SafeStretchInput = {
   readonly document: ProfileDocument;
@@ -37,7 +45,9 @@ function edge(from: number, end: number, passes: (step: number) => boolean): num
 function stepsOf(test: Test, limit: NumberLimit): Steps | null {
   const last = Math.min(stepCount(limit), MAX_STEPS);
   const passes = (step: number) => test.passes(valueOfStep(limit, step));
-  const seeds = test.seeds.flatMap((value) => [0, -1, 1].map((by) => Math.min(Math.max(nearestStep(value, limit) + by, 0), last)));
+  const seeds = test.seeds.flatMap((value) =>
+    [0, -1, 1].map((by) => Math.min(Math.max(nearestStep(value, limit) + by, 0), last)),
+  );
   const seed = [...seeds, 0, last].find(passes);
   return seed === undefined ? null : [edge(seed, 0, passes), edge(seed, last, passes)];
 }
@@ -58,16 +68,23 @@ function gap([low, high]: Steps, step: number): number {
 
 /** The stretch that holds the planned value, else the one nearest to it. */
 function chosen(stretches: readonly Steps[], planned: number): Steps | null {
-  return merged(stretches).reduce<Steps | null>((best, next) => (best && gap(best, planned) <= gap(next, planned) ? best : next), null);
+  return merged(stretches).reduce<Steps | null>(
+    (best, next) => (best && gap(best, planned) <= gap(next, planned) ? best : next),
+    null,
+  );
 }
 
 function placementTest(placement: Placement, field: string, timing: RasterTiming): Test | null {
-  const axis = placementAxes(timing, placement).find(({ sizeField, offsetField }) => sizeField === field || offsetField === field);
+  const axis = placementAxes(timing, placement).find(
+    ({ sizeField, offsetField }) => sizeField === field || offsetField === field,
+  );
   if (!axis) return null;
   const { active, sizePct = 100, offset = 0 } = axis;
   const isSize = axis.sizeField === field;
   const passes = (value: number) => {
-    const { before, after, size } = isSize ? outsideRaster(active, value, offset) : outsideRaster(active, sizePct, value);
+    const { before, after, size } = isSize
+      ? outsideRaster(active, value, offset)
+      : outsideRaster(active, sizePct, value);
     return before + after === 0 && size > 0;
   };
   const seed = isSize ? 100 : (nearestOffsetInside(active, sizePct, offset, { from: 0, to: active }) ?? 0);
@@ -76,7 +93,9 @@ function placementTest(placement: Placement, field: string, timing: RasterTiming
 
 /** Pictures of a mode's slots have to stay inside when its active part changes, as far as they are inside now. */
 function keepsPictures(document: ProfileDocument, key: string, timing: RasterTiming): (after: RasterTiming) => boolean {
-  const placements = (document.slots ?? []).flatMap((slot) => (slot.mode === key && slot.placement ? [slot.placement] : []));
+  const placements = (document.slots ?? []).flatMap((slot) =>
+    slot.mode === key && slot.placement ? [slot.placement] : [],
+  );
   const isWhole = (in_: RasterTiming, placement: Placement) =>
     placementAxes(in_, placement).every(({ active, sizePct = 100, offset = 0 }) => {
       const { before, after } = outsideRaster(active, sizePct, offset);
@@ -102,18 +121,25 @@ function timingTests(input: SafeStretchInput, key: string, timing: RasterTiming,
 function trimTest({ document }: SafeStretchInput, field: string): Test {
   const sources = (document.slots ?? []).flatMap((slot) => slot.expects ?? []);
   const trim = document.everywhere?.trim ?? {};
-  return { passes: (value) => sources.every((source) => trimSource(source, { ...trim, [field]: value }) !== null), seeds: [0] };
+  return {
+    passes: (value) => sources.every((source) => trimSource(source, { ...trim, [field]: value }) !== null),
+    seeds: [0],
+  };
 }
 
 function testsFor(path: DocumentPath, input: SafeStretchInput): Test[] {
   const always: Test = { passes: () => true, seeds: [] };
   const [group = "", field = ""] = path.fields;
-  if (path.scope === "document") return [group === "everywhere" && field === "trim" ? trimTest(input, path.fields[2] ?? "") : always];
+  if (path.scope === "document")
+    return [group === "everywhere" && field === "trim" ? trimTest(input, path.fields[2] ?? "") : always];
   const key = path.scope === "slot" ? findSlot(input.document, path.number)?.mode : path.key;
   const mode = key === undefined ? undefined : findMode(input.document, key)?.timing;
   const timing = mode && roundTiming(mode, input.device);
   if (path.scope === "slot") {
-    const placement = group === "placement" && timing && rasterProblems(timing).length === 0 ? findSlot(input.document, path.number)?.placement : undefined;
+    const placement =
+      group === "placement" && timing && rasterProblems(timing).length === 0
+        ? findSlot(input.document, path.number)?.placement
+        : undefined;
     const test = placement && timing ? placementTest(placement, field, timing) : null;
     return [test ?? always];
   }

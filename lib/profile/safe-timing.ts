@@ -50,7 +50,10 @@ export function bandEnds(timing: RasterTiming, field: TimingField, band: Envelop
   const total = lineTotal(timing);
   const [line, rate] = [band.lineRateHz, band.fieldRateHz];
   if (field.axis === "clock") {
-    return spread(Math.max(line[0] * total, rate[0] * total * perField), Math.min(line[1] * total, rate[1] * total * perField));
+    return spread(
+      Math.max(line[0] * total, rate[0] * total * perField),
+      Math.min(line[1] * total, rate[1] * total * perField),
+    );
   }
   if (field.axis === "horizontal") {
     const clock = timing.pixelClockHz;
@@ -68,12 +71,16 @@ function spread(low: number, high: number): readonly number[] {
 }
 
 /** One test a band: of each, the values that pass are a single stretch, since every limit is then an end of it. */
-export function bandTests(screen: ScreenEnvelope | undefined): readonly { readonly band: EnvelopeBand | null; readonly allows: (timing: RasterTiming) => boolean }[] {
-  if (!screen || screen.bands.length === 0) return [{ band: null, allows: (timing) => isRasterAllowed(timing, screen) }];
+export function bandTests(
+  screen: ScreenEnvelope | undefined,
+): readonly { readonly band: EnvelopeBand | null; readonly allows: (timing: RasterTiming) => boolean }[] {
+  if (!screen || screen.bands.length === 0)
+    return [{ band: null, allows: (timing) => isRasterAllowed(timing, screen) }];
   return screen.bands.map((band) => {
     const alone = { ...screen, bands: [band] };
     // Rates first: they are two divisions, and most probes fail by them.
-    const holdsRates = (timing: RasterTiming) => inSpan(lineRateHz(timing), band.lineRateHz) && inSpan(fieldRateHz(timing), band.fieldRateHz);
+    const holdsRates = (timing: RasterTiming) =>
+      inSpan(lineRateHz(timing), band.lineRateHz) && inSpan(fieldRateHz(timing), band.fieldRateHz);
     return { band, allows: (timing: RasterTiming) => holdsRates(timing) && isRasterAllowed(timing, alone) };
   });
 }

@@ -49,7 +49,14 @@ function expand(view: DataView, offset: number, schedule: Uint32Array): void {
 
 function compress(state: Uint32Array, schedule: Uint32Array): void {
   let [a, b, c, d, e, f, g, h] = [0, 1, 2, 3, 4, 5, 6, 7].map((index) => at(state, index)) as [
-    number, number, number, number, number, number, number, number, // eight words by construction
+    number,
+    number,
+    number,
+    number,
+    number,
+    number,
+    number,
+    number, // eight words by construction
   ];
   for (let t = 0; t < 64; t += 1) {
     const s1 = rotate(e, 6) ^ rotate(e, 11) ^ rotate(e, 25);

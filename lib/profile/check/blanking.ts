@@ -19,7 +19,9 @@ type TimedMode = JudgedMode & { readonly timing: RasterTiming };
 
 type MinimumRule = Extract<EnvelopeVerdict["rule"], "sync" | "back-porch" | "field-blank">;
 
-const minimumNames: Readonly<Record<MinimumRule, { name: string; field: string; axis: "horizontal" | "vertical"; part: "sync" | "backPorch" }>> = {
+const minimumNames: Readonly<
+  Record<MinimumRule, { name: string; field: string; axis: "horizontal" | "vertical"; part: "sync" | "backPorch" }>
+> = {
   sync: { name: "sync", field: "horizontal.sync", axis: "horizontal", part: "sync" },
   "back-porch": { name: "back porch", field: "horizontal.backPorch", axis: "horizontal", part: "backPorch" },
   "field-blank": { name: "field blanking", field: "vertical", axis: "vertical", part: "backPorch" },
@@ -45,9 +47,12 @@ function minimumFindings(context: CheckContext, mode: TimedMode, screen: ScreenE
     const { rule, outcome, min, nearestCount } = verdict;
     if (outcome !== "outside" || !isMinimum(rule) || min === undefined) return [];
     const { name, field } = minimumNames[rule];
-    const passes = (timing: RasterTiming) => judgeEnvelope(timing, screen).every((other) => other.rule !== rule || other.outcome === "inside");
+    const passes = (timing: RasterTiming) =>
+      judgeEnvelope(timing, screen).every((other) => other.rule !== rule || other.outcome === "inside");
     const shift = nearestCount && shiftToMinimum(mode.timing, rule, nearestCount.count);
-    const remedies = shift ? shiftRemedy({ key: mode.key, timing: mode.timing, device: context.device }, shift, passes) : [];
+    const remedies = shift
+      ? shiftRemedy({ key: mode.key, timing: mode.timing, device: context.device }, shift, passes)
+      : [];
     return [
       {
         rule: `blanking.${rule}`,
@@ -88,7 +93,8 @@ function shiftToSpan(timing: RasterTiming, verdict: BlankingVerdict): BlankingSh
   const { axis, part, nearest, measured, count } = verdict;
   if (nearest === undefined) return null;
   const unitPerCount = axis === "horizontal" ? 1e6 / timing.pixelClockHz : 1;
-  const wanted = nearest > measured ? Math.ceil(nearest / unitPerCount - 1e-6) : Math.floor(nearest / unitPerCount + 1e-6);
+  const wanted =
+    nearest > measured ? Math.ceil(nearest / unitPerCount - 1e-6) : Math.floor(nearest / unitPerCount + 1e-6);
   if (part !== "blank") return { axis, part, count: wanted };
   return { axis, part: "backPorch", count: timing[axis].backPorch + wanted - count };
 }
@@ -98,9 +104,13 @@ function spanFindings(context: CheckContext, mode: TimedMode): Finding[] {
     if (verdict.outcome === "inside") return [];
     const text = (value: number) => (verdict.unit === "µs" ? microsecondText(value) : withUnit(value, "lines", 1));
     const passes = (timing: RasterTiming) =>
-      judgeBlanking(timing).every((other) => other.axis !== verdict.axis || other.part !== verdict.part || other.outcome === "inside");
+      judgeBlanking(timing).every(
+        (other) => other.axis !== verdict.axis || other.part !== verdict.part || other.outcome === "inside",
+      );
     const shift = shiftToSpan(mode.timing, verdict);
-    const remedies = shift ? shiftRemedy({ key: mode.key, timing: mode.timing, device: context.device }, shift, passes) : [];
+    const remedies = shift
+      ? shiftRemedy({ key: mode.key, timing: mode.timing, device: context.device }, shift, passes)
+      : [];
     const absent = verdict.outcome === "absent";
     const field = verdict.part === "blank" ? verdict.axis : `${verdict.axis}.${verdict.part}`;
     const side = verdict.nearest !== undefined && verdict.nearest > verdict.measured ? "shorter" : "longer";
@@ -146,7 +156,11 @@ function clampFindings(context: CheckContext, mode: TimedMode): Finding[] {
       detail: `A 15 kHz set takes black from the back porch; under ${microsecondText(CLAMP_MIN_US)} it may take it from the picture.`,
       limitSource: "common practice, no source",
       slots: mode.users,
-      remedies: shiftRemedy({ key: mode.key, timing: mode.timing, device: context.device }, shift, (timing) => !isClampShort(timing)),
+      remedies: shiftRemedy(
+        { key: mode.key, timing: mode.timing, device: context.device },
+        shift,
+        (timing) => !isClampShort(timing),
+      ),
     },
   ];
 }

@@ -71,7 +71,9 @@ function soften(finding: Finding, family: RuleFamily["family"], context: CheckCo
  */
 export function checkProfile(input: CheckInput): Finding[] {
   const context = checkContext(input);
-  const found = families.flatMap(({ family, find }) => find(context).flatMap((finding) => soften(finding, family, context)));
+  const found = families.flatMap(({ family, find }) =>
+    find(context).flatMap((finding) => soften(finding, family, context)),
+  );
   return found.sort((a, b) => order.indexOf(a.severity) - order.indexOf(b.severity));
 }
 

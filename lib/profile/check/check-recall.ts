@@ -75,7 +75,16 @@ export function checkRecall(input: RecallInput): Finding[] {
       },
     ];
   }
-  const alone: ProfileDocument = { ...document, slots: [slot], modes: document.modes?.filter(({ key }) => key === slot.mode) };
-  const found = checkProfile({ document: alone, device, screen, source: input.nothingArrives ? null : source }).filter(isAbout);
-  return [...(input.nothingArrives ? idleFindings(input) : []), ...found].map((finding) => ({ ...finding, remedies: [] }));
+  const alone: ProfileDocument = {
+    ...document,
+    slots: [slot],
+    modes: document.modes?.filter(({ key }) => key === slot.mode),
+  };
+  const found = checkProfile({ document: alone, device, screen, source: input.nothingArrives ? null : source }).filter(
+    isAbout,
+  );
+  return [...(input.nothingArrives ? idleFindings(input) : []), ...found].map((finding) => ({
+    ...finding,
+    remedies: [],
+  }));
 }

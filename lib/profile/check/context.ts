@@ -46,14 +46,22 @@ export type CheckContext = {
 
 export function isSoundSource(source: SourceFormat): boolean {
   const counts = [source.activePx, source.activeLines];
-  return counts.every((count) => Number.isInteger(count) && count > 0) && source.fieldRateHz > 0 && Number.isFinite(source.fieldRateHz);
+  return (
+    counts.every((count) => Number.isInteger(count) && count > 0) &&
+    source.fieldRateHz > 0 &&
+    Number.isFinite(source.fieldRateHz)
+  );
 }
 
 function soundTiming(mode: ProfileMode | undefined): RasterTiming | undefined {
   return mode?.timing && rasterProblems(mode.timing).length === 0 ? mode.timing : undefined;
 }
 
-function judgedSlot(slot: ProfileSlot, modes: ReadonlyMap<string, ProfileMode>, given: SourceFormat | undefined): JudgedSlot {
+function judgedSlot(
+  slot: ProfileSlot,
+  modes: ReadonlyMap<string, ProfileMode>,
+  given: SourceFormat | undefined,
+): JudgedSlot {
   const source = given ?? slot.expects;
   return {
     number: slot.number,
@@ -72,7 +80,13 @@ export function checkContext(input: CheckInput): CheckContext {
   const unchangedSlots = new Set(input.unchanged?.slots);
   const modes = (document.modes ?? []).map((mode): JudgedMode => {
     const users = slots.filter((slot) => slot.mode === mode.key).map((slot) => slot.number);
-    return { key: mode.key, mode, timing: soundTiming(mode), users, changedUsers: users.filter((number) => !unchangedSlots.has(number)) };
+    return {
+      key: mode.key,
+      mode,
+      timing: soundTiming(mode),
+      users,
+      changedUsers: users.filter((number) => !unchangedSlots.has(number)),
+    };
   });
   return {
     document,

@@ -7,7 +7,8 @@ import { slotsOf } from "./device-range";
 
 function byPattern(lacks: readonly LackedValue[]): LackedValue[][] {
   const groups = new Map<string, LackedValue[]>();
-  for (const lacked of lacks) groups.set(lacked.setting.pattern, [...(groups.get(lacked.setting.pattern) ?? []), lacked]);
+  for (const lacked of lacks)
+    groups.set(lacked.setting.pattern, [...(groups.get(lacked.setting.pattern) ?? []), lacked]);
   return [...groups.values()];
 }
 
@@ -38,7 +39,10 @@ function lackedSetting(group: readonly LackedValue[], context: CheckContext): Fi
       path: setting.pattern,
       severity: "caution",
       sentence: `This device has no setting for ${setting.label.charAt(0).toLowerCase()}${setting.label.slice(1)}.`,
-      detail: slots.length === 0 ? "The document names it; it is not written." : `The document names it for ${slotsText(slots)}; it is not written.`,
+      detail:
+        slots.length === 0
+          ? "The document names it; it is not written."
+          : `The document names it for ${slotsText(slots)}; it is not written.`,
       limitSource: "driver",
       slots,
       remedies: [{ kind: "set", label: "Take it out", patch: group.map(({ path }) => ({ path, value: null })) }],
@@ -50,9 +54,12 @@ function lackedSetting(group: readonly LackedValue[], context: CheckContext): Fi
 export function deviceLacksFindings(context: CheckContext): Finding[] {
   const { device, rounding } = context;
   if (!device || !rounding) return [];
-  const isStrangeInput = ({ setting }: LackedValue) => setting.pattern === "slots[*].input" && hasSetting(device, setting.pattern);
+  const isStrangeInput = ({ setting }: LackedValue) =>
+    setting.pattern === "slots[*].input" && hasSetting(device, setting.pattern);
   return [
     ...rounding.lacks.filter(isStrangeInput).map((lacked) => strangeInput(lacked, context)),
-    ...byPattern(rounding.lacks.filter((lacked) => !isStrangeInput(lacked))).flatMap((group) => lackedSetting(group, context)),
+    ...byPattern(rounding.lacks.filter((lacked) => !isStrangeInput(lacked))).flatMap((group) =>
+      lackedSetting(group, context),
+    ),
   ];
 }

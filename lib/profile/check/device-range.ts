@@ -77,7 +77,13 @@ function stepFinding({ path, setting, asked, held, limit }: RoundedValue, contex
   };
 }
 
-function choiceFinding(path: string, setting: NeutralSetting, value: string, words: readonly string[], context: CheckContext): Finding {
+function choiceFinding(
+  path: string,
+  setting: NeutralSetting,
+  value: string,
+  words: readonly string[],
+  context: CheckContext,
+): Finding {
   return {
     rule: "device.choice",
     path,
@@ -88,7 +94,10 @@ function choiceFinding(path: string, setting: NeutralSetting, value: string, wor
     detail: words.length === 0 ? undefined : `It offers ${listText(words)}.`,
     limitSource: "driver",
     slots: slotsOf(path, context),
-    remedies: [...words.slice(0, MAX_CHOICES).map((word) => setValue(`Use ${word}`, path, word)), ...leaveOutOf(path, context)],
+    remedies: [
+      ...words.slice(0, MAX_CHOICES).map((word) => setValue(`Use ${word}`, path, word)),
+      ...leaveOutOf(path, context),
+    ],
   };
 }
 
@@ -96,7 +105,9 @@ function choiceFinding(path: string, setting: NeutralSetting, value: string, wor
 function choiceFindings(context: CheckContext): Finding[] {
   const { device, document } = context;
   if (!device) return [];
-  const settings = neutralSettings.filter((setting) => setting.kind === "choice" && setting.pattern !== "slots[*].input");
+  const settings = neutralSettings.filter(
+    (setting) => setting.kind === "choice" && setting.pattern !== "slots[*].input",
+  );
   const paths = (pattern: string) => {
     const field = pattern.slice(pattern.indexOf("].") + 2);
     if (pattern.startsWith("slots")) return (document.slots ?? []).map((slot) => slotPath(slot.number, field));
@@ -107,7 +118,9 @@ function choiceFindings(context: CheckContext): Finding[] {
     if (!words) return [];
     return paths(setting.pattern).flatMap((path) => {
       const value = getValue(document, path);
-      return typeof value === "string" && !words.includes(value) ? [choiceFinding(path, setting, value, words, context)] : [];
+      return typeof value === "string" && !words.includes(value)
+        ? [choiceFinding(path, setting, value, words, context)]
+        : [];
     });
   });
 }
@@ -116,18 +129,20 @@ function capacityFindings(context: CheckContext): Finding[] {
   const { device, slots, modes } = context;
   if (!device) return [];
   const last = device.firstSlot + device.slotCapacity - 1;
-  const beyond = slots.filter(({ number }) => number < device.firstSlot || number > last).map(({ number }): Finding => ({
-    rule: "device.slots",
-    path: slotPath(number),
-    severity: "stop",
-    measured: number,
-    limit: [device.firstSlot, last],
-    sentence: `This device has no slot ${number}.`,
-    detail: `${device.name} has slots ${device.firstSlot} to ${last}.`,
-    limitSource: "driver",
-    slots: [number],
-    remedies: [leaveOut(number)],
-  }));
+  const beyond = slots
+    .filter(({ number }) => number < device.firstSlot || number > last)
+    .map(({ number }): Finding => ({
+      rule: "device.slots",
+      path: slotPath(number),
+      severity: "stop",
+      measured: number,
+      limit: [device.firstSlot, last],
+      sentence: `This device has no slot ${number}.`,
+      detail: `${device.name} has slots ${device.firstSlot} to ${last}.`,
+      limitSource: "driver",
+      slots: [number],
+      remedies: [leaveOut(number)],
+    }));
   if (modes.length <= device.modeCapacity) return beyond;
   return [
     ...beyond,

@@ -39,8 +39,13 @@ function multiples(key: string, timing: RasterTiming, device: DeviceLimits): Bro
     const measured = timing.horizontal[part];
     if (measured % multiple === 0) return [];
     const sentence = `Mode ${key}'s horizontal ${partNames[part]} of ${withUnit(measured, "px")} is no multiple of ${multiple}.`;
-    const use = Math.max(part === "active" || part === "sync" ? multiple : 0, Math.round(measured / multiple) * multiple);
-    return [{ rule: "device.multiple", field: `horizontal.${part}`, measured, limit: multiple, unit: "px", sentence, use }];
+    const use = Math.max(
+      part === "active" || part === "sync" ? multiple : 0,
+      Math.round(measured / multiple) * multiple,
+    );
+    return [
+      { rule: "device.multiple", field: `horizontal.${part}`, measured, limit: multiple, unit: "px", sentence, use },
+    ];
   });
 }
 

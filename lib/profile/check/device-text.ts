@@ -3,14 +3,40 @@ import { modePath, slotPath } from "@/lib/profile/paths";
 import type { CheckContext } from "./context";
 import { leaveOutAll, setValue } from "./remedies";
 
-type Text = { readonly pattern: string; readonly path: string; readonly what: string; readonly value: string; readonly slots: readonly number[] };
+type Text = {
+  readonly pattern: string;
+  readonly path: string;
+  readonly what: string;
+  readonly value: string;
+  readonly slots: readonly number[];
+};
 
 function texts(context: CheckContext): Text[] {
   const slots = context.slots.flatMap(({ number, slot }) =>
-    slot.name === undefined ? [] : [{ pattern: "slots[*].name", path: slotPath(number, "name"), what: `Slot ${number}'s name`, value: slot.name, slots: [number] }],
+    slot.name === undefined
+      ? []
+      : [
+          {
+            pattern: "slots[*].name",
+            path: slotPath(number, "name"),
+            what: `Slot ${number}'s name`,
+            value: slot.name,
+            slots: [number],
+          },
+        ],
   );
   const modes = context.modes.flatMap(({ key, mode, users }) =>
-    mode.name === undefined ? [] : [{ pattern: "modes[*].name", path: modePath(key, "name"), what: `Mode ${key}'s name`, value: mode.name, slots: users }],
+    mode.name === undefined
+      ? []
+      : [
+          {
+            pattern: "modes[*].name",
+            path: modePath(key, "name"),
+            what: `Mode ${key}'s name`,
+            value: mode.name,
+            slots: users,
+          },
+        ],
   );
   return [...slots, ...modes];
 }
@@ -27,24 +53,30 @@ function textFindings(text: Text, context: CheckContext): Finding[] {
     ...leaveOutAll(text.slots.filter((slot) => !context.unchangedSlots.has(slot))),
   ];
   const base = { path: text.path, severity: "stop" as const, limitSource: "driver", slots: text.slots, remedies };
-  const long: Finding[] = characters.length <= limit.maxLength ? [] : [
-    {
-      ...base,
-      rule: "device.name-length",
-      measured: characters.length,
-      limit: limit.maxLength,
-      unit: "characters",
-      sentence: `${text.what} has ${characters.length} characters, and this device holds ${limit.maxLength}.`,
-    },
-  ];
-  const unknown: Finding[] = strange.length === 0 ? [] : [
-    {
-      ...base,
-      rule: "device.name-characters",
-      measured: strange.join(""),
-      sentence: `${text.what} has characters that this device does not show: ${strange.slice(0, 10).join(" ")}.`,
-    },
-  ];
+  const long: Finding[] =
+    characters.length <= limit.maxLength
+      ? []
+      : [
+          {
+            ...base,
+            rule: "device.name-length",
+            measured: characters.length,
+            limit: limit.maxLength,
+            unit: "characters",
+            sentence: `${text.what} has ${characters.length} characters, and this device holds ${limit.maxLength}.`,
+          },
+        ];
+  const unknown: Finding[] =
+    strange.length === 0
+      ? []
+      : [
+          {
+            ...base,
+            rule: "device.name-characters",
+            measured: strange.join(""),
+            sentence: `${text.what} has characters that this device does not show: ${strange.slice(0, 10).join(" ")}.`,
+          },
+        ];
   return [...long, ...unknown];
 }
 

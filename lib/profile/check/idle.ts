@@ -19,7 +19,11 @@ const unplug = "Keep the screen unplugged until the device's raster was read and
 const moments = Object.keys(idleMoments) as IdleMoment[]; // the record's own keys
 
 /** The raster that a device puts out on its own at some moments, which all have the same one, against the screen. */
-export function idleFinding(device: DeviceLimits, screen: ScreenEnvelope, at: readonly [IdleMoment, ...IdleMoment[]]): Finding[] {
+export function idleFinding(
+  device: DeviceLimits,
+  screen: ScreenEnvelope,
+  at: readonly [IdleMoment, ...IdleMoment[]],
+): Finding[] {
   const raster = device.idle[at[0]];
   if (raster === "unknown" || rasterProblems(raster).length > 0) return [];
   return brokenScreenLimits(raster, screen).map((found) => {

@@ -46,7 +46,10 @@ function aspectFindings({ document, screen }: CheckContext): Finding[] {
 /** What a frame leaves visible on an axis, in px or field lines: only whole ones count as seen. */
 function visibleWindow(axis: PlacementAxis, visible: VisiblePct): Window {
   const [before, after] = axis.axis === "horizontal" ? [visible.left, visible.right] : [visible.top, visible.bottom];
-  return { from: Math.ceil((axis.active * before) / 100 - 1e-9), to: axis.active - Math.ceil((axis.active * after) / 100 - 1e-9) };
+  return {
+    from: Math.ceil((axis.active * before) / 100 - 1e-9),
+    to: axis.active - Math.ceil((axis.active * after) / 100 - 1e-9),
+  };
 }
 
 type Hidden = { readonly axis: PlacementAxis; readonly window: Window; readonly hidden: number; readonly size: number };

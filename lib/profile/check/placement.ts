@@ -23,12 +23,22 @@ export type PlacementAxis = {
 export function placementAxes(timing: RasterTiming, placement: Placement): readonly PlacementAxis[] {
   return [
     {
-      axis: "horizontal", active: timing.horizontal.active, unit: "px",
-      sizeField: "widthPct", offsetField: "offsetPx", sizePct: placement.widthPct, offset: placement.offsetPx,
+      axis: "horizontal",
+      active: timing.horizontal.active,
+      unit: "px",
+      sizeField: "widthPct",
+      offsetField: "offsetPx",
+      sizePct: placement.widthPct,
+      offset: placement.offsetPx,
     },
     {
-      axis: "vertical", active: timing.vertical.active, unit: timing.interlaced ? "field lines" : "lines",
-      sizeField: "heightPct", offsetField: "offsetLines", sizePct: placement.heightPct, offset: placement.offsetLines,
+      axis: "vertical",
+      active: timing.vertical.active,
+      unit: timing.interlaced ? "field lines" : "lines",
+      sizeField: "heightPct",
+      offsetField: "offsetLines",
+      sizePct: placement.heightPct,
+      offset: placement.offsetLines,
     },
   ];
 }
@@ -40,7 +50,11 @@ const words = {
 
 type Judged = PlacementAxis & { readonly size: number; readonly before: number; readonly after: number };
 
-function remediesFor(context: CheckContext, number: number, judged: Judged): { largest: number | null; remedies: Remedy[] } {
+function remediesFor(
+  context: CheckContext,
+  number: number,
+  judged: Judged,
+): { largest: number | null; remedies: Remedy[] } {
   const { active, offset = 0, sizePct = 100, sizeField, offsetField, unit } = judged;
   const limits = context.device?.numbers;
   const whole = { from: 0, to: active };
@@ -49,8 +63,12 @@ function remediesFor(context: CheckContext, number: number, judged: Judged): { l
   return {
     largest,
     remedies: [
-      ...(largest === null ? [] : [setValue(`Use ${percent(largest)}`, slotPath(number, `placement.${sizeField}`), largest)]),
-      ...(nearest === null ? [] : [setValue(`Use ${withUnit(nearest, unit)}`, slotPath(number, `placement.${offsetField}`), nearest)]),
+      ...(largest === null
+        ? []
+        : [setValue(`Use ${percent(largest)}`, slotPath(number, `placement.${sizeField}`), largest)]),
+      ...(nearest === null
+        ? []
+        : [setValue(`Use ${withUnit(nearest, unit)}`, slotPath(number, `placement.${offsetField}`), nearest)]),
       leaveOut(number),
     ],
   };
@@ -68,8 +86,11 @@ function ofAxis(context: CheckContext, number: number, axis: PlacementAxis): Fin
   const how = isLarge ? word.large : judged.before > 0 ? word.before : word.after;
   const { largest, remedies } = remediesFor(context, number, judged);
   const { size } = judged;
-  const fact = isLarge ? `, and this mode shows ${active}` : ` at ${withUnit(offset ?? 0, unit)}, in a mode of ${active}`;
-  const at = largest === null ? "" : ` ${word.largest} that fits at ${withUnit(offset ?? 0, unit)}: ${percent(largest)}.`;
+  const fact = isLarge
+    ? `, and this mode shows ${active}`
+    : ` at ${withUnit(offset ?? 0, unit)}, in a mode of ${active}`;
+  const at =
+    largest === null ? "" : ` ${word.largest} that fits at ${withUnit(offset ?? 0, unit)}: ${percent(largest)}.`;
   const field = isLarge ? axis.sizeField : axis.offsetField;
   return [
     {

@@ -50,7 +50,11 @@ function isTimed(mode: JudgedMode): mode is JudgedMode & { timing: RasterTiming 
  *
  * @param instead a mode that is not offered: the one that does not fit
  */
-export function otherModeRemedies(context: CheckContext, slots: readonly number[], instead: JudgedMode | undefined): Remedy[] {
+export function otherModeRemedies(
+  context: CheckContext,
+  slots: readonly number[],
+  instead: JudgedMode | undefined,
+): Remedy[] {
   if (slots.length === 0) return [];
   return context.modes
     .filter(isTimed)

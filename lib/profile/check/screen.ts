@@ -22,15 +22,27 @@ function isScreenRule(rule: EnvelopeVerdict["rule"]): rule is ScreenRule {
 }
 
 /** A raster's figure and the screen's limit, as sentence and detail. `what` is the subject: "Mode 3". */
-export function screenWords(verdict: EnvelopeVerdict, rule: ScreenRule, what: string, screen: ScreenEnvelope): { sentence: string; detail: string } {
+export function screenWords(
+  verdict: EnvelopeVerdict,
+  rule: ScreenRule,
+  what: string,
+  screen: ScreenEnvelope,
+): { sentence: string; detail: string } {
   const text = texts[rule];
   if (rule === "interlace") {
-    return { sentence: `${what} is interlaced, and this screen takes progressive rasters alone.`, detail: `Limit of ${screen.name}.` };
+    return {
+      sentence: `${what} is interlaced, and this screen takes progressive rasters alone.`,
+      detail: `Limit of ${screen.name}.`,
+    };
   }
   const names = { "line-rate": "runs at", "field-rate": "has a field rate of", clock: "has a pixel clock of" };
   const { min, max, nearest } = verdict;
   const range =
-    min !== undefined && max !== undefined ? spanText([min, max], text) : max !== undefined ? `${text(max)} at most` : "nothing that could be used";
+    min !== undefined && max !== undefined
+      ? spanText([min, max], text)
+      : max !== undefined
+        ? `${text(max)} at most`
+        : "nothing that could be used";
   const way = nearest === undefined ? "" : ` Nearest that fits: ${text(nearest)}.`;
   const side = nearest !== undefined && nearest > verdict.measured ? "too slow" : "too fast";
   return {
@@ -40,14 +52,21 @@ export function screenWords(verdict: EnvelopeVerdict, rule: ScreenRule, what: st
 }
 
 /** The limits of `screen` that a raster breaks, blanking aside. */
-export function brokenScreenLimits(timing: RasterTiming, screen: ScreenEnvelope): { verdict: EnvelopeVerdict; rule: ScreenRule }[] {
+export function brokenScreenLimits(
+  timing: RasterTiming,
+  screen: ScreenEnvelope,
+): { verdict: EnvelopeVerdict; rule: ScreenRule }[] {
   return judgeEnvelope(timing, screen).flatMap((verdict) =>
     verdict.outcome === "outside" && isScreenRule(verdict.rule) ? [{ verdict, rule: verdict.rule }] : [],
   );
 }
 
 /** The part of a finding that the verdict alone gives. */
-export function screenFinding(found: { verdict: EnvelopeVerdict; rule: ScreenRule }, what: string, screen: ScreenEnvelope) {
+export function screenFinding(
+  found: { verdict: EnvelopeVerdict; rule: ScreenRule },
+  what: string,
+  screen: ScreenEnvelope,
+) {
   const { verdict, rule } = found;
   const { min, max } = verdict;
   const limit = min !== undefined && max !== undefined ? ([min, max] as const) : max;

@@ -78,7 +78,11 @@ function nothingLeft(context: CheckContext): Finding[] {
       detail: "Left and right together, or top and bottom together, take more than comes in.",
       slots,
       remedies: [
-        { kind: "set", label: "Use no trim", patch: named.map(([name]) => ({ path: `everywhere.trim.${name}`, value: 0 })) },
+        {
+          kind: "set",
+          label: "Use no trim",
+          patch: named.map(([name]) => ({ path: `everywhere.trim.${name}`, value: 0 })),
+        },
       ],
     },
   ];
@@ -100,7 +104,10 @@ export function isOutside(slot: JudgedSlot): boolean {
 function nothingInside(context: CheckContext): Finding[] {
   return context.slots.filter(isOutside).map(({ number, slot }) => {
     const sizeless = (slot.placement?.widthPct ?? 100) <= 0 || (slot.placement?.heightPct ?? 100) <= 0;
-    const centre = ["offsetPx", "offsetLines"].map((name) => ({ path: slotPath(number, `placement.${name}`), value: 0 }));
+    const centre = ["offsetPx", "offsetLines"].map((name) => ({
+      path: slotPath(number, `placement.${name}`),
+      value: 0,
+    }));
     return {
       rule: "shape.nothing-inside",
       path: slotPath(number, "placement"),
@@ -110,7 +117,9 @@ function nothingInside(context: CheckContext): Finding[] {
       slots: [number],
       remedies: [
         ...(sizeless
-          ? [setValue("Use 100.0 %", slotPath(number, "placement.heightPct"), 100)].filter(() => (slot.placement?.widthPct ?? 100) > 0)
+          ? [setValue("Use 100.0 %", slotPath(number, "placement.heightPct"), 100)].filter(
+              () => (slot.placement?.widthPct ?? 100) > 0,
+            )
           : [{ kind: "set" as const, label: "Use the centre", patch: centre }]),
         leaveOut(number),
       ],

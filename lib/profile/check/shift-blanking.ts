@@ -14,7 +14,12 @@ export type Part = "active" | "frontPorch" | "sync" | "backPorch";
 /** One part grows or shrinks to `count`, another gives or takes what that needs: totals and rates stay. */
 export type BlankingShift = { readonly axis: Axis; readonly part: Part; readonly count: number };
 
-const names: Readonly<Record<Part, string>> = { active: "picture", frontPorch: "front porch", sync: "sync", backPorch: "back porch" };
+const names: Readonly<Record<Part, string>> = {
+  active: "picture",
+  frontPorch: "front porch",
+  sync: "sync",
+  backPorch: "back porch",
+};
 
 /** Whoever gives comes in this order: blanking before picture. */
 const donors: readonly Part[] = ["backPorch", "frontPorch", "active"];
@@ -55,12 +60,20 @@ export function shiftRemedy(
   const donor = donors.find((part) => {
     if (part === shift.part) return false;
     const timing = shifted(of.timing, shift, part);
-    return rasterProblems(timing).length === 0 && passes(timing) && outsideCount(timing) <= before && deviceHolds(timing, of.device);
+    return (
+      rasterProblems(timing).length === 0 &&
+      passes(timing) &&
+      outsideCount(timing) <= before &&
+      deviceHolds(timing, of.device)
+    );
   });
   if (donor === undefined) return [];
   const after = shifted(of.timing, shift, donor);
   const unit = shift.axis === "horizontal" ? "px" : "lines";
-  const at = (part: Part) => ({ path: modePath(of.key, `timing.${shift.axis}.${part}`), value: after[shift.axis][part] });
+  const at = (part: Part) => ({
+    path: modePath(of.key, `timing.${shift.axis}.${part}`),
+    value: after[shift.axis][part],
+  });
   const label = `Use a ${names[shift.part]} of ${withUnit(shift.count, unit)}`;
   return [{ kind: "set", label, patch: [at(shift.part), at(donor)] }];
 }

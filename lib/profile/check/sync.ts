@@ -35,7 +35,12 @@ function offered(device: DeviceLimits | undefined): readonly SyncKind[] {
 }
 
 /** Kinds of the screen that a slot with this sync kind does not give; null where one of them is unknown or fits. */
-export function syncKindFinding(number: number, kind: SyncKind | undefined, screen: ScreenEnvelope, device: DeviceLimits | undefined): Finding[] {
+export function syncKindFinding(
+  number: number,
+  kind: SyncKind | undefined,
+  screen: ScreenEnvelope,
+  device: DeviceLimits | undefined,
+): Finding[] {
   const kinds = screen.syncKinds;
   if (kind === undefined || kinds === undefined || kinds.includes(kind)) return [];
   const path = slotPath(number, "syncKind");
@@ -49,7 +54,10 @@ export function syncKindFinding(number: number, kind: SyncKind | undefined, scre
       measured: kind,
       limit: kinds.join(", "),
       sentence: `Slot ${number} gives ${syncNames[kind]}, which this screen does not take.`,
-      detail: kinds.length === 0 ? `${screen.name} lists no sync at all.` : `${screen.name} takes ${listText(kinds.map((one) => syncNames[one]))}.`,
+      detail:
+        kinds.length === 0
+          ? `${screen.name} lists no sync at all.`
+          : `${screen.name} takes ${listText(kinds.map((one) => syncNames[one]))}.`,
       limitSource: limitSourceText(screen.sources?.syncKinds),
       slots: [number],
       remedies: [...ways.map((one) => setValue(`Use ${syncNames[one]}`, path, one)), leaveOut(number)],
@@ -86,7 +94,8 @@ function levelFinding(kind: SyncKind, context: CheckContext, screen: ScreenEnvel
   if (!strong && atLeast(level.loadedVpp, syncVpp[0])) return [];
   const target = (syncVpp[0] + syncVpp[1]) / 2;
   const ohm = seriesOhm(level, loadOhm, target);
-  const about = ohm > 0 && ohm <= MAX_SERIES_OHM ? ` of about ${withUnit(ohm, "Ω", 0)} for ${withUnit(target, "V", 2)}` : "";
+  const about =
+    ohm > 0 && ohm <= MAX_SERIES_OHM ? ` of about ${withUnit(ohm, "Ω", 0)} for ${withUnit(target, "V", 2)}` : "";
   const span = spanText(syncVpp, (value) => withUnit(value, "V", 2));
   const name = capital(syncNames[kind]);
   return [

@@ -28,7 +28,9 @@ function neededLimits(context: CheckContext): Limit[] {
   return [
     ...(judged.length > 0 ? raster : []),
     ...(interlaced ? [{ limit: "interlace", name: "interlace" } as const] : []),
-    ...(kinds ? [{ limit: "syncKinds", name: "sync kinds" } as const, { limit: "syncVpp", name: "sync level" } as const] : []),
+    ...(kinds
+      ? [{ limit: "syncKinds", name: "sync kinds" } as const, { limit: "syncVpp", name: "sync level" } as const]
+      : []),
     ...(aspect ? [{ limit: "aspect", name: "shape" } as const] : []),
     ...(placed ? [{ limit: "visiblePct", name: "visible part" } as const] : []),
   ];
@@ -39,9 +41,23 @@ function ofScreen(context: CheckContext, screen: ScreenEnvelope): Finding[] {
   const bands = screen.bands.length === 0 && limits.length > 0;
   const missing = limits.filter(({ limit }) => screen[limit] === undefined);
   return [
-    ...(bands ? [unknown("unknown.screen", "screen.bands", "Nothing is known about this screen's line and field rates, so they were not checked.", damage)] : []),
+    ...(bands
+      ? [
+          unknown(
+            "unknown.screen",
+            "screen.bands",
+            "Nothing is known about this screen's line and field rates, so they were not checked.",
+            damage,
+          ),
+        ]
+      : []),
     ...missing.map(({ limit, name }) =>
-      unknown("unknown.screen", `screen.${limit}`, `Nothing is known about this screen's ${name}, so that was not checked.`, limit === "maxPixelClockHz" ? damage : undefined),
+      unknown(
+        "unknown.screen",
+        `screen.${limit}`,
+        `Nothing is known about this screen's ${name}, so that was not checked.`,
+        limit === "maxPixelClockHz" ? damage : undefined,
+      ),
     ),
   ];
 }
@@ -52,10 +68,21 @@ function ofDevice(context: CheckContext, device: DeviceLimits): Finding[] {
   const levels = device.syncOutputs.filter(({ kind, vpp }) => vpp === undefined && kinds.has(kind));
   return [
     ...levels.map(({ kind }) =>
-      unknown("unknown.device", `device.syncOutputs.${kind}`, `Nobody knows how strong this device's ${kind} sync is, so that was not checked.`, "Measure it before it goes to a screen."),
+      unknown(
+        "unknown.device",
+        `device.syncOutputs.${kind}`,
+        `Nobody knows how strong this device's ${kind} sync is, so that was not checked.`,
+        "Measure it before it goes to a screen.",
+      ),
     ),
     ...(device.firmware.running === undefined
-      ? [unknown("unknown.device", "device.firmware", "The device does not say which firmware runs, so that was not checked.")]
+      ? [
+          unknown(
+            "unknown.device",
+            "device.firmware",
+            "The device does not say which firmware runs, so that was not checked.",
+          ),
+        ]
       : []),
   ];
 }
@@ -64,7 +91,9 @@ function ofDevice(context: CheckContext, device: DeviceLimits): Finding[] {
 export function unknownFindings(context: CheckContext): Finding[] {
   const { screen, device } = context;
   return [
-    ...(screen ? ofScreen(context, screen) : [unknown("unknown.screen", "screen", "No screen is named, so nothing was checked against one.", damage)]),
+    ...(screen
+      ? ofScreen(context, screen)
+      : [unknown("unknown.screen", "screen", "No screen is named, so nothing was checked against one.", damage)]),
     ...(device ? ofDevice(context, device) : []),
   ];
 }

@@ -25,7 +25,9 @@ describe("placeExtent", () => {
     // 1.15 · 100 is 114.999… in binary; exact arithmetic in tenths of a percent says what it must be.
     for (let tenths = 1; tenths <= 2000; tenths += 1) {
       for (const active of [240, 250, 720, 1125]) {
-        expect(placeExtent(active, tenths / 10, 0).size).toBe(Number((BigInt(active) * BigInt(tenths) * 2n + 1000n) / 2000n));
+        expect(placeExtent(active, tenths / 10, 0).size).toBe(
+          Number((BigInt(active) * BigInt(tenths) * 2n + 1000n) / 2000n),
+        );
       }
     }
   });
@@ -51,7 +53,9 @@ describe("effectivePicture", () => {
   });
 
   it("says what the raster's edges cut, the size before the cut giving the ratio", () => {
-    const { placed, raster, cut, sourceLinesPerOutputLine } = picture({ placement: { heightPct: 108, offsetLines: -3 } });
+    const { placed, raster, cut, sourceLinesPerOutputLine } = picture({
+      placement: { heightPct: 108, offsetLines: -3 },
+    });
     expect(placed).toMatchObject({ topLines: -13, heightLines: 259 });
     expect(raster).toMatchObject({ topLines: 0, heightLines: 240 });
     expect(cut).toEqual({ leftPx: 0, rightPx: 0, topLines: 13, bottomLines: 6 });
@@ -59,7 +63,10 @@ describe("effectivePicture", () => {
   });
 
   it("works an interlaced mode in field lines and then doubles it", () => {
-    const { placed, raster, cut, sourceLinesPerOutputLine } = picture({ mode: mode("480i60"), placement: { heightPct: 97.6, offsetLines: 5 } });
+    const { placed, raster, cut, sourceLinesPerOutputLine } = picture({
+      mode: mode("480i60"),
+      placement: { heightPct: 97.6, offsetLines: 5 },
+    });
     expect(placed).toMatchObject({ topLines: 16, heightLines: 468 });
     expect(raster).toMatchObject({ topLines: 16, heightLines: 464 });
     expect(cut.bottomLines).toBe(4);
@@ -67,8 +74,14 @@ describe("effectivePicture", () => {
   });
 
   it("adds black where trim is negative, and stops where trim leaves nothing or placement puts nothing inside", () => {
-    expect(picture({ trim: { leftPx: -10, topLines: 4 } }).source).toEqual({ leftPx: -10, topLines: 4, widthPx: 1290, heightLines: 716 });
-    const stop = (input: object) => effectivePicture({ source, trim: {}, mode: mode("240p60"), placement: {}, ...input });
+    expect(picture({ trim: { leftPx: -10, topLines: 4 } }).source).toEqual({
+      leftPx: -10,
+      topLines: 4,
+      widthPx: 1290,
+      heightLines: 716,
+    });
+    const stop = (input: object) =>
+      effectivePicture({ source, trim: {}, mode: mode("240p60"), placement: {}, ...input });
     expect(stop({ trim: { leftPx: 640, rightPx: 640 } })).toEqual({ ok: false, error: "nothing-left" });
     expect(stop({ placement: { heightPct: 50, offsetLines: 200 } })).toEqual({ ok: false, error: "nothing-inside" });
     expect(stop({ placement: { widthPct: 0 } })).toEqual({ ok: false, error: "nothing-inside" });
@@ -78,17 +91,29 @@ describe("effectivePicture", () => {
     const pct = fc.integer({ min: 1, max: 2000 }).map((tenths) => tenths / 10);
     const offset = fc.integer({ min: -400, max: 400 });
     fc.assert(
-      fc.property(fc.constantFrom(...standardNames), pct, pct, offset, offset, (name, widthPct, heightPct, offsetPx, offsetLines) => {
-        const result = effectivePicture({ source, trim: {}, mode: mode(name), placement: { widthPct, heightPct, offsetPx, offsetLines } });
-        if (!result.ok) return;
-        const { raster, placed, cut } = result.value;
-        expect(raster.leftPx).toBeGreaterThanOrEqual(0);
-        expect(raster.topLines).toBeGreaterThanOrEqual(0);
-        expect(raster.leftPx + raster.widthPx).toBeLessThanOrEqual(mode(name).horizontal.active);
-        expect(raster.topLines + raster.heightLines).toBeLessThanOrEqual(activeFrameLines(mode(name)));
-        expect(raster.widthPx + cut.leftPx + cut.rightPx).toBe(placed.widthPx);
-        expect(raster.heightLines + cut.topLines + cut.bottomLines).toBe(placed.heightLines);
-      }),
+      fc.property(
+        fc.constantFrom(...standardNames),
+        pct,
+        pct,
+        offset,
+        offset,
+        (name, widthPct, heightPct, offsetPx, offsetLines) => {
+          const result = effectivePicture({
+            source,
+            trim: {},
+            mode: mode(name),
+            placement: { widthPct, heightPct, offsetPx, offsetLines },
+          });
+          if (!result.ok) return;
+          const { raster, placed, cut } = result.value;
+          expect(raster.leftPx).toBeGreaterThanOrEqual(0);
+          expect(raster.topLines).toBeGreaterThanOrEqual(0);
+          expect(raster.leftPx + raster.widthPx).toBeLessThanOrEqual(mode(name).horizontal.active);
+          expect(raster.topLines + raster.heightLines).toBeLessThanOrEqual(activeFrameLines(mode(name)));
+          expect(raster.widthPx + cut.leftPx + cut.rightPx).toBe(placed.widthPx);
+          expect(raster.heightLines + cut.topLines + cut.bottomLines).toBe(placed.heightLines);
+        },
+      ),
     );
   });
 });

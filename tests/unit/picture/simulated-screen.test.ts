@@ -23,7 +23,10 @@ describe("simulateScreen, in lock", () => {
     const screen = simulate({});
     expect(screen).toMatchObject({ locked: true, why: [], widthPx: 640, heightPx: 480 });
     expect(screen.rows).toHaveLength(240);
-    expect(simulate({ screen: { name: "upright", bands: [], aspect: "3:4" } })).toMatchObject({ widthPx: 480, heightPx: 640 });
+    expect(simulate({ screen: { name: "upright", bands: [], aspect: "3:4" } })).toMatchObject({
+      widthPx: 480,
+      heightPx: 640,
+    });
   });
 
   it("puts the picture where placement puts it in the active raster", () => {
@@ -53,7 +56,11 @@ describe("simulateScreen, in lock", () => {
   });
 
   it("stops where nothing of the picture is left", () => {
-    expect(simulate({ placement: { offsetPx: 2000 } })).toMatchObject({ locked: true, why: ["nothing-inside"], rows: [] });
+    expect(simulate({ placement: { offsetPx: 2000 } })).toMatchObject({
+      locked: true,
+      why: ["nothing-inside"],
+      rows: [],
+    });
   });
 });
 
@@ -67,7 +74,9 @@ describe("simulateScreen, out of lock", () => {
     const why = (input: Partial<ScreenInput>) => simulate(input).why;
     expect(why({ mode: standardRaster("480p60").timing })).toEqual(["line-rate", "sync"]);
     expect(why({ mode: standardRaster("288p50").timing })).toEqual(["field-rate"]);
-    expect(why({ mode: standardRaster("480i60").timing, screen: { ...requireScreen(), interlace: false } })).toEqual(["interlace"]);
+    expect(why({ mode: standardRaster("480i60").timing, screen: { ...requireScreen(), interlace: false } })).toEqual([
+      "interlace",
+    ]);
     expect(why({ syncKind: "separate" })).toEqual(["sync-kind"]);
     expect(why({ mode: null })).toEqual(["no-raster"]);
     expect(why({ mode: { ...mode, vertical: { ...mode.vertical, sync: 0 } } })).toEqual(["no-sync"]);
@@ -99,7 +108,10 @@ describe("simulateScreen, out of lock", () => {
   it("draws no more rows than the picture has, whatever the raster", () => {
     const huge = { ...mode, pixelClockHz: 20e9, vertical: { ...mode.vertical, active: 65_000 } };
     expect(simulate({ mode: huge }).rows.length).toBeLessThanOrEqual(480);
-    expect(simulate({ mode: huge, screen: undefined, longSidePx: 1e9 })).toMatchObject({ widthPx: 2048, heightPx: 1536 });
+    expect(simulate({ mode: huge, screen: undefined, longSidePx: 1e9 })).toMatchObject({
+      widthPx: 2048,
+      heightPx: 1536,
+    });
   });
 });
 
@@ -110,7 +122,8 @@ describe("patterns", () => {
     for (const pattern of patterns) {
       expect(inkAt(pattern, -1, 10, frame)).toBe(BLACK);
       expect(inkAt(pattern, 10, 480, frame)).toBe(BLACK);
-      for (let px = 0; px < 720; px += 7) for (let line = 0; line < 480; line += 5) expect(inks[inkAt(pattern, px, line, frame)]).toBeDefined();
+      for (let px = 0; px < 720; px += 7)
+        for (let line = 0; line < 480; line += 5) expect(inks[inkAt(pattern, px, line, frame)]).toBeDefined();
     }
   });
 
@@ -125,7 +138,10 @@ describe("patterns", () => {
   it("have bars of 75 %: 191 of 255, in the order of falling brightness (common practice, no source)", () => {
     const bars = Array.from({ length: 8 }, (_, bar) => inks[inkAt("bars", bar * 90 + 45, 100, frame)]);
     expect(bars).toEqual(["#bfbfbf", "#bfbf00", "#00bfbf", "#00bf00", "#bf00bf", "#bf0000", "#0000bf", "#000000"]);
-    const luma = (ink = "") => [1, 3, 5].map((at) => parseInt(ink.slice(at, at + 2), 16)).reduce((sum, level, index) => sum + level * ([0.299, 0.587, 0.114][index] ?? 0), 0);
+    const luma = (ink = "") =>
+      [1, 3, 5]
+        .map((at) => parseInt(ink.slice(at, at + 2), 16))
+        .reduce((sum, level, index) => sum + level * ([0.299, 0.587, 0.114][index] ?? 0), 0);
     expect(bars.map(luma)).toEqual(bars.map(luma).sort((a, b) => b - a)); // luma weights: ITU-R BT.601
   });
 });
@@ -144,6 +160,10 @@ describe("paintScreen", () => {
     expect(calls[0]).toEqual({ style: "#000000", rect: [0, 0, 640, 480] });
     expect(calls.slice(-4).every(({ style }) => style.startsWith("rgba"))).toBe(true);
     expect(calls).toHaveLength(1 + screen.rows.flatMap(({ runs }) => runs).length + 4);
-    expect(calls.every(({ rect: [x = 0, y = 0, width = 0, height = 0] }) => x >= 0 && y >= 0 && x + width <= 640 && y + height <= 480)).toBe(true);
+    expect(
+      calls.every(
+        ({ rect: [x = 0, y = 0, width = 0, height = 0] }) => x >= 0 && y >= 0 && x + width <= 640 && y + height <= 480,
+      ),
+    ).toBe(true);
   });
 });

@@ -74,7 +74,8 @@ describe("canonicalJson", () => {
   });
 
   it("refuses what JSON cannot hold, half a surrogate pair among it (RFC 8785, sections 3.2.2.2 and 3.2.2.3)", () => {
-    for (const value of [NaN, Infinity, "\ud800", { "\udead": 1 }]) expect(() => canonicalJson(value)).toThrow(TypeError);
+    for (const value of [NaN, Infinity, "\ud800", { "\udead": 1 }])
+      expect(() => canonicalJson(value)).toThrow(TypeError);
   });
 
   it("gives one text for equal values, and a text that reads back as the value", () => {
@@ -92,7 +93,10 @@ describe("sha256Hex", () => {
   // FIPS 180-4's examples as NIST publishes them ("SHA256.pdf": one block, two blocks), and the empty message.
   it.each([
     ["abc", "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad"],
-    ["abcdbcdecdefdefgefghfghighijhijkijkljklmklmnlmnomnopnopq", "248d6a61d20638b8e5c026930c3e6039a33ce45964ff2167f6ecedd419db06c1"],
+    [
+      "abcdbcdecdefdefgefghfghighijhijkijkljklmklmnlmnomnopnopq",
+      "248d6a61d20638b8e5c026930c3e6039a33ce45964ff2167f6ecedd419db06c1",
+    ],
     ["", "e3b0c44298fc1c149afbf4c8996fb92427ae41e4649b934ca495991b7852b855"],
   ])("hashes %s as the published example", (message, digest) => {
     expect(sha256Hex(bytes(message))).toBe(digest);
@@ -113,7 +117,9 @@ describe("hashDocument", () => {
 
   it("does not change with provenance or with the order of fields", () => {
     const { slots, modes, ...rest } = document;
-    expect(hashDocument({ slots, modes, ...rest, provenance: { by: "Imke R.", at: "2026-03-01" } })).toBe(hashDocument(document));
+    expect(hashDocument({ slots, modes, ...rest, provenance: { by: "Imke R.", at: "2026-03-01" } })).toBe(
+      hashDocument(document),
+    );
   });
 
   it("changes with any value", () => {

@@ -9,7 +9,8 @@ import { roundTiming } from "@/lib/profile/round";
 import { sameRaster } from "@/lib/timing/same-raster";
 import { anyBase, anyProfile, documentOf, lf8, oneSlot, timingOf } from "./samples";
 
-const lay = (base: ProfileDocument, profile: ProfileDocument, leftOut: readonly number[] = [], limits = lf8) => overlay({ base, profile, leftOut, limits });
+const lay = (base: ProfileDocument, profile: ProfileDocument, leftOut: readonly number[] = [], limits = lf8) =>
+  overlay({ base, profile, leftOut, limits });
 const rules = (laid: ReturnType<typeof lay>) => laid.findings.map(({ rule, severity }) => `${severity} ${rule}`);
 
 const base = documentOf({
@@ -21,17 +22,32 @@ const base = documentOf({
     { key: "4", name: "four", timing: timingOf("240p60") },
   ],
   slots: [
-    { number: 1, name: "First", mode: "1", placement: { widthPct: 96, heightPct: 96, offsetPx: 0, offsetLines: 0 }, syncKind: "composite" },
+    {
+      number: 1,
+      name: "First",
+      mode: "1",
+      placement: { widthPct: 96, heightPct: 96, offsetPx: 0, offsetLines: 0 },
+      syncKind: "composite",
+    },
     { number: 2, name: "Second", mode: "1" },
     { number: 3, name: "Third", mode: "2" },
   ],
 });
-const shifted = { ...timingOf("240p60"), horizontal: { ...timingOf("240p60").horizontal, frontPorch: 30, backPorch: 122 } };
+const shifted = {
+  ...timingOf("240p60"),
+  horizontal: { ...timingOf("240p60").horizontal, frontPorch: 30, backPorch: 122 },
+};
 
 describe("overlay: what is not named stays", () => {
   it("replaces the values that the profile names and no other", () => {
     const { merged } = lay(base, documentOf({ slots: [{ number: 1, placement: { heightPct: 97.6 } }] }));
-    expect(findSlot(merged, 1)).toEqual({ number: 1, name: "First", mode: "1", placement: { widthPct: 96, heightPct: 97.6, offsetPx: 0, offsetLines: 0 }, syncKind: "composite" });
+    expect(findSlot(merged, 1)).toEqual({
+      number: 1,
+      name: "First",
+      mode: "1",
+      placement: { widthPct: 96, heightPct: 97.6, offsetPx: 0, offsetLines: 0 },
+      syncKind: "composite",
+    });
     expect(merged.slots?.slice(1)).toEqual(base.slots?.slice(1));
     expect(merged.modes).toEqual(base.modes);
   });
@@ -92,8 +108,16 @@ describe("overlay: where modes find their place", () => {
   });
 
   it("then the lowest mode that its slots alone use", () => {
-    expect(lay(base, documentOf({ modes: [{ key: "a", timing: shifted }], slots: [{ number: 3, mode: "a" }] })).modeMap).toEqual({ a: "2" });
-    const both = documentOf({ modes: [{ key: "a", timing: shifted }], slots: [{ number: 1, mode: "a" }, { number: 2, mode: "a" }] });
+    expect(
+      lay(base, documentOf({ modes: [{ key: "a", timing: shifted }], slots: [{ number: 3, mode: "a" }] })).modeMap,
+    ).toEqual({ a: "2" });
+    const both = documentOf({
+      modes: [{ key: "a", timing: shifted }],
+      slots: [
+        { number: 1, mode: "a" },
+        { number: 2, mode: "a" },
+      ],
+    });
     expect(lay(base, both).modeMap).toEqual({ a: "1" });
   });
 
@@ -103,7 +127,13 @@ describe("overlay: where modes find their place", () => {
     expect(laid.modeMap).toEqual({ a: "3" });
     expect(rules(laid)).toEqual(["note device.mode-overwritten"]);
     expect(laid.findings[0]?.sentence).toBe("Mode 3 of the device, “three”, is overwritten by “new”.");
-    const both = { ...one, slots: [{ number: 1, mode: "a" }, { number: 2, mode: "a" }] };
+    const both = {
+      ...one,
+      slots: [
+        { number: 1, mode: "a" },
+        { number: 2, mode: "a" },
+      ],
+    };
     expect(lay(base, both, [2]).modeMap).toEqual({ a: "3" });
   });
 
@@ -115,8 +145,14 @@ describe("overlay: where modes find their place", () => {
 
   it("does not give a mode twice, nor one that was in use before", () => {
     const profile = documentOf({
-      modes: [{ key: "a", timing: shifted }, { key: "b", timing: timingOf("576i50") }],
-      slots: [{ number: 1, mode: "a" }, { number: 2, mode: "b" }],
+      modes: [
+        { key: "a", timing: shifted },
+        { key: "b", timing: timingOf("576i50") },
+      ],
+      slots: [
+        { number: 1, mode: "a" },
+        { number: 2, mode: "b" },
+      ],
     });
     expect(lay(base, profile).modeMap).toEqual({ a: "1", b: "3" });
   });
@@ -135,7 +171,10 @@ describe("overlay: where modes find their place", () => {
     const laid = lay(base, documentOf({ modes: [], slots: [{ number: 1, mode: "3" }] }));
     expect(rules(laid)).toEqual(["stop shape.mode-missing"]);
     expect(findSlot(laid.merged, 1)?.mode).toBe("1");
-    const crossed = documentOf({ modes: [{ key: "1", timing: timingOf("288p50") }], slots: [{ number: 1, mode: "1" }] });
+    const crossed = documentOf({
+      modes: [{ key: "1", timing: timingOf("288p50") }],
+      slots: [{ number: 1, mode: "1" }],
+    });
     expect(lay(base, crossed).modeMap).toEqual({ "1": "2" });
   });
 

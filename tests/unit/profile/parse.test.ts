@@ -31,7 +31,9 @@ describe("parseDocument", () => {
   });
 
   it("refuses what is no profile, no group, or no JSON", () => {
-    expect(refused("{}")).toEqual([{ path: "format", message: expect.stringContaining("backporch-profile") as string }]);
+    expect(refused("{}")).toEqual([
+      { path: "format", message: expect.stringContaining("backporch-profile") as string },
+    ]);
     expect(refused("[]")).toHaveLength(1);
     expect(refused("<profile/>")[0]?.message).toContain("not JSON");
   });
@@ -44,7 +46,11 @@ describe("parseDocument", () => {
   });
 
   it("tells every complaint by its position, at most a hundred", () => {
-    expect(refused(`{${head},"modes":[{"key":""}],"slots":[{"number":-1},{"number":1,"name":"a\\u0007b","syncKind":"loud"}]}`)).toEqual([
+    expect(
+      refused(
+        `{${head},"modes":[{"key":""}],"slots":[{"number":-1},{"number":1,"name":"a\\u0007b","syncKind":"loud"}]}`,
+      ),
+    ).toEqual([
       { path: "modes[0].key", message: "Its length must be at least 1." },
       { path: "slots[0].number", message: "Must be at least 0." },
       { path: "slots[1].name", message: "Must have no control characters." },
@@ -55,7 +61,9 @@ describe("parseDocument", () => {
   });
 
   it("refuses a timing in part: it is whole or absent", () => {
-    expect(refused(`{${head},"modes":[{"key":"a","timing":{"pixelClockHz":27000000}}]}`).map(({ path }) => path)).toContain("modes[0].timing.horizontal");
+    expect(
+      refused(`{${head},"modes":[{"key":"a","timing":{"pixelClockHz":27000000}}]}`).map(({ path }) => path),
+    ).toContain("modes[0].timing.horizontal");
   });
 
   it("refuses more than 256 modes or slots, more than 1 MiB, and more than 64 levels, as text and as a value", () => {
@@ -76,7 +84,9 @@ describe("parseDocument", () => {
 
   it("reads a list as long as a document can be", () => {
     expect(taken(`{${head},"x":[${"1,".repeat(500_000)}1]}`).unknownFields).toHaveLength(1);
-    expect(refused(documentOf({ slots: Array.from({ length: 100_000 }, (_, number) => ({ number })) }))).toHaveLength(1);
+    expect(refused(documentOf({ slots: Array.from({ length: 100_000 }, (_, number) => ({ number })) }))).toHaveLength(
+      1,
+    );
   });
 
   it("refuses a field named __proto__ and half a surrogate pair", () => {
@@ -85,10 +95,18 @@ describe("parseDocument", () => {
   });
 
   it("answers any text and any value with a result, never with a throw", () => {
-    fc.assert(fc.property(fc.oneof(fc.string(), fc.json(), fc.jsonValue()), (input) => typeof parseDocument(input).ok === "boolean"));
     fc.assert(
-      fc.property(fc.jsonValue(), fc.constantFrom("modes", "slots", "everywhere", "madeFor"), (value, field) =>
-        typeof parseDocument({ format: "backporch-profile", version: 1, [field]: value }).ok === "boolean",
+      fc.property(
+        fc.oneof(fc.string(), fc.json(), fc.jsonValue()),
+        (input) => typeof parseDocument(input).ok === "boolean",
+      ),
+    );
+    fc.assert(
+      fc.property(
+        fc.jsonValue(),
+        fc.constantFrom("modes", "slots", "everywhere", "madeFor"),
+        (value, field) =>
+          typeof parseDocument({ format: "backporch-profile", version: 1, [field]: value }).ok === "boolean",
       ),
     );
   });

@@ -18,7 +18,11 @@ describe("paths", () => {
   it("reads every mode key back, brackets and backslashes too", () => {
     fc.assert(
       fc.property(fc.string({ minLength: 1, maxLength: 64 }), (key) => {
-        expect(parsePath(modePath(key, "timing.horizontal.sync"))).toEqual({ scope: "mode", key, fields: ["timing", "horizontal", "sync"] });
+        expect(parsePath(modePath(key, "timing.horizontal.sync"))).toEqual({
+          scope: "mode",
+          key,
+          fields: ["timing", "horizontal", "sync"],
+        });
       }),
     );
   });
@@ -61,7 +65,10 @@ describe("compareDocuments", () => {
     const right = documentOf({
       everywhere: { trim: { topLines: 2 } },
       modes: [{ key: "a", timing: { ...timingOf("240p60"), pixelClockHz: 27_050_000 } }],
-      slots: [{ number: 1, mode: "a", name: "A", placement: { offsetPx: 12 }, syncKind: "composite" }, { number: 2, name: "B" }],
+      slots: [
+        { number: 1, mode: "a", name: "A", placement: { offsetPx: 12 }, syncKind: "composite" },
+        { number: 2, name: "B" },
+      ],
       provenance: { by: "Imke R." },
     });
     expect(compareDocuments(left, right)).toEqual([
@@ -88,9 +95,15 @@ describe("compareDocuments", () => {
   it("gives the left's values back when each change is undone on the right", () => {
     fc.assert(
       fc.property(anyProfile, (left) => {
-        const patch = [{ path: "slots[1].placement.widthPct", value: 88 }, { path: "slots[1].name", value: "changed" }];
+        const patch = [
+          { path: "slots[1].placement.widthPct", value: 88 },
+          { path: "slots[1].name", value: "changed" },
+        ];
         const right = applyPatch(left, patch);
-        const undo = compareDocuments(left, right).map(({ path, left: value }) => ({ path, value: value as string | number | null }));
+        const undo = compareDocuments(left, right).map(({ path, left: value }) => ({
+          path,
+          value: value as string | number | null,
+        }));
         const known = (left.slots ?? []).some(({ number }) => number === 1);
         const back = applyPatch(right, undo);
         expect(compareDocuments(left, known ? back : { ...back, slots: left.slots })).toEqual([]);

@@ -24,7 +24,11 @@ describe("roundToStep", () => {
   });
 
   it("gives a value on the steps, half a step away at most, and the same again", () => {
-    const anyLimit = fc.record({ min: fc.integer({ min: -500, max: 500 }), count: fc.integer({ min: 1, max: 400 }), step: fc.constantFrom(0.1, 0.4, 0.5, 1, 2, 5, 50) });
+    const anyLimit = fc.record({
+      min: fc.integer({ min: -500, max: 500 }),
+      count: fc.integer({ min: 1, max: 400 }),
+      step: fc.constantFrom(0.1, 0.4, 0.5, 1, 2, 5, 50),
+    });
     fc.assert(
       fc.property(anyLimit, fc.double({ min: 0, max: 1, noNaN: true }), ({ min, count, step }, share) => {
         const of = limit(min, Number((min + count * step).toPrecision(12)), step);
@@ -40,7 +44,9 @@ describe("roundToStep", () => {
 
 describe("roundDocument", () => {
   it("says what it rounded, what is out of range and what the device lacks, and takes the last out", () => {
-    const document = applyPatch(oneSlot({ placement: { widthPct: 95.1, heightPct: 130 }, input: "aux 9" }), [{ path: "modes[a].timing.pixelClockHz", value: 27_010_000 }]);
+    const document = applyPatch(oneSlot({ placement: { widthPct: 95.1, heightPct: 130 }, input: "aux 9" }), [
+      { path: "modes[a].timing.pixelClockHz", value: 27_010_000 },
+    ]);
     const { document: held, rounded, outOfRange, lacks } = roundDocument(document, lf8);
     expect(rounded.map(({ path, asked, held: now }) => [path, asked, now])).toEqual([
       ["modes[a].timing.pixelClockHz", 27_010_000, 27_000_000],
@@ -54,13 +60,18 @@ describe("roundDocument", () => {
   it("keeps a timing whole although the device has no word for a part of it", () => {
     const { "modes[*].timing.vertical.sync": _sync, ...numbers } = lf8.numbers;
     expect(roundTiming(timingOf("240p60"), { ...lf8, numbers })).toEqual(timingOf("240p60"));
-    expect(roundDocument(oneSlot({}), { ...lf8, numbers, choices: {} }).document.modes?.[0]?.timing).toEqual(timingOf("240p60"));
+    expect(roundDocument(oneSlot({}), { ...lf8, numbers, choices: {} }).document.modes?.[0]?.timing).toEqual(
+      timingOf("240p60"),
+    );
   });
 
   it("changes nothing the second time", () => {
     fc.assert(
       fc.property(anyProfile, fc.double({ min: 70, max: 130, noNaN: true }), (document, widthPct) => {
-        const once = roundDocument(applyPatch(document, [{ path: "slots[1].placement.widthPct", value: widthPct }]), lf8);
+        const once = roundDocument(
+          applyPatch(document, [{ path: "slots[1].placement.widthPct", value: widthPct }]),
+          lf8,
+        );
         const twice = roundDocument(once.document, lf8);
         expect(twice.document).toEqual(once.document);
         expect(twice.rounded).toEqual([]);

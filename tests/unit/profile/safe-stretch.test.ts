@@ -26,7 +26,9 @@ describe("safeStretch of a placement", () => {
     expect(safeStretch("slots[1].placement.offsetLines", input(placed({ heightPct: 108 })))).toBeNull();
     expect(safeStretch("slots[1].placement.skewPct", input(placed({})))).toBeNull();
     const { "slots[*].placement.offsetPx": _absent, ...numbers } = lf8.numbers;
-    expect(safeStretch("slots[1].placement.offsetPx", { ...input(placed({})), device: { ...lf8, numbers } })).toBeNull();
+    expect(
+      safeStretch("slots[1].placement.offsetPx", { ...input(placed({})), device: { ...lf8, numbers } }),
+    ).toBeNull();
   });
 
   it("equals the steps that brute force finds", () => {
@@ -38,19 +40,33 @@ describe("safeStretch of a placement", () => {
           const { before, after } = outsideRaster(240, value, offsetLines);
           return before + after === 0;
         });
-        expect(safeStretch("slots[1].placement.heightPct", input(document))).toEqual(pct.length === 0 ? null : [pct[0], pct.at(-1)]);
+        expect(safeStretch("slots[1].placement.heightPct", input(document))).toEqual(
+          pct.length === 0 ? null : [pct[0], pct.at(-1)],
+        );
         const offsets = Array.from({ length: 41 }, (_, n) => n - 20).filter((value) => {
           const { before, after } = outsideRaster(240, heightPct, value);
           return before + after === 0;
         });
-        expect(safeStretch("slots[1].placement.offsetLines", input(document))).toEqual(offsets.length === 0 ? null : [offsets[0], offsets.at(-1)]);
+        expect(safeStretch("slots[1].placement.offsetLines", input(document))).toEqual(
+          offsets.length === 0 ? null : [offsets[0], offsets.at(-1)],
+        );
       }),
     );
   });
 });
 
 describe("safeStretch of a timing", () => {
-  const fields = ["horizontal.active", "horizontal.frontPorch", "horizontal.sync", "horizontal.backPorch", "vertical.active", "vertical.frontPorch", "vertical.sync", "vertical.backPorch", "pixelClockHz"];
+  const fields = [
+    "horizontal.active",
+    "horizontal.frontPorch",
+    "horizontal.sync",
+    "horizontal.backPorch",
+    "vertical.active",
+    "vertical.frontPorch",
+    "vertical.sync",
+    "vertical.backPorch",
+    "pixelClockHz",
+  ];
   const clocks = fields.map((field) => [field, `modes[a].timing.${field}`] as const);
 
   it.each(clocks)("of %s equals the stretch that brute force finds around the value", (field, path) => {
@@ -59,10 +75,12 @@ describe("safeStretch of a timing", () => {
     fc.assert(
       fc.property(anyTiming, fc.constantFrom(television, bothTelevision, monitor), (timing, screen) => {
         const document = oneSlot({}, roundTiming(timing, lf8));
-        const allowed = Array.from({ length: stepCount(limit) + 1 }, (_, step) => valueOfStep(limit, step)).map((value) => {
-          const after = findMode(applyOne(document, path, value), "a")?.timing;
-          return after !== undefined && isRasterAllowed(after, screen) ? value : null;
-        });
+        const allowed = Array.from({ length: stepCount(limit) + 1 }, (_, step) => valueOfStep(limit, step)).map(
+          (value) => {
+            const after = findMode(applyOne(document, path, value), "a")?.timing;
+            return after !== undefined && isRasterAllowed(after, screen) ? value : null;
+          },
+        );
         const stretch = safeStretch(path, { document, device: lf8, screen });
         if (stretch === null) {
           expect(allowed.every((value) => value === null)).toBe(true);
@@ -81,7 +99,10 @@ describe("safeStretch of a timing", () => {
   const applyOne = (document: ReturnType<typeof oneSlot>, path: string, value: number) => {
     const timing = findMode(document, "a")?.timing ?? timingOf("240p60");
     const [axis = "", part = ""] = path.slice("modes[a].timing.".length).split(".");
-    const next = axis === "pixelClockHz" ? { ...timing, pixelClockHz: value } : { ...timing, [axis]: { ...timing[axis as "horizontal"], [part]: value } };
+    const next =
+      axis === "pixelClockHz"
+        ? { ...timing, pixelClockHz: value }
+        : { ...timing, [axis]: { ...timing[axis as "horizontal"], [part]: value } };
     return documentOf({ modes: [{ key: "a", timing: next }] });
   };
 
@@ -125,8 +146,14 @@ describe("movePorches", () => {
 
   it("refuses to use a porch up", () => {
     expect(movePorches(timing, { rightPx: 39 })).toEqual({ ok: false, error: { code: "used-up", axis: "horizontal" } });
-    expect(movePorches(timing, { downLines: -16 })).toEqual({ ok: false, error: { code: "used-up", axis: "vertical" } });
-    expect(movePorches(timing, { tallerLines: -240 })).toEqual({ ok: false, error: { code: "nothing-active", axis: "vertical" } });
+    expect(movePorches(timing, { downLines: -16 })).toEqual({
+      ok: false,
+      error: { code: "used-up", axis: "vertical" },
+    });
+    expect(movePorches(timing, { tallerLines: -240 })).toEqual({
+      ok: false,
+      error: { code: "nothing-active", axis: "vertical" },
+    });
   });
 
   it("keeps totals, sync and all rates, and is undone by its opposite", () => {

@@ -33,23 +33,34 @@ export function oneSlot(slot: Partial<ProfileSlot>, timing: RasterTiming = timin
 }
 
 const stepped = (limit: NumberLimit) =>
-  fc.integer({ min: 0, max: Math.floor((limit.max - limit.min) / limit.step) }).map((n) => Number((limit.min + n * limit.step).toPrecision(12)));
+  fc
+    .integer({ min: 0, max: Math.floor((limit.max - limit.min) / limit.step) })
+    .map((n) => Number((limit.min + n * limit.step).toPrecision(12)));
 const limitOf = (pattern: string) => {
   const limit = lf8.numbers[pattern];
   if (!limit) throw new Error(`no limit ${pattern}`);
   return limit;
 };
 const maybe = <T>(value: fc.Arbitrary<T>) => fc.option(value, { nil: undefined });
-const named = <T extends object>(value: T): T => Object.fromEntries(Object.entries(value).filter(([, inner]) => inner !== undefined)) as T;
+const named = <T extends object>(value: T): T =>
+  Object.fromEntries(Object.entries(value).filter(([, inner]) => inner !== undefined)) as T;
 
 export const anyTiming = fc
-  .record({ name: fc.constantFrom(...standardNames), hPorch: fc.integer({ min: -6, max: 6 }), vPorch: fc.integer({ min: -2, max: 2 }) })
+  .record({
+    name: fc.constantFrom(...standardNames),
+    hPorch: fc.integer({ min: -6, max: 6 }),
+    vPorch: fc.integer({ min: -2, max: 2 }),
+  })
   .map(({ name, hPorch, vPorch }): RasterTiming => {
     const timing = timingOf(name);
     const { horizontal, vertical } = timing;
     return {
       ...timing,
-      horizontal: { ...horizontal, frontPorch: horizontal.frontPorch + hPorch, backPorch: horizontal.backPorch - hPorch },
+      horizontal: {
+        ...horizontal,
+        frontPorch: horizontal.frontPorch + hPorch,
+        backPorch: horizontal.backPorch - hPorch,
+      },
       vertical: { ...vertical, frontPorch: Math.max(1, vertical.frontPorch + vPorch) },
     };
   });
@@ -80,7 +91,8 @@ const anySlot = (number: number, keys: readonly string[]) =>
     })
     .map(named);
 
-const slotsOf = (keys: readonly string[], numbers: readonly number[]) => fc.tuple(...numbers.map((number) => anySlot(number, keys)));
+const slotsOf = (keys: readonly string[], numbers: readonly number[]) =>
+  fc.tuple(...numbers.map((number) => anySlot(number, keys)));
 
 const documentWith = (keys: readonly string[], numbers: readonly number[]) =>
   fc

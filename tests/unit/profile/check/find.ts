@@ -11,7 +11,8 @@ export function found(rule: string, input: CheckInput): Finding[] {
 export function theOne(rule: string, input: CheckInput): Finding {
   const all = found(rule, input);
   const [only] = all;
-  if (!only || all.length > 1) throw new Error(`${all.length} findings of ${rule}: ${all.map(({ path }) => path).join(", ")}`);
+  if (!only || all.length > 1)
+    throw new Error(`${all.length} findings of ${rule}: ${all.map(({ path }) => path).join(", ")}`);
   return only;
 }
 

@@ -3,11 +3,16 @@ import { describe, expect, it } from "vitest";
 import { documentOf, lf8, oneSlot, television, timingOf } from "@/tests/unit/profile/samples";
 import { found, labels, theOne } from "./find";
 
-const placed = (placement: Placement, name: Parameters<typeof timingOf>[0] = "240p60") => oneSlot({ placement }, timingOf(name));
+const placed = (placement: Placement, name: Parameters<typeof timingOf>[0] = "240p60") =>
+  oneSlot({ placement }, timingOf(name));
 
 describe("placement", () => {
   it("says by how much a slot is too tall, and offers the tallest that fits at its offset on the device's steps", () => {
-    const finding = theOne("placement.vertical", { document: placed({ heightPct: 108, offsetLines: -3 }), device: lf8, screen: television });
+    const finding = theOne("placement.vertical", {
+      document: placed({ heightPct: 108, offsetLines: -3 }),
+      device: lf8,
+      screen: television,
+    });
     expect(finding).toMatchObject({
       severity: "stop",
       path: "slots[1].placement.heightPct",
@@ -23,9 +28,16 @@ describe("placement", () => {
   });
 
   it("offers the nearest offset too where the size itself fits", () => {
-    const finding = theOne("placement.horizontal", { document: placed({ widthPct: 96, offsetPx: 40 }, "480p60"), device: lf8 });
+    const finding = theOne("placement.horizontal", {
+      document: placed({ widthPct: 96, offsetPx: 40 }, "480p60"),
+      device: lf8,
+    });
     // ⌊720 · 0.96 + ½⌋ = 691, ⌊29 / 2⌋ = 14: 15 px are free on the right.
-    expect(finding).toMatchObject({ severity: "stop", sentence: "Slot 1 is 25 px too far right.", path: "slots[1].placement.offsetPx" });
+    expect(finding).toMatchObject({
+      severity: "stop",
+      sentence: "Slot 1 is 25 px too far right.",
+      path: "slots[1].placement.offsetPx",
+    });
     expect(labels(finding)).toEqual(["Use 88.8 %", "Use 15 px", "Leave slot 1 out"]);
   });
 
@@ -38,14 +50,24 @@ describe("placement", () => {
   });
 
   it("works an interlaced mode in field lines", () => {
-    const finding = theOne("placement.vertical", { document: placed({ heightPct: 100, offsetLines: 1 }, "480i60"), device: lf8 });
+    const finding = theOne("placement.vertical", {
+      document: placed({ heightPct: 100, offsetLines: 1 }, "480i60"),
+      device: lf8,
+    });
     expect(finding.sentence).toBe("Slot 1 is 1 field line too low.");
   });
 
   it("finds nothing at the edge, and nothing where no size is named", () => {
-    expect(found("placement.vertical", { document: placed({ heightPct: 97.6, offsetLines: -3 }), device: lf8 })).toEqual([]);
+    expect(
+      found("placement.vertical", { document: placed({ heightPct: 97.6, offsetLines: -3 }), device: lf8 }),
+    ).toEqual([]);
     expect(found("placement.vertical", { document: placed({ offsetLines: -3 }), device: lf8 })).toEqual([]);
-    expect(found("placement.vertical", { document: documentOf({ slots: [{ number: 1, placement: { heightPct: 120 } }] }), device: lf8 })).toEqual([]);
+    expect(
+      found("placement.vertical", {
+        document: documentOf({ slots: [{ number: 1, placement: { heightPct: 120 } }] }),
+        device: lf8,
+      }),
+    ).toEqual([]);
   });
 
   it("leaves a picture with no part inside to its shape", () => {

@@ -8,8 +8,14 @@ import { documentOf, lf8, monitor, oneSlot, television, timingOf } from "@/tests
 import { found, labels, theOne } from "./find";
 
 const twoModes = documentOf({
-  modes: [{ key: "high", timing: timingOf("480p60") }, { key: "low", timing: timingOf("240p60") }],
-  slots: [{ number: 1, mode: "high" }, { number: 2, mode: "high" }],
+  modes: [
+    { key: "high", timing: timingOf("480p60") },
+    { key: "low", timing: timingOf("240p60") },
+  ],
+  slots: [
+    { number: 1, mode: "high" },
+    { number: 2, mode: "high" },
+  ],
 });
 
 describe("screen", () => {
@@ -28,12 +34,19 @@ describe("screen", () => {
     // 27 MHz / 858: CTA-861 code 2 prints 31.469 kHz.
     expect(finding.measured).toBeCloseTo(31_468.53, 2);
     expect(labels(finding)).toEqual(["Use 240p60 (mode low)", "Leave slot 1 out", "Leave slot 2 out"]);
-    expect(finding.remedies[0]).toMatchObject({ patch: [{ path: "slots[1].mode", value: "low" }, { path: "slots[2].mode", value: "low" }] });
+    expect(finding.remedies[0]).toMatchObject({
+      patch: [
+        { path: "slots[1].mode", value: "low" },
+        { path: "slots[2].mode", value: "low" },
+      ],
+    });
   });
 
   it("refuses a raster below the band, and a field rate outside it", () => {
     expect(theOne("screen.line-rate", { document: oneSlot({}), screen: monitor }).sentence).toContain("too slow");
-    expect(theOne("screen.field-rate", { document: oneSlot({}, timingOf("288p50")), screen: television })).toMatchObject({ severity: "stop", limit: [58.44, 61.44] });
+    expect(
+      theOne("screen.field-rate", { document: oneSlot({}, timingOf("288p50")), screen: television }),
+    ).toMatchObject({ severity: "stop", limit: [58.44, 61.44] });
   });
 
   it("refuses interlace where the screen takes none, and a clock beyond its own", () => {
@@ -44,7 +57,10 @@ describe("screen", () => {
   });
 
   it("is inclusive to 1 part in 10⁶", () => {
-    const exact = (rate: number) => ({ ...television, bands: [{ lineRateHz: [15_000, rate] as [number, number], fieldRateHz: [58, 62] as [number, number] }] });
+    const exact = (rate: number) => ({
+      ...television,
+      bands: [{ lineRateHz: [15_000, rate] as [number, number], fieldRateHz: [58, 62] as [number, number] }],
+    });
     const document = oneSlot({});
     const rate = 27e6 / 1716;
     expect(found("screen.line-rate", { document, screen: exact(rate) })).toEqual([]);
@@ -55,13 +71,18 @@ describe("screen", () => {
   it("checks the rate that comes out where the output follows the input", () => {
     const follower = { ...lf8, outputClock: "input" as const };
     const document = oneSlot({ expects: { activePx: 720, activeLines: 576, interlaced: true, fieldRateHz: 50 } });
-    const rules = checkProfile({ document, device: follower, screen: television }).filter(({ path }) => path === "slots[1].mode").map(({ rule }) => rule);
+    const rules = checkProfile({ document, device: follower, screen: television })
+      .filter(({ path }) => path === "slots[1].mode")
+      .map(({ rule }) => rule);
     expect(rules).toContain("screen.line-rate");
     expect(rules).not.toContain("rate.slip");
   });
 
   it("cautions about idle rasters that are outside or unknown, and keeps them out of what is allowed", () => {
-    const device = { ...lf8, idle: { switchOn: "unknown" as const, withoutInput: timingOf("480p60"), afterReset: timingOf("240p60") } };
+    const device = {
+      ...lf8,
+      idle: { switchOn: "unknown" as const, withoutInput: timingOf("480p60"), afterReset: timingOf("240p60") },
+    };
     const idle = found("screen.idle", { document: oneSlot({}), device, screen: television });
     expect(idle.map(({ path, severity }) => [path, severity])).toEqual([
       ["device.idle.withoutInput.line-rate", "caution"],
@@ -77,27 +98,48 @@ describe("screen idle", () => {
     const raster = timingOf("480p60");
     const device = { ...lf8, idle: { switchOn: raster, withoutInput: raster, afterReset: timingOf("240p60") } };
     const idle = theOne("screen.idle", { document: oneSlot({}), device, screen: television });
-    expect(idle.sentence).toBe("The raster at switch-on and without input runs at 31.469 kHz, too fast for this screen.");
+    expect(idle.sentence).toBe(
+      "The raster at switch-on and without input runs at 31.469 kHz, too fast for this screen.",
+    );
   });
 });
 
 describe("what softens a finding", () => {
   const bad = documentOf({
-    modes: [{ key: "1", timing: timingOf("480p60") }, { key: "2", timing: timingOf("480p60") }, { key: "3", timing: timingOf("480p60") }],
-    slots: [{ number: 1, mode: "1" }, { number: 2, mode: "2" }],
+    modes: [
+      { key: "1", timing: timingOf("480p60") },
+      { key: "2", timing: timingOf("480p60") },
+      { key: "3", timing: timingOf("480p60") },
+    ],
+    slots: [
+      { number: 1, mode: "1" },
+      { number: 2, mode: "2" },
+    ],
   });
   const severities = (unchanged: { slots: number[]; modes: string[] } | undefined) =>
-    Object.fromEntries(found("screen.line-rate", { document: bad, screen: television, unchanged }).map(({ path, severity }) => [path.slice(6, 7), severity]));
+    Object.fromEntries(
+      found("screen.line-rate", { document: bad, screen: television, unchanged }).map(({ path, severity }) => [
+        path.slice(6, 7),
+        severity,
+      ]),
+    );
 
   it("a mode that no changed slot uses is a caution at most, and one that stays unused says nothing", () => {
     expect(severities(undefined)).toEqual({ "1": "stop", "2": "stop", "3": "caution" });
     expect(severities({ slots: [2], modes: ["2", "3"] })).toEqual({ "1": "stop", "2": "caution" });
-    expect(severities({ slots: [1, 2], modes: ["1", "2"] })).toEqual({ "1": "caution", "2": "caution", "3": "caution" });
+    expect(severities({ slots: [1, 2], modes: ["1", "2"] })).toEqual({
+      "1": "caution",
+      "2": "caution",
+      "3": "caution",
+    });
   });
 
   it("a mode that the device cannot hold stays a stop although no slot uses it, if it would be written", () => {
     const document = documentOf({ modes: [{ key: "1", timing: { ...timingOf("240p60"), pixelClockHz: 400e6 } }] });
-    const severity = (modes: string[]) => found("device.clock", { document, device: lf8, unchanged: { slots: [], modes } }).map((finding) => finding.severity);
+    const severity = (modes: string[]) =>
+      found("device.clock", { document, device: lf8, unchanged: { slots: [], modes } }).map(
+        (finding) => finding.severity,
+      );
     expect(severity([])).toEqual(["stop"]);
     expect(severity(["1"])).toEqual([]);
   });
@@ -111,14 +153,18 @@ describe("isRasterAllowed", () => {
     expect(isRasterAllowed(timing, monitor)).toBe(false);
     expect(isRasterAllowed({ ...timing, vertical: { ...timing.vertical, sync: 0 } }, undefined)).toBe(false);
     expect(isRasterAllowed({ ...timing, pixelClockHz: 0 }, undefined)).toBe(false);
-    expect(isRasterAllowed({ ...timing, horizontal: { ...timing.horizontal, sync: 100, backPorch: 138 } }, television)).toBe(false);
+    expect(
+      isRasterAllowed({ ...timing, horizontal: { ...timing.horizontal, sync: 100, backPorch: 138 } }, television),
+    ).toBe(false);
   });
 
   it("says the same as the checks of every published raster on every preset", () => {
     for (const { envelope: screen } of screenPresets) {
       for (const { timing } of ctaCatalogue) {
         const families = ["shape", "screen", "blanking"];
-        const stops = checkProfile({ document: oneSlot({}, timing), screen }).filter(({ rule, severity }) => severity === "stop" && families.includes(rule.split(".")[0] ?? ""));
+        const stops = checkProfile({ document: oneSlot({}, timing), screen }).filter(
+          ({ rule, severity }) => severity === "stop" && families.includes(rule.split(".")[0] ?? ""),
+        );
         expect(isRasterAllowed(timing, screen)).toBe(stops.length === 0);
       }
     }
@@ -127,7 +173,10 @@ describe("isRasterAllowed", () => {
 
 describe("standards", () => {
   it("no check cautions against a standard's own raster", () => {
-    const timings = [...standardNames.map((name) => standardRaster(name).timing), ...ctaCatalogue.map(({ timing }) => timing)];
+    const timings = [
+      ...standardNames.map((name) => standardRaster(name).timing),
+      ...ctaCatalogue.map(({ timing }) => timing),
+    ];
     for (const timing of timings) {
       const findings = checkProfile({ document: oneSlot({}, timing) }).filter(({ rule }) => rule !== "unknown.screen");
       expect(findings).toEqual([]);
