@@ -4,7 +4,7 @@ import { openDatabase } from "./database.mjs";
 import { checkNode, giveHome, installPackages } from "./install.mjs";
 import { Prerequisite } from "./packages.mjs";
 import { prepareDatabase, serverEnvironment } from "./prepare.mjs";
-import { onSignal, start, stopAll } from "./processes.mjs";
+import { end, onSignal, start, stopAll } from "./processes.mjs";
 
 const root = path.dirname(import.meta.dirname);
 const port = Number(process.env.PORT || "3000");
@@ -35,5 +35,4 @@ try {
 } catch (error) {
   console.error(error instanceof Prerequisite ? error.message : error);
 }
-await cleanUp();
-process.exit(code);
+await end(cleanUp, code);

@@ -1,4 +1,5 @@
 import { spawn } from "node:child_process";
+import { once } from "node:events";
 import { readFileSync } from "node:fs";
 import path from "node:path";
 
@@ -72,9 +73,11 @@ export function start(command, args, { cwd, env = process.env, output = "inherit
   });
   const chunks = [];
   for (const source of [child.stdout, child.stderr]) source?.on("data", (chunk) => keep(chunks, chunk));
+  // Not "close": it never comes when the channel was closed from this side.
+  const ended = [child.stdout, child.stderr].map((source) => (source ? once(source, "close") : Promise.resolve()));
   const exit = new Promise((resolve) => {
     child.on("error", () => resolve(127));
-    child.on("close", (code) => resolve(code ?? 1));
+    child.on("exit", (code) => void Promise.all(ended).then(() => resolve(code ?? 1)));
   });
   const stop = async () => {
     if (child.connected) child.disconnect();
@@ -107,21 +110,29 @@ export async function stopAll() {
   await Promise.all([...running].map((handle) => handle.stop()));
 }
 
+let ending = false;
+
 /**
  * Runs `clean` once when the process is told to end (Ctrl-C, SIGTERM, SIGHUP), then ends with the signal's code.
  * A second signal changes nothing: cleaning has bounds of its own.
  */
 export function onSignal(clean) {
-  let ending = false;
   for (const [name, number] of [
     ["SIGINT", 2],
     ["SIGTERM", 15],
     ["SIGHUP", 1],
   ]) {
-    process.on(name, () => {
-      if (ending) return;
-      ending = true;
-      void Promise.resolve(clean()).finally(() => process.exit(128 + number));
-    });
+    process.on(name, () => void end(clean, 128 + number));
+  }
+}
+
+/** Runs `clean` and ends with `code`, unless a signal has begun to end the process already. */
+export async function end(clean, code) {
+  if (ending) return;
+  ending = true;
+  try {
+    await clean();
+  } finally {
+    process.exit(code);
   }
 }

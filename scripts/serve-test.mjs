@@ -3,7 +3,7 @@ import path from "node:path";
 import { ensureBuild } from "./build.mjs";
 import { openDatabase } from "./database.mjs";
 import { prepareDatabase, serverEnvironment } from "./prepare.mjs";
-import { onSignal, run, start, stopAll } from "./processes.mjs";
+import { end, onSignal, run, start, stopAll } from "./processes.mjs";
 import { postgresBin } from "./packages.mjs";
 
 const say = (what) => console.log(what);
@@ -53,5 +53,4 @@ try {
 } catch (error) {
   console.error(error);
 }
-await cleanUp();
-process.exit(code);
+await end(cleanUp, code);

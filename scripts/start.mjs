@@ -5,7 +5,7 @@ import { openDatabase } from "./database.mjs";
 import { checkNode, giveHome, installPackages, isInstalled } from "./install.mjs";
 import { Prerequisite } from "./packages.mjs";
 import { prepareDatabase, serverEnvironment } from "./prepare.mjs";
-import { onSignal, start, stopAll, waitUntil } from "./processes.mjs";
+import { end, onSignal, start, stopAll, waitUntil } from "./processes.mjs";
 import { runSteps } from "./steps.mjs";
 
 const port = Number(process.env.PORT || "3000");
@@ -65,5 +65,4 @@ try {
 } catch (error) {
   console.error(error instanceof Prerequisite ? error.message : error);
 }
-await cleanUp();
-process.exit(code);
+await end(cleanUp, code);

@@ -1,7 +1,7 @@
 /** `npm test`: everything that proves the project, from a bare machine. The last line is `N passed, N failed`. */
 import { checkNode, giveHome, installPackages } from "./install.mjs";
 import { ensurePackages, Prerequisite } from "./packages.mjs";
-import { onSignal, stopAll } from "./processes.mjs";
+import { end, onSignal, stopAll } from "./processes.mjs";
 import { aboutTime } from "./steps.mjs";
 import { removeReports, stages } from "./suites.mjs";
 
@@ -71,7 +71,6 @@ try {
   total.failed += 1;
   console.error(error instanceof Prerequisite ? error.message : error);
 }
-await cleanUp();
 if (failures.length > 0) console.log(`Failed: ${failures.join(", ")}`);
 console.log(`${total.passed} passed, ${total.failed} failed`);
-process.exitCode = total.failed === 0 ? 0 : 1;
+await end(cleanUp, total.failed === 0 ? 0 : 1);

@@ -11,26 +11,25 @@ export function parseAddress(text: string): { readonly host: string; readonly po
   return host !== undefined && port <= 65_535 ? { host, port } : null;
 }
 
-/** Puts the device on raw TCP. A line has one host: while one is connected, others are turned away. */
+/** Puts the device on raw TCP. A line has one host: who connects last has it, so that a connection that died unseen blocks nobody. */
 export function serveTcp(device: ServedDevice, host: string, port: number): Promise<Served> {
   let current: Socket | null = null;
   const server = createServer({ noDelay: true }, (socket) => {
-    if (current) {
-      socket.destroy();
-      return;
-    }
+    current?.destroy();
     current = socket;
+    device.wire.hangUp();
     device.onBytes = (bytes) => {
       if (socket.writableLength < UNREAD_BYTES) socket.write(bytes);
     };
     socket.on("data", (bytes) => {
-      if (device.wire.hear(bytes)) return;
+      if (current !== socket || device.wire.hear(bytes)) return;
       socket.pause();
       device.wire.whenRoom(() => socket.resume());
     });
     // `close` follows and says all there is to say.
     socket.on("error", () => undefined);
     socket.on("close", () => {
+      if (current !== socket) return;
       current = null;
       device.onBytes = () => undefined;
       device.wire.hangUp();

@@ -1,4 +1,5 @@
 import { spawn } from "node:child_process";
+import { once } from "node:events";
 import { mkdtempSync, readFileSync, rmSync, writeFileSync, existsSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
@@ -30,15 +31,36 @@ function starter(where: string) {
 }
 
 describe("a command that was started", () => {
-  it.each(["SIGKILL", "SIGTERM"] as const)("ends with all it started when its starter goes by %s", async (signal) => {
-    const where = folder();
-    const process = starter(where);
-    const pidIn = (name: string) => Number(readFileSync(path.join(where, name), "utf8"));
-    await expect.poll(() => existsSync(path.join(where, "child")), { timeout: limitMs }).toBe(true);
-    const pids = [pidIn("child"), pidIn("grandchild")];
-    expect(pids.map((pid) => startTimeOf(pid) !== null)).toEqual([true, true]);
-    process.kill(signal);
-    await expect.poll(() => pids.map((pid) => startTimeOf(pid)), { timeout: limitMs }).toEqual([null, null]);
+  it.each(["SIGKILL", "SIGTERM"] as const)(
+    "ends with all it started when its starter goes by %s",
+    async (signal) => {
+      const where = folder();
+      const process = starter(where);
+      const pidIn = (name: string) => Number(readFileSync(path.join(where, name), "utf8"));
+      await expect.poll(() => existsSync(path.join(where, "child")), { timeout: limitMs }).toBe(true);
+      const pids = [pidIn("child"), pidIn("grandchild")];
+      expect(pids.map((pid) => startTimeOf(pid) !== null)).toEqual([true, true]);
+      process.kill(signal);
+      await expect.poll(() => pids.map((pid) => startTimeOf(pid)), { timeout: limitMs }).toEqual([null, null]);
+    },
+    60_000,
+  );
+});
+
+describe("a command that is told to stop", () => {
+  it("is over, and what it wrote is whole, when its starter goes on", async () => {
+    const program = `
+      const { start, stopAll, onSignal } = await import(${JSON.stringify(path.join(scripts, "processes.mjs"))});
+      const command = start("sh", ["-c", "echo begun; sleep 300"], { output: "pipe" });
+      onSignal(async () => { await stopAll(); console.log("said " + command.output().trim()); });
+      command.child.stdout.once("data", () => process.kill(process.pid, "SIGINT"));
+      await command.exit;`;
+    const child = spawn(process.execPath, ["--input-type=module", "-e", program]);
+    const chunks: Buffer[] = [];
+    child.stdout.on("data", (chunk: Buffer) => chunks.push(chunk));
+    const [code] = (await once(child, "close")) as [number];
+    // 128 + 2: ended by SIGINT, as a shell says it.
+    expect([code, Buffer.concat(chunks).toString()]).toEqual([130, "said begun\n"]);
   }, 60_000);
 });
 
