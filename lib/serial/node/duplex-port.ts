@@ -1,7 +1,8 @@
 import type { Clock } from "@/lib/serial/clock";
 import type { SerialOpenOptions, SerialPortIdentity } from "@/lib/serial/port";
-import type { SimulatedFarEnd } from "@/lib/serial/simulator/far-end";
+import type { SimulatedFarEnd, UnplugOrder } from "@/lib/serial/simulator/far-end";
 import type { SimulatedSerialPort } from "@/lib/serial/simulator/simulated-port";
+import type { AttachHow } from "@/lib/serial/simulator/simulated-serial";
 import { SimulatedMachine } from "@/lib/serial/simulator/simulated-serial";
 
 /** A two-way byte stream as Node has it (a socket, a serial device), as far as it is needed here. */
@@ -20,6 +21,8 @@ export type DuplexPortOptions = {
   /** Connects to the real thing; a rejection makes `open()` fail with NetworkError. */
   readonly connect: (options: SerialOpenOptions) => Promise<ByteDuplex>;
   readonly identity?: SerialPortIdentity;
+  /** Whether the adapter is there from the beginning; true by default. */
+  readonly isPlugged?: boolean;
 };
 
 /** Bytes held for a page that does not read. */
@@ -34,44 +37,49 @@ const PAUSE_BYTES = 16_384;
 export class DuplexPort {
   readonly machine: SimulatedMachine;
   readonly #options: DuplexPortOptions;
-  #far: SimulatedFarEnd;
+  #far: SimulatedFarEnd | null = null;
   #next: ByteDuplex | null = null;
 
   constructor(options: DuplexPortOptions) {
     this.#options = options;
     this.machine = new SimulatedMachine(options.clock);
-    this.#far = this.#attach();
+    if (options.isPlugged ?? true) this.#far = this.#attach({ announced: false });
   }
 
   /** The port object that is good now. Throws while the adapter is out. */
   get port(): SimulatedSerialPort {
-    const port = this.machine.portOf(this.#far);
+    const port = this.#far && this.machine.portOf(this.#far);
     if (!port) throw new Error("The adapter is unplugged.");
     return port;
   }
 
   /** Pulls the adapter, whatever the stream does. */
-  unplug(): void {
-    this.machine.detach(this.#far);
-    this.#far.closeBySystem();
+  unplug(order?: UnplugOrder): void {
+    const far = this.#far;
+    if (!far) return;
+    this.#far = null;
+    this.machine.detach(far, order);
   }
 
-  /** Plugs an adapter in again: a new port object. */
-  replug(): SimulatedSerialPort {
-    if (!this.machine.portOf(this.#far)) this.#far = this.#attach();
-    return this.port;
+  /** Plugs an adapter in: a new port object. */
+  plugIn(how: AttachHow = {}): SimulatedFarEnd {
+    this.#far ??= this.#attach(how);
+    return this.#far;
   }
 
-  #attach(): SimulatedFarEnd {
-    const far = this.machine.attach({
-      identity: this.#options.identity,
-      osBufferBytes: OS_BUFFER_BYTES,
-      linesOnOpen: { dataTerminalReady: true, requestToSend: true },
-      prepareOpen: async (options) => {
-        this.#next = await this.#options.connect(options);
-        return true;
+  #attach(how: AttachHow): SimulatedFarEnd {
+    const far = this.machine.attach(
+      {
+        identity: this.#options.identity,
+        osBufferBytes: OS_BUFFER_BYTES,
+        linesOnOpen: { dataTerminalReady: true, requestToSend: true },
+        prepareOpen: async (options) => {
+          this.#next = await this.#options.connect(options);
+          return true;
+        },
       },
-    });
+      how,
+    );
     far.onOpenChange = (isOpen) => {
       if (isOpen && this.#next) this.#run(far, this.#next);
     };
@@ -93,7 +101,7 @@ export class DuplexPort {
     const goAway = (): void => {
       if (isOver) return;
       end();
-      this.machine.detach(far);
+      if (this.#far === far) this.unplug();
     };
     duplex.on("error", goAway);
     duplex.on("close", goAway);

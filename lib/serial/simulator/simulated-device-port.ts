@@ -83,7 +83,7 @@ export class SimulatedDevicePort {
     this.#toDevice.setPace(perCharacterMs);
     this.#toHost.setPace(perCharacterMs);
     options.model.attach((bytes) => this.#say(bytes));
-    this.#port = this.replug();
+    this.#port = this.#plugIn(false);
   }
 
   /** Stands for `navigator.serial`. */
@@ -132,13 +132,20 @@ export class SimulatedDevicePort {
 
   /** Plugs the adapter in again. @returns the new port object; `connect` fires at it and bubbles to `serial` */
   replug(): SimulatedSerialPort {
-    if (this.#far) return this.#port;
-    const far = this.machine.attach({
-      identity: this.#options.identity,
-      osBufferBytes: this.#options.osBufferBytes ?? OS_BUFFER_BYTES,
-      reportsOverrun: this.#options.reportsOverrun ?? false,
-      linesOnOpen: { dataTerminalReady: true, requestToSend: true },
-    });
+    if (!this.#far) this.#port = this.#plugIn(true);
+    return this.#port;
+  }
+
+  #plugIn(announced: boolean): SimulatedSerialPort {
+    const far = this.machine.attach(
+      {
+        identity: this.#options.identity,
+        osBufferBytes: this.#options.osBufferBytes ?? OS_BUFFER_BYTES,
+        reportsOverrun: this.#options.reportsOverrun ?? false,
+        linesOnOpen: { dataTerminalReady: true, requestToSend: true },
+      },
+      { announced },
+    );
     far.setInputSignals({ dataCarrierDetect: true, clearToSend: true, ringIndicator: false, dataSetReady: true });
     far.transmitLine.onAvailable = () => this.#toDevice.wake();
     let hadDtr = false;
@@ -149,7 +156,6 @@ export class SimulatedDevicePort {
     this.#far = far;
     const port = this.machine.portOf(far);
     if (!port) throw new Error("An adapter that was just plugged in has a port.");
-    this.#port = port;
     return port;
   }
 

@@ -11,6 +11,13 @@ type Plugged = {
   granted: boolean;
   port: SimulatedSerialPort | null;
 };
+export type AttachHow = {
+  /** Whether the user has let the page use it already; true by default. */
+  readonly granted?: boolean;
+  /** Whether the page is told; false for what was there before the page. */
+  readonly announced?: boolean;
+};
+
 type RequestOptions = { readonly filters?: readonly SerialPortIdentity[] };
 
 /** What stands behind a simulated `serial`: the adapters, and the user. */
@@ -91,12 +98,12 @@ export class SimulatedMachine {
     this.serial = new SimulatedSerial({ list: () => this.#list(), request: (options) => this.#request(options) });
   }
 
-  /** Plugs an adapter in that the user has already let the page use. `connect` fires in a later task. */
-  attach(options: FarEndOptions = {}): SimulatedFarEnd {
+  /** Plugs an adapter in. `connect` fires in a later task, if the page may see it and it is news. */
+  attach(options: FarEndOptions = {}, how: AttachHow = {}): SimulatedFarEnd {
     const far = new SimulatedFarEnd(this.#clock, options);
-    const plugged: Plugged = { far, connected: options.connected ?? true, granted: true, port: null };
+    const plugged: Plugged = { far, connected: options.connected ?? true, granted: how.granted ?? true, port: null };
     this.#plugged.push(plugged);
-    if (plugged.connected) this.#task(() => this.#tell(plugged, true));
+    if (plugged.connected && (how.announced ?? true)) this.#task(() => this.#tell(plugged, true));
     return far;
   }
 

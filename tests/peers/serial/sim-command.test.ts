@@ -71,17 +71,18 @@ describe("npm run sim", () => {
     expect(parseAddress("::1:80")).toBeNull();
   });
 
-  test("has one host at a time, as a line has", async () => {
+  test("has one host at a time, as a line has: the last who connected", async () => {
     await withTcp("lanternfield-lf8", async (port) => {
       const first = await connectTcp("127.0.0.1", port);
+      const firstIsOver = new Promise<void>((resolve) => first.on("close", () => resolve()));
       const second = await connectTcp("127.0.0.1", port);
-      await new Promise<void>((resolve) => second.on("close", () => resolve()));
+      await firstIsOver;
       const answer = new Promise<string>((resolve) =>
-        first.on("data", (bytes) => resolve(new TextDecoder().decode(bytes))),
+        second.on("data", (bytes) => resolve(new TextDecoder().decode(bytes))),
       );
-      first.write(new TextEncoder().encode("*OPC?\n"), () => undefined);
+      second.write(new TextEncoder().encode("*OPC?\n"), () => undefined);
       expect(await answer).toContain("1");
-      first.destroy();
+      second.destroy();
     });
   });
 });
