@@ -95,7 +95,7 @@ export const cabinetProfiles: readonly DemoProfile[] = [
           screen: "cabinet-a",
           modes: [mode("a", "240p60")],
           slots: [
-            slot(1, { ...uprightSlot, placement: { widthPct: 100, heightPct: 110, offsetLines: -3 } }),
+            slot(1, { ...uprightSlot, placement: { widthPct: 100, heightPct: 110, offsetPx: 0, offsetLines: -3 } }),
             slot(4, {
               name: "Arcade night",
               input: "digital-1",
@@ -165,7 +165,7 @@ export const cabinetProfiles: readonly DemoProfile[] = [
         document: profile({
           title: "Short sync, an experiment",
           summary: "A line sync of 2.2 µs. Kept here to show what a check says of it.",
-          modes: [mode("a", shortSync, "240p60 short sync")],
+          modes: [mode("a", shortSync, "short sync 240p")],
           slots: [slot(1, { name: "Short sync", input: "digital-1", expects: hd, mode: "a", syncKind: "composite" })],
         }),
       },
@@ -184,6 +184,38 @@ export const cabinetProfiles: readonly DemoProfile[] = [
           summary: "A back porch of 2.6 µs: some sets take their black from it and go darker.",
           modes: [mode("a", thinBackPorch, "240p60 left")],
           slots: [slot(1, { name: "Far left", input: "digital-1", expects: hd, mode: "a", syncKind: "composite" })],
+        }),
+      },
+    ],
+  },
+  {
+    key: "straight-in",
+    owner: "tobin",
+    visibility: "shared",
+    revisions: [
+      {
+        at: "2026-06-27T15:35:00Z",
+        note: "Needs something that doubles the lines before the device.",
+        document: profile({
+          title: "Straight from a console",
+          summary: "240 lines into a digital input that does not lock to them, and 1080 interlaced lines by cable.",
+          modes: [mode("a", "240p60")],
+          slots: [
+            slot(1, {
+              name: "240 lines in",
+              input: "digital-1",
+              expects: { activePx: 720, activeLines: 240, interlaced: false, fieldRateHz: 60.05 },
+              mode: "a",
+              syncKind: "composite",
+            }),
+            slot(2, {
+              name: "1080 by cable",
+              input: "component-1",
+              expects: { activePx: 1920, activeLines: 1080, interlaced: true, fieldRateHz: 60 },
+              mode: "a",
+              syncKind: "composite",
+            }),
+          ],
         }),
       },
     ],

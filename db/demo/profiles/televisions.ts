@@ -101,7 +101,7 @@ export const televisionProfiles: readonly DemoProfile[] = [
               expects: fullHd50,
               mode: "p",
               syncKind: "composite",
-              placement: { offsetLines: -4 },
+              placement: { widthPct: 97.6, heightPct: 96, offsetPx: 14, offsetLines: -4 },
             }),
             slot(4, {
               name: "European tapes",
