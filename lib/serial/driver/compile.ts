@@ -1,4 +1,6 @@
 import { fail, ok, type PathMessage, type Result } from "@/lib/result";
+import { createModbusCodec } from "@/lib/serial/protocols/modbus/modbus-codec";
+import { createPacketCodec } from "@/lib/serial/protocols/packet/packet-codec";
 import { createTextCodec } from "@/lib/serial/protocols/text/text-codec";
 import type { NativeValue } from "@/lib/serial/native";
 import type { CompiledDriver, CompiledSetting, ProtocolCodec } from "./compiled";
@@ -83,8 +85,9 @@ function createCodec(definition: DriverDefinition, settings: readonly CompiledSe
     case "text":
       return createTextCodec(definition, settings);
     case "modbus-rtu":
+      return createModbusCodec(definition, settings);
     case "packet":
-      return fail([{ path: "protocol.kind", message: `${definition.protocol.kind} is not spoken yet` }]);
+      return createPacketCodec(definition, settings);
   }
 }
 

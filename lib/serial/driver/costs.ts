@@ -1,14 +1,9 @@
+import { characterMs } from "@/lib/serial/protocols/character-time";
 import type { NativeValues, NativeWrite } from "@/lib/serial/native";
 import type { CompiledDriver, WireRequest } from "./compiled";
-import type { DriverDefinition } from "./definition";
 
 /** What something costs on the line: characters both ways, and time. */
 export type WireCost = { readonly bytes: number; readonly seconds: number };
-
-/** Time of one character in ms: start bit, data bits, parity bit, stop bits. */
-export function characterMs({ baudRate, dataBits, parity, stopBits }: DriverDefinition["transport"]): number {
-  return ((1 + dataBits + (parity === "none" ? 0 : 1) + stopBits) / baudRate) * 1000;
-}
 
 /** Request, work and reply of one exchange in ms, without what runs beside them. */
 function parts(driver: CompiledDriver, request: WireRequest): { readonly out: number; readonly work: number; readonly back: number } {

@@ -34,6 +34,8 @@ export const modbusFieldSchema = z.strictObject({
   register: whole.min(0).max(65_535), stride: whole.min(0).max(4096).default(0),
   words: whole.min(1).max(16).default(1), signed: z.boolean().default(false), wordOrder: z.enum(["high-first", "low-first"]).default("high-first"),
   encoding: z.enum(["integer", "ascii"]).default("integer"),
+  /** Function 03 reads holding registers, 04 input registers; only holding ones are written. */
+  table: z.enum(["holding", "input"]).default("holding"),
 });
 /** Place of a field in a numbered block. */
 export const packetFieldSchema = z.strictObject({
@@ -174,6 +176,8 @@ export type DriverSetting = z.infer<typeof settingSchema>;
 export type SettingValue = z.infer<typeof settingValueSchema>;
 export type StatusName = z.infer<typeof statusNameSchema>;
 export type ActionName = z.infer<typeof actionNameSchema>;
+export type ModbusField = z.infer<typeof modbusFieldSchema>;
+export type PacketField = z.infer<typeof packetFieldSchema>;
 export type OperationWire = z.infer<typeof operationWireSchema>;
 export type CheckAlgorithm = z.infer<typeof checkAlgorithmSchema>;
 export type TextExchange = z.infer<typeof textExchangeSchema>;

@@ -1,4 +1,5 @@
 import { DRIVER_FORMAT, driverDefinitionSchema, type DriverDefinition } from "@/lib/serial/driver/definition";
+import { FACTORY_MODES, factoryModes, factorySlots, IDLE_480P60 } from "./factory-modes";
 
 /**
  * Lanternfield LF-8: an invented device. Lines of text with a CRC-16 check, replies that name the setting,
@@ -74,42 +75,10 @@ const RASTER_FIELDS =
 
 const query = (request: string, reply: string) => ({ kind: "text", request, reply });
 
-type Axis = readonly [active: number, frontPorch: number, sync: number, backPorch: number];
-
-/** One factory mode. Figures: CTA-861, the VIC stands beside each. */
-function factoryMode(number: number, label: string, clockKHz: number, scan: "P" | "I", across: Axis, down: Axis, pol: "NEG" | "POS" = "NEG") {
-  const at = `modes[${number}]`;
-  const axis = (path: string, figures: Axis) => ({
-    [`${at}.timing.${path}.active`]: figures[0], [`${at}.timing.${path}.frontPorch`]: figures[1],
-    [`${at}.timing.${path}.sync`]: figures[2], [`${at}.timing.${path}.backPorch`]: figures[3], [`${at}.timing.${path}.polarity`]: pol,
-  });
-  return { [`${at}.name`]: label, [`${at}.timing.pixelClockHz`]: clockKHz, [`${at}.timing.interlaced`]: scan, ...axis("horizontal", across), ...axis("vertical", down) };
-}
-
-const factorySlot = (number: number, label: string, modeNumber: number) => ({ [`slots[${number}].name`]: label, [`slots[${number}].mode`]: modeNumber });
-
 const factory = {
-  ...factoryMode(1, "240p60", 27_000, "P", [1440, 38, 124, 114], [240, 4, 3, 15]), // VIC 8, 262 lines
-  ...factoryMode(2, "480i60", 27_000, "I", [1440, 38, 124, 114], [240, 4, 3, 15]), // VIC 6
-  ...factoryMode(3, "288p50", 27_000, "P", [1440, 24, 126, 138], [288, 2, 3, 19]), // VIC 23, 312 lines
-  ...factoryMode(4, "576i50", 27_000, "I", [1440, 24, 126, 138], [288, 2, 3, 19]), // VIC 21
-  ...factoryMode(5, "480p60", 27_000, "P", [720, 16, 62, 60], [480, 9, 6, 30]), // VIC 2
-  ...factoryMode(6, "576p50", 27_000, "P", [720, 12, 64, 68], [576, 5, 5, 39]), // VIC 17
-  ...factoryMode(7, "480p60 640", 25_200, "P", [640, 16, 96, 48], [480, 10, 2, 33]), // VIC 1 at 60 Hz
-  ...factoryMode(8, "720p60", 74_250, "P", [1280, 110, 40, 220], [720, 5, 5, 20], "POS"), // VIC 4
-  ...factorySlot(1, "240 lines 60 Hz", 1),
-  ...factorySlot(2, "480 lines 60 Hz", 2),
-  ...factorySlot(3, "288 lines 50 Hz", 3),
-  ...factorySlot(4, "576 lines 50 Hz", 4),
-  ...factorySlot(5, "Monitor 480", 5),
+  ...factoryModes(FACTORY_MODES, { clock: (kHz) => kHz, scan: ["P", "I"], polarity: ["NEG", "POS"], named: true }),
+  ...factorySlots([["240 lines 60 Hz", 1], ["480 lines 60 Hz", 2], ["288 lines 50 Hz", 3], ["576 lines 50 Hz", 4], ["Monitor 480", 5]]),
 };
-
-/** CTA-861 VIC 2: what the device puts out while it has nothing else to show. */
-const IDLE_480P60 = {
-  pixelClockHz: 27_000_000, interlaced: false,
-  horizontal: { active: 720, frontPorch: 16, sync: 62, backPorch: 60, polarity: "negative" },
-  vertical: { active: 480, frontPorch: 9, sync: 6, backPorch: 30, polarity: "negative" },
-} as const;
 
 const digitalFormats = [
   { activeLines: [480, 1080], interlaced: false, fieldRateHz: [49, 61], locks: "locks" },

@@ -1,8 +1,8 @@
 import { fail, ok, type Result } from "@/lib/result";
 import type { Clock } from "@/lib/serial/clock";
-import { characterMs } from "@/lib/serial/driver/costs";
 import type { CompiledDriver, Fields, Frame, Match, WireRequest } from "@/lib/serial/driver/compiled";
 import type { NativeValues } from "@/lib/serial/native";
+import { characterMs } from "@/lib/serial/protocols/character-time";
 import type { WireLog } from "@/lib/serial/wire-log";
 import { createQuarantine } from "./quarantine";
 import type { RequestError } from "./types";

@@ -1,4 +1,5 @@
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
+import { fieldRateHz } from "@/lib/timing/rates";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
 import type { NativeKey, NativeValue, NativeValues, NativeWrite } from "@/lib/serial/native";
 import { rasterOfSlot } from "@/lib/serial/plan/output-raster";
@@ -43,7 +44,13 @@ export function rasterOutOf(driver: CompiledDriver, memory: DeviceMemory): Raste
   const known = (raster: RasterTiming | "unknown") => (raster === "unknown" ? null : raster);
   if (memory.muted) return null;
   if (memory.starting) return known(idle.switchOn);
-  return memory.source === null ? known(idle.withoutInput) : memory.latched;
+  if (memory.source === null) return known(idle.withoutInput);
+  return driver.definition.output.clock === "input" && memory.latched ? atFieldRate(memory.latched, memory.source.fieldRateHz) : memory.latched;
+}
+
+/** The same counts at another clock: an output that is locked to its input runs at the rate that arrives. */
+function atFieldRate(raster: RasterTiming, wantedHz: number): RasterTiming {
+  return { ...raster, pixelClockHz: Math.round((raster.pixelClockHz * wantedHz) / fieldRateHz(raster)) };
 }
 
 /** Slots whose picture one of these writes can push out of its raster. */

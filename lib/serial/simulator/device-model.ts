@@ -9,6 +9,8 @@ import { createMemory, isCommitted, rasterOutOf } from "./device-memory";
 import type { DeviceModel } from "./device-model-interface";
 import type { DeviceAnswer, DeviceCounts, DeviceOperation, OperationFault } from "./device-operations";
 import { inputLocks } from "./device-status";
+import { createModbusFace } from "./modbus-face";
+import { createPacketFace } from "./packet-face";
 import { createTextFace } from "./text-face";
 
 export type DeviceModelOptions = {
@@ -55,9 +57,9 @@ export interface SimulatedDevice extends DeviceModel {
 
 const DEFAULT_SOURCE: SourceFormat = { activePx: 1280, activeLines: 720, interlaced: false, fieldRateHz: 60 };
 
-const FACES: Readonly<Partial<Record<CompiledDriver["codec"]["kind"], FaceMaker>>> = { text: createTextFace };
+const FACES: Readonly<Record<CompiledDriver["codec"]["kind"], FaceMaker>> = { text: createTextFace, "modbus-rtu": createModbusFace, packet: createPacketFace };
 
-/** Makes a device from a driver, as new or with given values. Throws where no face speaks the driver's protocol. */
+/** Makes a device from a driver, as new or with given values. */
 export function createDeviceModel(driver: CompiledDriver, options: DeviceModelOptions): SimulatedDevice {
   const { definition } = driver;
   const { clock } = options;
@@ -80,9 +82,7 @@ export function createDeviceModel(driver: CompiledDriver, options: DeviceModelOp
     if (operation.kind === "write" || operation.kind === "action") tell();
     return answer;
   };
-  const makeFace = FACES[driver.codec.kind];
-  if (!makeFace) throw new Error(`No simulated device speaks ${driver.codec.kind}`);
-  const face = makeFace({ driver, clock, perform, send: (bytes) => send(bytes) });
+  const face = FACES[driver.codec.kind]({ driver, clock, perform, send: (bytes) => send(bytes) });
 
   function restart(): void {
     endStart();
