@@ -2,7 +2,6 @@
 const denied = [
   "accelerometer",
   "autoplay",
-  "bluetooth",
   "camera",
   "display-capture",
   "encrypted-media",

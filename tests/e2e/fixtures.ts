@@ -32,7 +32,7 @@ export const test = base.extend<Fixtures>({
     async ({ context }, provide) => {
       const faults: PageFaults = { policy: [], errors: [] };
       context.on("console", (message) => {
-        if (/content security policy|permissions policy/i.test(message.text())) faults.policy.push(message.text());
+        if (/content security policy|permissions[- ]policy/i.test(message.text())) faults.policy.push(message.text());
       });
       context.on("weberror", (error) => faults.errors.push(String(error.error().stack ?? error.error())));
       await provide(faults);

@@ -1,0 +1,59 @@
+import { expect, test } from "@/tests/e2e/fixtures";
+import { chooseScreen, connect, moveBy, readCautions, READ_MS, register, trial } from "@/tests/e2e/bench-steps";
+import { demoAccount } from "@/db/demo/accounts";
+import type { Page } from "@playwright/test";
+
+/**
+ * The README's tour, walked as its captions say. With TOUR=1 each stop is kept as a picture in `docs/tour/`;
+ * otherwise the walk alone is the test, so that a caption which is no longer true fails.
+ */
+async function stop(page: Page, name: string): Promise<void> {
+  const path = process.env.TOUR === "1" ? `docs/tour/${name}.png` : undefined;
+  await page.screenshot({ animations: "disabled", ...(path === undefined ? {} : { path }) });
+}
+
+async function signIn(page: Page, returnPath: string): Promise<void> {
+  const { email, password } = demoAccount("imke");
+  await page.goto(`/sign-in?from=${encodeURIComponent(returnPath)}`);
+  await page.getByLabel("E-mail address").fill(email);
+  await page.getByLabel("Password").fill(password);
+  await page.getByRole("button", { name: "Sign in" }).click();
+  await page.waitForURL(`**${returnPath}`);
+}
+
+test("the front page has a simulated device: slots, raster, picture", async ({ page }) => {
+  await page.goto("/");
+  await expect(page.getByRole("link", { name: "Try a simulated device" })).toBeVisible();
+  await expect(page.getByText(/^Simulated: slot 1/u)).toBeVisible();
+  await stop(page, "front");
+});
+
+test("the bench: settings on rulers, a plan under review, a trial", async ({ page }) => {
+  test.setTimeout(150_000);
+  await register(page);
+  await connect(page, "simulated");
+  await chooseScreen(page, "Any 525-line television");
+  await expect(page.getByRole("slider", { name: /Horizontal position/u })).toBeVisible();
+  await stop(page, "bench");
+  await moveBy(page, "Horizontal position", 4);
+  await page.getByRole("button", { name: "Review the plan" }).click();
+  await expect(page.getByRole("button", { name: "Back up and try" })).toBeVisible();
+  await stop(page, "plan");
+  await readCautions(page);
+  await page.getByRole("button", { name: "Back up and try" }).click();
+  await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
+  await stop(page, "trial");
+});
+
+test("the demo's backups, library and screens have something to show", async ({ page }) => {
+  await signIn(page, "/backups");
+  await expect(page.getByRole("table").first()).toBeVisible();
+  await expect(page.getByText("known good").first()).toBeVisible();
+  await stop(page, "backups");
+  await page.goto("/library");
+  await expect(page.getByRole("table").getByRole("link").nth(7), "a dozen profiles").toBeVisible();
+  await stop(page, "library");
+  await page.goto("/screens");
+  await expect(page.getByRole("main").getByRole("link").first()).toBeVisible();
+  await stop(page, "screens");
+});
