@@ -10,7 +10,9 @@ describe("the description of the API", () => {
   it("names every route file but its own, each with an answer", async () => {
     const answer = await call(GET);
     expect(answer.status).toBe(200);
-    const described = await bodyOf<{ openapi: string; paths: Record<string, Record<string, { responses: object }>> }>(answer);
+    const described = await bodyOf<{ openapi: string; paths: Record<string, Record<string, { responses: object }>> }>(
+      answer,
+    );
     // OpenAPI 3.1.1, section 4.8.1: the version string of the document.
     expect(described.openapi).toBe("3.1.1");
     const files = readdirSync(folder, { recursive: true, encoding: "utf8" })
