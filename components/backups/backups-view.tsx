@@ -5,6 +5,8 @@ import { BackupList } from "@/components/backups/backup-list";
 import { rasterWords, standingOf } from "@/components/backups/backup-words";
 import { DeviceHead } from "@/components/backups/device-head";
 import { useDevices } from "@/components/backups/use-backups";
+import { DemoNoteFor } from "@/components/shell/demo-people";
+import { useSignedIn } from "@/components/shell/signed-in";
 import { Button, ButtonLink } from "@/components/ui/button";
 import { classNames } from "@/components/ui/class-names";
 import { EmptyState } from "@/components/ui/empty-state";
@@ -17,6 +19,7 @@ import type { DeviceView } from "@/lib/contracts/device";
 
 /** Devices at a glance; the backups of the chosen one beside them. */
 export function BackupsView({ shown, now }: { readonly shown: string | null; readonly now: string }) {
+  const user = useSignedIn();
   const devices = useDevices();
   const rows = devices.data ?? [];
   const chosen = rows.find((device) => device.id === shown) ?? rows[0];
@@ -42,6 +45,7 @@ export function BackupsView({ shown, now }: { readonly shown: string | null; rea
                 <DeviceLink key={device.id} device={device} isCurrent={device.id === chosen.id} now={new Date(now)} />
               ))}
             </ul>
+            <DemoNoteFor ownerIds={[user?.id]} className="mt-5" />
           </nav>
           <div className="min-w-0 px-4 pt-5 pb-10 md:px-7">
             <DeviceHead key={chosen.id} device={chosen} />

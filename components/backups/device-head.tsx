@@ -20,7 +20,7 @@ export function DeviceHead({ device }: { readonly device: DeviceView }) {
   const [editing, setEditing] = useState(false);
   return (
     <div className="mb-4 flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
-      <div className="min-w-0">
+      <div className="min-w-0 flex-1">
         <h2 className="text-2xl break-words">{device.name}</h2>
         <p className="text-muted">
           {deviceWords(device)}
@@ -44,7 +44,7 @@ function LastRaster({ device }: { readonly device: DeviceView }) {
     <p className="mt-1">
       Last seen: <span className="figure">{modeName(raster)}, {rasterWords(raster)}</span>
       {device.screen === null ? <span className="text-muted">, no screen is set</span> : <> on {device.screen.name} </>}
-      {fit === null ? null : <FindingWord severity={fit.fits ? "fits" : "stop"}>{fit.fits ? "in range" : fit.words}</FindingWord>}
+      {fit === null ? null : <FindingWord severity={fit.fits ? "fits" : "stop"}>{fit.fits ? "in range" : `out of range: ${fit.words.split("; ")[0]}`}</FindingWord>}
     </p>
   );
 }

@@ -10,7 +10,7 @@ export function fitSummary(outline: ProfileOutline, envelope: ScreenEnvelope): F
   const timings = outline.modes.map((mode) => drawable(mode.timing)).filter((timing) => timing !== undefined);
   if (timings.length === 0) return { severity: "note", words: "names no modes" };
   const fitting = timings.filter((timing) => fitOf(timing, envelope).fits).length;
-  if (fitting === timings.length) return { severity: "fits", words: "fits your screen" };
+  if (fitting === timings.length) return { severity: "fits", words: "fits this screen" };
   if (timings.length === 1) return { severity: "stop", words: "its mode doesn’t fit" };
   return { severity: "stop", words: fitting === 0 ? "no mode fits" : `${timings.length - fitting} of ${timings.length} modes don’t fit` };
 }

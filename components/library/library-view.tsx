@@ -9,6 +9,7 @@ import { drawable } from "@/components/library/document-view";
 import { chosenScreen, useScreenOptions } from "@/components/library/use-my-screen";
 import type { ScreenOption } from "@/components/library/use-my-screen";
 import { useProfiles } from "@/components/library/use-profiles";
+import { DemoNoteFor } from "@/components/shell/demo-people";
 import { signInPath } from "@/components/shell/navigation";
 import { useSignedIn } from "@/components/shell/signed-in";
 import { Button, ButtonLink } from "@/components/ui/button";
@@ -77,6 +78,7 @@ export function LibraryView({ wish }: { readonly wish: LibraryWish }) {
       {profiles.error === null ? null : <ProblemMessage error={profiles.error} act={<Button onClick={() => void profiles.refetch()}>Try again</Button>} />}
       {rows.length > 0 ? <ProfileTable rows={rows} screen={screen} /> : null}
       {profiles.isSuccess && rows.length === 0 ? <NothingFound wish={wish} onClear={() => go({ q: "", mine: false, fitting: false })} /> : null}
+      <DemoNoteFor ownerIds={rows.map((row) => row.owner.id)} className="mt-6" />
       {profiles.hasNextPage ? (
         <Button className="mt-4 self-start" disabled={profiles.isFetchingNextPage} onClick={() => void profiles.fetchNextPage()}>
           Show more

@@ -12,6 +12,7 @@ import { bandsInShort } from "@/components/screens/limit-words";
 import { ButtonLink } from "@/components/ui/button";
 import { FootBar } from "@/components/ui/foot-bar";
 import { formatDate } from "@/components/ui/moments";
+import { DemoNoteFor } from "@/components/shell/demo-people";
 import { PageHead, PartHead } from "@/components/ui/page-head";
 import { ProblemMessage } from "@/components/ui/problem-message";
 import type { ProfileDetail } from "@/lib/contracts/profile";
@@ -64,6 +65,7 @@ export function ProfileView({ id, revision, screen }: ProfileViewProps) {
               <p className="max-w-[70ch] whitespace-pre-wrap">{document.notes}</p>
             </section>
           )}
+          <DemoNoteFor ownerIds={[profile.data.owner.id]} />
           <RevisionPart profileId={id} current={profile.data.currentRevision} shown={number} />
         </div>
         <aside aria-label="On a screen" className="min-w-0 border-line py-5 max-lg:border-t lg:border-l lg:pl-7">

@@ -6,6 +6,7 @@ import { useState } from "react";
 import { ScreenDetail } from "@/components/screens/screen-detail";
 import { bandsInShort } from "@/components/screens/limit-words";
 import { useDeleteScreen, useScreens } from "@/components/screens/use-screens";
+import { DemoNoteFor } from "@/components/shell/demo-people";
 import { signInPath } from "@/components/shell/navigation";
 import { useSignedIn } from "@/components/shell/signed-in";
 import { Button, ButtonLink } from "@/components/ui/button";
@@ -50,6 +51,7 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
               <ScreenLink key={each.id} id={each.id} envelope={each.envelope} current={preset?.id === each.id} />
             ))}
           </ul>
+          <DemoNoteFor ownerIds={[user?.id]} className="mt-6" />
           <p className="mt-6 border-l-3 border-edge pl-3 text-sm text-muted">
             Inside a CRT cabinet voltages stay lethal after switch-off. Service work belongs to a licensed technician; local codes come first.
           </p>

@@ -88,7 +88,7 @@ export function DataTable<Row extends object>({ caption, columns, rows, rowKey, 
                     key={header.id}
                     aria-sort={sorted === false ? undefined : sorted === "asc" ? "ascending" : "descending"}
                     className={classNames(
-                      "sticky top-0 z-10 border-b border-line bg-bg py-2 pr-4 text-sm font-[500] whitespace-nowrap text-muted last:pr-0",
+                      "sticky top-0 z-10 border-b border-line bg-bg py-2 pr-4 text-sm font-[500] whitespace-nowrap text-muted first:pl-2 last:pr-0",
                       column?.align === "end" ? "text-right" : "text-left",
                     )}
                   >
