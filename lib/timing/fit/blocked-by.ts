@@ -1,3 +1,4 @@
+import { REASON_TRIES, type Budget } from "@/lib/timing/fit/budget";
 import { describeBlock } from "@/lib/timing/fit/describe-block";
 import type { FitBlock, FitConstraint, FitRequest } from "@/lib/timing/fit/fit-types";
 import { holdsRaster, search } from "@/lib/timing/fit/search";
@@ -31,23 +32,23 @@ const constraints: readonly FitConstraint[] = [
   "screen-interlace",
 ];
 
-const fitsWithout = (request: FitRequest, without: readonly FitConstraint[]) =>
-  holdsRaster(searchSpace(request, new Set(without)));
+const fitsWithout = (request: FitRequest, without: readonly FitConstraint[], budget: Budget) =>
+  holdsRaster(searchSpace(request, new Set(without)), budget);
 
 /** The constraints without which a raster fits, each alone; the wished field rate only where it is the only one. */
-function singles(request: FitRequest): FitConstraint[] {
-  const alone = constraints.filter((constraint) => fitsWithout(request, [constraint]));
+function singles(request: FitRequest, budget: Budget): FitConstraint[] {
+  const alone = constraints.filter((constraint) => fitsWithout(request, [constraint], budget));
   const others = alone.filter((constraint) => constraint !== "wish-field-rate");
   return others.length > 0 ? others : alone;
 }
 
 /** A set of constraints that have to go together: leave one of them in place and nothing fits. */
-function together(request: FitRequest): FitConstraint[] {
+function together(request: FitRequest, budget: Budget): FitConstraint[] {
   let gone = [...constraints];
-  if (!fitsWithout(request, gone)) return [];
+  if (!fitsWithout(request, gone, budget)) return [];
   for (const constraint of constraints) {
     const fewer = gone.filter((one) => one !== constraint);
-    if (fitsWithout(request, fewer)) gone = fewer;
+    if (fitsWithout(request, fewer, budget)) gone = fewer;
   }
   return gone;
 }
@@ -56,15 +57,16 @@ function together(request: FitRequest): FitConstraint[] {
  * What keeps everything from fitting, with the figures of the best raster that would fit without it.
  *
  * Each of the list alone is enough to take away (`alone`), or all of them together are. Empty only where no raster
- * could meet the wish with nothing in the way.
+ * could meet the wish with nothing in the way, or where it takes more tries than there are.
  * @param request a request for which `search` found nothing
  */
 export function blockedBy(request: FitRequest): FitBlock[] {
-  const alone = singles(request);
-  const names = alone.length > 0 ? alone : together(request);
+  const budget = { left: REASON_TRIES };
+  const alone = singles(request, budget);
+  const names = alone.length > 0 ? alone : together(request, budget);
   return names.flatMap((constraint) => {
     const without = new Set(alone.length > 0 ? [constraint] : names);
-    const [best] = search(searchSpace(request, without));
+    const [best] = search(searchSpace(request, without), budget);
     return best === undefined ? [] : [{ ...describeBlock(request, constraint, best.timing), alone: alone.length > 0 }];
   });
 }

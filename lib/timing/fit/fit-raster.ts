@@ -1,5 +1,6 @@
 import { fail, ok, type PathMessage, type Result } from "@/lib/result";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
+import { SEARCH_TRIES } from "@/lib/timing/fit/budget";
 import { blockedBy } from "@/lib/timing/fit/blocked-by";
 import type { FitOutcome, FitRequest, FittedRaster } from "@/lib/timing/fit/fit-types";
 import { fittedRaster } from "@/lib/timing/fit/fitted-raster";
@@ -37,17 +38,21 @@ function publishedFits({ wish, screen, device = {} }: FitRequest): Found[] {
  *
  * Ranked by rate error in steps of 0.001 Hz, then by porches nearest the standard's: for each count of field lines the
  * best raster, and the published ones as they are.
- * Errors: what is wrong with the request, by path.
+ * Errors: what is wrong with the request, by path; or that it takes more tries than there are (no path).
  */
 export function fitRaster(request: FitRequest): Result<FitOutcome, PathMessage[]> {
   const problems = requestProblems(request);
   if (problems.length > 0) return fail(problems);
   const limit = request.limit ?? DEFAULT_LIMIT;
-  const searched = search(searchSpace(request));
+  const budget = { left: SEARCH_TRIES };
+  const searched = search(searchSpace(request), budget);
   const published = publishedFits(request).filter(
     ({ timing }) => !searched.some((found) => sameRaster(found.timing, timing)),
   );
   const found = [...searched, ...published].sort(compareFound).slice(0, limit);
+  if (found.length === 0 && budget.left < 0) {
+    return fail([{ path: "", message: "There is too much to try: state fewer bands, or a line total or clock." }]);
+  }
   if (found.length === 0) {
     return ok({ fits: [], blockedBy: blockedBy(request), nearest: nearestRasters(request, limit) });
   }

@@ -1,3 +1,4 @@
+import { NEAREST_TRIES, type Budget } from "@/lib/timing/fit/budget";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
 import { fittedRaster } from "@/lib/timing/fit/fitted-raster";
 import type {
@@ -72,13 +73,16 @@ function distance(changes: readonly FigureChange[]): number {
   }, 0);
 }
 
-function firstOf(request: FitRequest, wish: FitWish, without: readonly FitConstraint[] = []): Found[] {
-  const [best] = search(searchSpace({ ...request, wish }, new Set(without)));
+/** A request with the tries that its answer may still take. */
+type Search = FitRequest & { readonly budget: Budget };
+
+function firstOf(request: Search, wish: FitWish, without: readonly FitConstraint[] = []): Found[] {
+  const [best] = search(searchSpace({ ...request, wish }, new Set(without)), request.budget);
   return best === undefined ? [] : [best];
 }
 
 /** The nearest wish of a list that fits. */
-function firstThatFits(request: FitRequest, wishes: readonly FitWish[]): Found[] {
+function firstThatFits(request: Search, wishes: readonly FitWish[]): Found[] {
   for (const wish of wishes) {
     const found = firstOf(request, wish);
     if (found.length > 0) return found;
@@ -87,24 +91,24 @@ function firstThatFits(request: FitRequest, wishes: readonly FitWish[]): Found[]
 }
 
 /** The lines wished for, as fast as a standard's line rate makes them. */
-function atStandardLineRates(request: FitRequest): Found[] {
+function atStandardLineRates(request: Search): Found[] {
   const { wish } = request;
   if (wish.lineRateHz !== undefined) return [];
   const rates = new Set(standardNames.map((name) => lineRateHz(standardRaster(name).timing)));
   return [...rates].flatMap((rate) => {
     const space = searchSpace({ ...request, wish: { ...wish, lineRateHz: rate } }, new Set(["wish-field-rate"]), false);
-    return search(space).slice(0, 1);
+    return search(space, request.budget).slice(0, 1);
   });
 }
 
-function otherScan(request: FitRequest): Found[] {
+function otherScan(request: Search): Found[] {
   const { wish } = request;
   if (!wish.interlaced && wish.activeLines % 2 !== 0) return [];
   return firstOf(request, { ...wish, interlaced: !wish.interlaced });
 }
 
 /** The wish without one of the figures that it need not state. */
-function withoutOne(request: FitRequest): Found[] {
+function withoutOne(request: Search): Found[] {
   const optional = ["lineRateHz", "pixelClockHz", "lineTotal", "fieldLines"] as const;
   const stated = optional.filter((figure) => request.wish[figure] !== undefined);
   return stated.flatMap((figure) => firstOf(request, { ...request.wish, [figure]: undefined }));
@@ -133,7 +137,8 @@ function distinct(timings: readonly RasterTiming[]): RasterTiming[] {
  * Tried are more or fewer lines, another field rate (the nearest, and those of the standards' line rates), the other
  * scan, another width, the wish without a figure that it need not state, and the standards themselves.
  */
-export function nearestRasters(request: FitRequest, limit: number): NearestRaster[] {
+export function nearestRasters(wished: FitRequest, limit: number): NearestRaster[] {
+  const request: Search = { ...wished, budget: { left: NEAREST_TRIES } };
   const { wish, keep = [], screen } = request;
   const found = [
     ...firstThatFits(request, nearbyLines(request, "fewer")),

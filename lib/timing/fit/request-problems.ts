@@ -7,6 +7,9 @@ import type { DeviceTimingLimits } from "@/lib/timing/raster";
 /** At most so many rasters a list. */
 export const MAX_FITS = 64;
 
+/** Fewer lines or px are no picture, and make a search that has no end. */
+const MIN_PICTURE = 16;
+
 type Range = readonly [min: number, max: number];
 
 function numberProblem(path: string, value: number | undefined, [min, max]: Range, whole: boolean): PathMessage[] {
@@ -18,9 +21,9 @@ function numberProblem(path: string, value: number | undefined, [min, max]: Rang
 function wishProblems(wish: FitWish): PathMessage[] {
   const odd = wish.interlaced && wish.activeLines % 2 !== 0;
   return [
-    ...numberProblem("activeLines", wish.activeLines, [1, MAX_FIELD_LINES], true),
+    ...numberProblem("activeLines", wish.activeLines, [MIN_PICTURE, MAX_FIELD_LINES], true),
     ...(odd ? [{ path: "activeLines", message: "An interlaced frame has an even number of picture lines." }] : []),
-    ...numberProblem("activePx", wish.activePx, [1, MAX_LINE_TOTAL], true),
+    ...numberProblem("activePx", wish.activePx, [MIN_PICTURE, MAX_LINE_TOTAL], true),
     ...numberProblem("fieldRateHz", wish.fieldRateHz, [1, 1000], false),
     ...numberProblem("lineRateHz", wish.lineRateHz, [100, 1e7], false),
     ...numberProblem("pixelClockHz", wish.pixelClockHz, [1e4, 2e10], false),

@@ -1,4 +1,5 @@
 import type { EnvelopeBand, Span } from "@/lib/timing/envelope";
+import { spend, type Budget } from "@/lib/timing/fit/budget";
 import type { Share } from "@/lib/timing/fit/allocate";
 import { blankingGuide, type BlankingGuide } from "@/lib/timing/fit/reference";
 import type { SearchSpace } from "@/lib/timing/fit/search-space";
@@ -71,16 +72,25 @@ function fieldChoice(space: SearchSpace, band: EnvelopeBand, fieldLines: number)
   return down === undefined ? undefined : { fieldLines, linesPerField, lineRate, aimRateHz, guide, down };
 }
 
-/** Every count of field lines that some band allows, shortest field first; at most 8 192 counts in 16 bands. */
-export function* fieldChoices(space: SearchSpace): Generator<FieldChoice> {
+/** No longer field has the slowest rate that is looked for at the fastest line rate of a band. */
+function longestField({ bands, fieldRateHz, fieldRateTolerance }: SearchSpace): number {
+  const slowest = Number.isFinite(fieldRateTolerance) ? fieldRateHz * (1 - fieldRateTolerance) : 0;
+  return (
+    Math.max(...bands.map((band) => band.lineRateHz[1] / Math.max(slowest, band.fieldRateHz[0]))) * (1 + 4 * SLACK)
+  );
+}
+
+/** Every count of field lines that some band allows, shortest field first; ends where the budget does. */
+export function* fieldChoices(space: SearchSpace, budget: Budget): Generator<FieldChoice> {
   const active = space.activeFieldLines;
   const [least, most] = space.verticalParts.active ?? anything;
   if (active < least || active > most) return;
   const longest = space.standardDown === "all" ? active + LONGEST_STANDARD_BLANK_LINES : Infinity;
   const first = Math.max(space.fieldLines ?? 0, active + 1);
-  const last = Math.min(space.fieldLines ?? Infinity, space.maxFieldLines, longest);
+  const last = Math.min(space.fieldLines ?? Infinity, space.maxFieldLines, longest, longestField(space));
   for (let fieldLines = first; fieldLines <= last; fieldLines += 1) {
     for (const band of space.bands) {
+      if (!spend(budget)) return;
       const choice = fieldChoice(space, band, fieldLines);
       if (choice !== undefined) yield choice;
     }

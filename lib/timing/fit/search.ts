@@ -1,3 +1,4 @@
+import { SEARCH_TRIES, spend, type Budget } from "@/lib/timing/fit/budget";
 import { fieldChoices, type FieldChoice } from "@/lib/timing/fit/search-fields";
 import { clocksFor, leastAcrossCost, lineTotals, splitAcross } from "@/lib/timing/fit/search-lines";
 import type { SearchSpace } from "@/lib/timing/fit/search-space";
@@ -51,7 +52,7 @@ function bestOfLine(
   space: SearchSpace,
   field: FieldChoice,
   lineTotal: number,
-  toBeat: Found | undefined,
+  { toBeat, budget }: { toBeat: Found | undefined; budget: Budget },
 ): Found | undefined {
   const leastCost = field.down.cost + leastAcrossCost(space, field, lineTotal);
   const rankToBeat = toBeat === undefined ? Infinity : rateRank(toBeat.rateErrorHz);
@@ -63,6 +64,7 @@ function bestOfLine(
     const rateErrorHz = fieldRateHz - space.fieldRateHz;
     const rank = rateRank(rateErrorHz);
     if (rank > rankFound || rank > rankToBeat || (rank === rankToBeat && leastCost > costToBeat)) break;
+    if (!spend(budget)) break;
     const across = splitAcross(space, field, lineTotal, pixelClockHz);
     if (across === undefined) continue;
     rankFound = rank;
@@ -95,16 +97,16 @@ function settled(space: SearchSpace, field: FieldChoice, lineTotal: number, best
  * The best raster for each count of field lines, best first.
  *
  * Exact within the space: no other raster of the same field lines comes before it in `compareFound`, as long as the
- * first 64 clocks of the device's grid about the wished rate hold one that fits, if any does.
+ * first 64 clocks of the device's grid about the wished rate hold one that fits, if any does, and the budget lasts.
  */
-export function search(space: SearchSpace): Found[] {
+export function search(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES }): Found[] {
   if (!usable(space)) return [];
   const byFieldLines = new Map<number, Found>();
-  for (const field of fieldChoices(space)) {
+  for (const field of fieldChoices(space, budget)) {
     let best = byFieldLines.get(field.fieldLines);
     for (const lineTotal of lineTotals(space, field)) {
-      if (best !== undefined && settled(space, field, lineTotal, best)) break;
-      best = bestOfLine(space, field, lineTotal, best);
+      if (!spend(budget) || (best !== undefined && settled(space, field, lineTotal, best))) break;
+      best = bestOfLine(space, field, lineTotal, { toBeat: best, budget });
     }
     if (best !== undefined) byFieldLines.set(field.fieldLines, best);
   }
@@ -112,11 +114,12 @@ export function search(space: SearchSpace): Found[] {
 }
 
 /** Whether a space holds any raster: ends at the first. */
-export function holdsRaster(space: SearchSpace): boolean {
+export function holdsRaster(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES }): boolean {
   if (!usable(space)) return false;
-  for (const field of fieldChoices(space)) {
+  for (const field of fieldChoices(space, budget)) {
     for (const lineTotal of lineTotals(space, field)) {
-      if (bestOfLine(space, field, lineTotal, undefined) !== undefined) return true;
+      if (!spend(budget)) return false;
+      if (bestOfLine(space, field, lineTotal, { toBeat: undefined, budget }) !== undefined) return true;
     }
   }
   return false;
