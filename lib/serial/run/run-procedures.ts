@@ -151,6 +151,7 @@ async function arriveOld(core: RunCore): Promise<Turn> {
 export async function arrive(core: RunCore): Promise<Turn> {
   const judged = await readAndJudge(core);
   if (judged === null) return "rest";
+  if (core.wantsBack) return "put-back";
   const { allNew, allOld, home, proved } = judged;
   const { commitSent, word } = core.facts;
   if (allOld && home && proved) return arriveOld(core);
