@@ -37,7 +37,7 @@ export function SessionTable({ headId }: { readonly headId: string }) {
     { id: "seen", header: "Last seen", sortBy: (row) => row.lastSeenAt, cell: (row) => <span className="figure">{formatMoment(new Date(row.lastSeenAt))}</span> },
     {
       id: "act",
-      header: "",
+      header: "Acts",
       align: "end",
       cell: (row) =>
         row.current ? null : (

@@ -34,7 +34,7 @@ export function BackupList({ device }: { readonly device: DeviceView }) {
     { id: "out", header: "Put out", cell: (row) => (row.rasterOut === null ? <span className="text-muted">nothing</span> : <ModeMark timing={row.rasterOut} />) },
     { id: "slot", header: "Slot", align: "end", sortBy: (row) => row.activeSlot, cell: (row) => <span className="figure">{row.activeSlot}</span> },
     { id: "changed", header: "Since the one before", sortBy: (row) => row.changedValues ?? -1, cell: (row) => <Changed row={row} /> },
-    { id: "acts", header: "", align: "end", cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} /> },
+    { id: "acts", header: "Acts", align: "end", cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} /> },
   ];
   if (backups.error !== null) return <ProblemMessage error={backups.error} act={<Button onClick={() => void backups.refetch()}>Try again</Button>} />;
   if (backups.isPending) return <p className="text-muted">Loading</p>;

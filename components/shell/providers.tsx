@@ -26,8 +26,10 @@ function makeClient(): QueryClient {
 
 /** What every page stands in: the cache of server data, notices, tooltips, the state of the link. */
 export function Providers({ nonce, children }: { readonly nonce: string | undefined; readonly children: ReactNode }) {
-  // The dialogs' scroll lock makes a style element of its own, and the policy wants its nonce.
-  if (nonce !== undefined) setNonce(nonce);
+  // The dialogs' scroll lock makes a style element of its own, and the policy wants its nonce: that of the document,
+  // not of a later answer that only renders a part of it anew.
+  const [documentNonce] = useState(nonce);
+  if (documentNonce !== undefined) setNonce(documentNonce);
   const [client] = useState(makeClient);
   return (
     <QueryClientProvider client={client}>

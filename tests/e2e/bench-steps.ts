@@ -1,11 +1,35 @@
 import type { Page } from "@playwright/test";
-import { expect } from "@/tests/e2e/fixtures";
+import { expect, test as base } from "@/tests/e2e/fixtures";
+import { bridgeSerial, type SerialBridge } from "@/tests/e2e/serial-bridge";
+import { startSim, type SimProcess } from "@/tests/peers/serial/sim-process";
 
 /** How the page reaches its device: the simulated one inside it, or `npm run sim` over TCP. */
 export type Wire = "simulated" | "sim over TCP";
 
 /** Longer than any whole read at the wire's own pace, on a busy machine. */
 export const READ_MS = 30_000;
+
+/** Every way that a page can reach a device in these tests. */
+export const WIRES: readonly Wire[] = ["simulated", "sim over TCP"];
+
+type Fixtures = {
+  /** Makes the page ready for a wire, before it is opened. The device outside ends with the test. */
+  readonly prepareWire: (page: Page, wire: Wire) => Promise<SerialBridge | null>;
+};
+
+export const test = base.extend<Fixtures>({
+  prepareWire: async ({}, provide) => {
+    const started: SimProcess[] = [];
+    await provide(async (page, wire) => {
+      if (wire === "simulated") return null;
+      const sim = await startSim(["--driver", "lanternfield-lf8", "--tcp", "127.0.0.1:0"]);
+      started.push(sim);
+      const port = Number(sim.line.split(":").at(-1));
+      return bridgeSerial(page, { host: "127.0.0.1", port });
+    });
+    await Promise.all(started.map((sim) => sim.stop()));
+  },
+});
 
 let people = 0;
 
@@ -70,12 +94,4 @@ export async function wireText(page: Page, filter: string): Promise<string[]> {
   await log.getByLabel("Filter").fill(filter);
   await expect(log.getByRole("region", { name: "Exchanges" })).toBeVisible();
   return log.locator("tbody tr td:nth-child(3)").allInnerTexts();
-}
-
-/** Every way that a page can reach a device in these tests. */
-export const WIRES: readonly Wire[] = ["simulated"];
-
-/** Makes the page ready for a wire, before it is opened. @returns what ends it */
-export async function prepareWire(_page: Page, _wire: Wire): Promise<() => Promise<void>> {
-  return () => Promise.resolve();
 }

@@ -23,7 +23,7 @@ test("without an account a backup and a trial stay in the page, and doing nothin
   await page.getByLabel("Screen", { exact: true }).selectOption({ label: "Any 525-line television" });
   await page.getByRole("slider", { name: /Horizontal position/u }).press("ArrowRight");
   await page.getByRole("button", { name: "Review the plan" }).click();
-  await page.getByLabel("Trial", { exact: true }).selectOption("10");
+  await page.getByLabel("Length of the trial").selectOption("10");
   for (const box of await page.getByRole("checkbox", { name: "I have read this" }).all()) await box.click();
   await page.getByRole("button", { name: "Back up and try" }).click();
   await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });

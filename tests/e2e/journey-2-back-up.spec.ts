@@ -1,10 +1,10 @@
-import { expect, test } from "@/tests/e2e/fixtures";
-import { connect, moveBy, prepareWire, READ_MS, register, settled, tryIt, trial, WIRES, chooseScreen } from "@/tests/e2e/bench-steps";
+import { expect } from "@/tests/e2e/fixtures";
+import { connect, moveBy, READ_MS, register, settled, test, tryIt, trial, WIRES, chooseScreen } from "@/tests/e2e/bench-steps";
 
 for (const wire of WIRES) {
-  test(`back up over ${wire}: everything is read with progress, dated, named; the second backup says what changed`, async ({ page, expectAccessible }) => {
+  test(`back up over ${wire}: everything is read with progress, dated, named; the second backup says what changed`, async ({ page, expectAccessible, prepareWire }) => {
     test.setTimeout(120_000);
-    const end = await prepareWire(page, wire);
+    await prepareWire(page, wire);
     await register(page);
     await connect(page, wire);
     await page.getByRole("button", { name: "Back up", exact: true }).click();
@@ -28,6 +28,5 @@ for (const wire of WIRES) {
     await page.getByRole("link", { name: "See the backups" }).click();
     await expect(page.getByText("Workshop rack").first()).toBeVisible();
     await expectAccessible(page);
-    await end();
   });
 }
