@@ -101,9 +101,7 @@ export class StreamSink implements UnderlyingSink<Uint8Array> {
 
   /** Closes the open operation when the system has done its part, unless a fault or an abort was first. */
   #follow(work: Promise<void>): void {
-    const operation = this.#operation;
     void work.then(() => {
-      if (this.#operation !== operation) return;
       this.#settle()?.resolve();
       this.#finish();
     });

@@ -100,6 +100,17 @@ describe("cancel of a reader", () => {
     expect(await second.getReader().read()).toEqual({ value: Uint8Array.of(9), done: false });
   });
 
+  benchTest("throws away what the system holds too", async ({ plug }) => {
+    const { port, far } = await plug({}, { osBuffer: 32 });
+    await port.open({ baudRate: 9600, bufferSize: 4 });
+    const reader = port.readable!.getReader();
+    await far.send(numbered(36));
+    await reader.cancel();
+    reader.releaseLock();
+    void far.send(Uint8Array.of(99));
+    expect(await port.readable!.getReader().read()).toEqual({ value: Uint8Array.of(99), done: false });
+  });
+
   benchTest("fails a sender that still waits for room", async ({ plug }) => {
     const { port, far } = await plug();
     await port.open({ baudRate: 9600, bufferSize: 64 });

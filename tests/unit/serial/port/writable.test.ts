@@ -145,8 +145,8 @@ describe("abort of a writer", () => {
     await port.close();
   });
 
-  benchTest("frees a close that waits under flow control", async ({ plug }) => {
-    const { port, far } = await plug();
+  benchTest("frees a close that waits under flow control", async ({ plug, clock }) => {
+    const { port, far } = await plug({}, { osBuffer: 32 });
     far.setInputSignals({ dataCarrierDetect: false, clearToSend: false, ringIndicator: false, dataSetReady: false });
     await port.open({ baudRate: 9600, flowControl: "hardware" });
     const writer = port.writable!.getWriter();
@@ -155,6 +155,13 @@ describe("abort of a writer", () => {
     await writer.abort("held back").catch(() => undefined);
     expect(await closed).toBe("held back");
     writer.releaseLock();
+    // What was held back is gone, and the port has a new stream.
+    await new Promise<void>((resolve) => clock.after(1, resolve));
+    const next = port.writable!.getWriter();
+    await next.write(Uint8Array.of(9));
+    far.setInputSignals({ dataCarrierDetect: false, clearToSend: true, ringIndicator: false, dataSetReady: false });
+    expect(await far.receive()).toEqual({ value: Uint8Array.of(9), done: false });
+    next.releaseLock();
     await port.close();
   });
 
