@@ -1,4 +1,4 @@
-import { sql } from "drizzle-orm";
+import { like, sql } from "drizzle-orm";
 import { describe, expect, it } from "vitest";
 import { GET as getAccount, PATCH as patchAccount, POST as register } from "@/app/api/account/route";
 import { PUT as putPassword } from "@/app/api/account/password/route";
@@ -6,6 +6,7 @@ import { DELETE as revoke } from "@/app/api/sessions/[id]/route";
 import { DELETE as signOut } from "@/app/api/sessions/current/route";
 import { DELETE as revokeOthers, GET as listSessions, POST as signIn } from "@/app/api/sessions/route";
 import { db } from "@/db/client";
+import { rateLimit } from "@/db/schema/rate-limit";
 import { bodyOf, call, cookieOf } from "@/tests/integration/routes/http";
 
 const password = "a long enough phrase";
@@ -84,15 +85,20 @@ describe("registering and signing in", () => {
 
   it("stops guessing from one address, and says how long to wait", async () => {
     const headers = { "x-forwarded-for": "198.51.100.7" };
-    const statuses: number[] = [];
-    for (let attempt = 0; attempt < 22; attempt += 1) {
-      const body = { email: `guess-${attempt}@example.org`, password };
-      const answer = await call(signIn, { method: "POST", path: "/api/sessions", body, headers });
-      statuses.push(answer.status);
-      if (answer.status === 429) expect(Number(answer.headers.get("retry-after"))).toBeGreaterThan(0);
-    }
-    expect(statuses.slice(0, 20)).toEqual(Array(20).fill(401));
-    expect(statuses.at(-1)).toBe(429);
+    const guess = () => {
+      const body = { email: "guess@example.org", password };
+      return call(signIn, { method: "POST", path: "/api/sessions", body, headers });
+    };
+    expect((await guess()).status).toBe(401);
+    // As after twenty guesses at once: a slow machine would have some of its allowance back by the time it made them.
+    await db
+      .update(rateLimit)
+      .set({ refilledAt: sql`now() + interval '1 minute'` })
+      .where(like(rateLimit.key, "address:198.51.100.7:%"));
+    const refused = await guess();
+    expect(refused.status).toBe(429);
+    // 20 a minute is one each 3 s.
+    expect(refused.headers.get("retry-after")).toMatch(/^[1-3]$/);
   });
 });
 
