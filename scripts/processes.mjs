@@ -98,12 +98,20 @@ function keep(chunks, chunk) {
   while (length > keptBytes && chunks.length > 1) length -= chunks.shift().length;
 }
 
-/** Runs a command to its end. Returns its exit code and what it wrote. */
-export async function run(command, args, options = {}) {
+/** Runs a command to its end, or stops it after `limitMs`. Returns its exit code and what it wrote. */
+export async function run(command, args, { limitMs, ...options } = {}) {
   const handle = start(command, args, { output: "pipe", ...options });
+  let late = false;
+  const timer = setTimeout(() => void ((late = true), handle.stop()), limitMs ?? defaultLimitMs);
   const code = await handle.exit;
-  return { code, output: handle.output() };
+  clearTimeout(timer);
+  return late
+    ? { code: 124, output: `${handle.output()}\nStopped: it took longer than allowed.\n` }
+    : { code, output: handle.output() };
 }
+
+/** Longer than any of our commands takes on a slow machine; a command that hangs ends all the same. */
+const defaultLimitMs = 15 * 60_000;
 
 /** Stops every command that is still running. */
 export async function stopAll() {
