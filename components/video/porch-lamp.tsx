@@ -25,7 +25,13 @@ function LampBulb({ state }: { readonly state: LinkState }) {
     case "lit":
       return <circle cx={21.5} cy={9.5} r={4.6} className="fill-glow" />;
     case "breathing":
-      return <circle cx={21.5} cy={9.5} r={4.6} className="lamp-breathes fill-glow" />;
+      // The ring tells it from a lamp that is merely lit, also where nothing moves.
+      return (
+        <>
+          <circle cx={21.5} cy={9.5} r={7.5} className="stroke-glow" strokeWidth={1} />
+          <circle cx={21.5} cy={9.5} r={4.6} className="lamp-breathes fill-glow" />
+        </>
+      );
     case "trouble":
       return (
         <>
