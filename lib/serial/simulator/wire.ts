@@ -51,8 +51,6 @@ export class PacedLine {
   #characterMs = 0;
   /** When the next byte is over; null: nothing is under way. */
   #dueMs: number | null = null;
-  /** When the last byte was over. */
-  #freeAtMs = -Infinity;
   /** A byte that a fault holds back. */
   #held: number | null = null;
   #takeBack: (() => void) | null = null;
@@ -76,7 +74,7 @@ export class PacedLine {
   /** The source has bytes now. */
   wake(): void {
     if (this.#dueMs !== null || this.#stalled || this.#options.source.available === 0) return;
-    this.#dueMs = Math.max(this.#options.clock.nowMs(), this.#freeAtMs) + this.#characterMs;
+    this.#dueMs = this.#options.clock.nowMs() + this.#characterMs;
     this.#schedule();
   }
 
@@ -152,7 +150,6 @@ export class PacedLine {
       this.#dueMs = fate.kind === "delay" ? dueMs + fate.delayMs : null;
       return null;
     }
-    this.#freeAtMs = dueMs;
     this.#dueMs = source.available > 0 ? dueMs + this.#characterMs : null;
     if (fate.kind === "event") return fate.event;
     arrived.push(...(fate.kind === "replace" ? fate.bytes : [byte]));
