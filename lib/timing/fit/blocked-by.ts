@@ -61,12 +61,11 @@ function together(request: FitRequest, budget: Budget): FitConstraint[] {
  * @param request a request for which `search` found nothing
  */
 export function blockedBy(request: FitRequest): FitBlock[] {
-  const budget = { left: REASON_TRIES };
-  const alone = singles(request, budget);
-  const names = alone.length > 0 ? alone : together(request, budget);
+  const alone = singles(request, { left: REASON_TRIES });
+  const names = alone.length > 0 ? alone : together(request, { left: REASON_TRIES });
   return names.flatMap((constraint) => {
     const without = new Set(alone.length > 0 ? [constraint] : names);
-    const [best] = search(searchSpace(request, without), budget);
+    const [best] = search(searchSpace(request, without));
     return best === undefined ? [] : [{ ...describeBlock(request, constraint, best.timing), alone: alone.length > 0 }];
   });
 }

@@ -5,10 +5,10 @@
  */
 export type Budget = { left: number };
 
-/** Tries for one answer: the search itself, the reasons when nothing fits, and the nearest rasters. */
+/** Tries for one answer: the search itself, the reasons when nothing fits (each alone, all together), the nearest. */
 export const SEARCH_TRIES = 40_000;
-export const REASON_TRIES = 80_000;
-export const NEAREST_TRIES = 80_000;
+export const REASON_TRIES = 60_000;
+export const NEAREST_TRIES = 60_000;
 
 /** Takes one try; false where none is left. */
 export function spend(budget: Budget): boolean {

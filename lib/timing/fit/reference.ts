@@ -82,6 +82,18 @@ function around(parts: Omit<AxisParts, "active">): BlankingSpans {
   };
 }
 
+const hull = (a: Span, b: Span): Span => [Math.min(a[0], b[0]), Math.max(a[1], b[1])];
+
+/** Both spans together, part by part. */
+function together(a: BlankingSpans, b: BlankingSpans): BlankingSpans {
+  return {
+    frontPorch: hull(a.frontPorch, b.frontPorch),
+    sync: hull(a.sync, b.sync),
+    backPorch: hull(a.backPorch, b.backPorch),
+    blank: hull(a.blank, b.blank),
+  };
+}
+
 /**
  * BT.470 gives 525/60 a field blanking of 19 to 21 lines: we aim no lower than the middle of it, so that a set of the
  * longer kind has its retrace too.
@@ -96,7 +108,8 @@ const leastTelevisionBlankLines = (() => {
  * or of a format of high definition where the line rate is one of theirs.
  *
  * The spans are those of `blankingSpan`, also for line rates up to 8 % from one of those four; at television rates the field blanking is 20 lines at least. Where no
- * standard has the line rate, a quarter either way of the nearest standard's share of the line.
+ * standard has the line rate, a quarter either way of the nearest standard's share of the line; and both together at the
+ * line rates of high definition, whose one format is too narrow to fit a picture of another width to.
  */
 export function blankingGuide(rateHz: number, fieldHz: number): BlankingGuide {
   const reference = nearestReference(rateHz, fieldHz);
@@ -107,6 +120,13 @@ export function blankingGuide(rateHz: number, fieldHz: number): BlankingGuide {
   const { polarity, lines: aimLines } = reference;
   const published = spansFor(rateHz);
   if (published === undefined) return { aimUs, aimLines, spanUs: around(aimUs), spanLines: around(aimLines), polarity };
+  const isCrt =
+    blankingSpan(rateHz) === undefined ||
+    crtReferences.some((one) => Math.abs(one.lineRateHz / rateHz - 1) <= SAME_KIND);
+  if (!isCrt) {
+    const spanUs = together(published.horizontalUs, around(aimUs));
+    return { aimUs, aimLines, spanUs, spanLines: together(published.verticalLines, around(aimLines)), polarity };
+  }
   const television = published.from.some((name) => name.startsWith("BT.470"));
   const [least, most] = published.verticalLines.blank;
   const blank: Span = [television ? Math.max(least, leastTelevisionBlankLines) : least, most];

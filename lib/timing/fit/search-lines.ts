@@ -103,11 +103,19 @@ export function splitAcross(
   return { blanking, cost: split.cost };
 }
 
+/** Whether some whole sync lies within its limits at some clock of the span: at a coarse clock there may be none. */
+function holdsSync(space: SearchSpace, field: FieldChoice, [minHz, maxHz]: Span): boolean {
+  const [least, most] = field.guide.spanUs.sync;
+  const shortest = atLeastWhole((Math.max(least, space.minSyncUs) * minHz) / 1e6 / space.multiple);
+  return shortest <= atMostWhole((most * maxHz) / 1e6 / space.multiple);
+}
+
 /** Clocks of the grid for a line total that its field allows, nearest to the wished rate first, at most 64. */
 export function* clocksFor(space: SearchSpace, field: FieldChoice, lineTotal: number): Generator<number> {
   const { stepHz, anchorHz } = space.clock;
   const allowed = slackened([space.clock.minHz, space.clock.maxHz]);
   const span = intersect([field.lineRate[0] * lineTotal, field.lineRate[1] * lineTotal], allowed);
+  if (!holdsSync(space, field, span)) return;
   const steps = (hz: number) => (hz - anchorHz) / stepHz;
   if (space.pixelClockHz !== undefined) {
     const onGrid = anchorHz + Math.round(steps(space.pixelClockHz)) * stepHz;
