@@ -24,6 +24,8 @@ type Job = {
   readonly request: WireRequest;
   readonly settle: (result: ExchangeResult) => void;
   retriesLeft: number;
+  /** It was sent before and its answer given up: two answers may come. */
+  sentAgain: boolean;
   busyLeft: number;
   /** Number in the wire log while it is in flight. */
   logged: number;
@@ -98,6 +100,7 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
       if (job === culprit) job.retriesLeft -= 1;
     }
     const again = jobs.filter((job) => job.request.idempotent && job.retriesLeft >= 0);
+    for (const job of again) job.sentAgain = true;
     queue.unshift(...again);
     for (const job of jobs) if (!again.includes(job)) job.settle(fail(error));
   }
@@ -173,7 +176,10 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
   function answer(job: Job, match: Exclude<Match, { kind: "other" }>): void {
     switch (match.kind) {
       case "reply":
-        return settle(job, ok({ values: match.values, fields: match.fields }));
+        settle(job, ok({ values: match.values, fields: match.fields }));
+        // This may be the answer that came late; then the other one is still to come, and must not meet a later request.
+        if (job.sentAgain) clearLine();
+        return;
       case "refused":
         return settle(job, fail({ code: "refused", message: `The device refused “${job.request.label}”: ${match.message}.` }));
       case "malformed":
@@ -203,7 +209,7 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
         if (signal?.aborted) return resolve(fail({ code: "aborted", message: `“${request.label}” was called off.` }));
         if (queue.length >= MAX_QUEUED) throw new Error(`More than ${MAX_QUEUED} requests wait`);
         const job: Job = {
-          request, retriesLeft: pace.retries, busyLeft: pace.retries, logged: 0, cancelDeadline: () => {},
+          request, retriesLeft: pace.retries, busyLeft: pace.retries, sentAgain: false, logged: 0, cancelDeadline: () => {},
           settle(result) {
             signal?.removeEventListener("abort", abort);
             resolve(result);
