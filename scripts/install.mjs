@@ -19,6 +19,8 @@ export function giveHome() {
   const home = path.join(dataFolder, "home");
   mkdirSync(home, { recursive: true });
   process.env.HOME = home;
+  // The npm that runs this command has handed its own cache on.
+  process.env.npm_config_cache = path.join(home, ".npm");
 }
 
 function isWritableFolder(folder) {
