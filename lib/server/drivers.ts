@@ -2,7 +2,7 @@ import "server-only";
 import type { BackupContent } from "@/lib/serial/backup/types";
 import { backupContent } from "@/lib/serial/backup/take-backup";
 import type { DriverDefinition } from "@/lib/serial/driver/definition";
-import { shippedDriver } from "@/lib/serial/drivers/shipped";
+import { findShippedDriver } from "@/lib/serial/drivers/shipped";
 import type { NativeKey, NativeValues } from "@/lib/serial/native";
 import { compiledDriver } from "@/lib/serial/plan/compiled-driver";
 import { fail, ok } from "@/lib/result";
@@ -12,7 +12,7 @@ export type DriverRef = { readonly slug: string; readonly version: string };
 
 /** The driver definition that a backup or plan names. Error: "no-driver" when this version is not here. */
 export function findDriver({ slug, version }: DriverRef): Result<DriverDefinition, "no-driver"> {
-  const found = shippedDriver(slug);
+  const found = findShippedDriver(slug);
   return found?.version === version ? ok(found) : fail("no-driver");
 }
 
@@ -27,7 +27,11 @@ const maxProblems = 50;
  */
 export function contentFromRead(
   definition: DriverDefinition,
-  { values, unreadable, firmware }: { readonly values: NativeValues; readonly unreadable: readonly NativeKey[]; readonly firmware: string },
+  {
+    values,
+    unreadable,
+    firmware,
+  }: { readonly values: NativeValues; readonly unreadable: readonly NativeKey[]; readonly firmware: string },
 ): Result<BackupContent, PathMessage[]> {
   const driver = compiledDriver(definition);
   const foreign = [...Object.keys(values), ...unreadable].filter((key) => !driver.byKey.has(key));
@@ -37,7 +41,9 @@ export function contentFromRead(
     ...foreign.map((path) => ({ path, message: "The driver has no such setting." })),
     ...missing.map((path) => ({ path, message: "Was neither read nor named as unreadable." })),
   ];
-  return problems.length > 0 ? fail(problems.slice(0, maxProblems)) : ok(backupContent(driver, { values, unreadable }, firmware));
+  return problems.length > 0
+    ? fail(problems.slice(0, maxProblems))
+    : ok(backupContent(driver, { values, unreadable }, firmware));
 }
 
 /** Whether a device of this driver has such a slot. */

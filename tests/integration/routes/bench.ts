@@ -77,7 +77,7 @@ export async function addDevice({ cookie }: Person, more: object = {}): Promise<
 export async function addBackup(
   { cookie }: Person,
   deviceId: string,
-  read: TakenBackup,
+  read: Read,
   more: object = {},
 ): Promise<BackupDetail> {
   return made(

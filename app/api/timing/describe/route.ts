@@ -32,10 +32,12 @@ export const POST = withRoute(
       modes: [{ key: "raster", timing }],
       slots: [{ number: 1, mode: "raster" }],
     } as const;
-    const findings = checkProfile({
+    const found = checkProfile({
       document: { ...document, modes: [...document.modes], slots: [...document.slots] },
       screen,
     });
+    // Without a screen nothing was asked about one, so that nothing is known of it is no finding here.
+    const findings = screen === undefined ? found.filter(({ rule }) => rule !== "unknown.screen") : found;
     return json({ ...describeRaster(timing), findings });
   },
 );
