@@ -2,7 +2,7 @@ import { blankingSpan, type BlankingSpans } from "@/lib/timing/blanking-span";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
 import type { Span } from "@/lib/timing/envelope";
 import type { RasterTiming } from "@/lib/timing/raster";
-import { axisBlank, horizontalUs, lineRateHz } from "@/lib/timing/rates";
+import { axisBlank, fieldLines, horizontalUs, lineRateHz, lineTotal } from "@/lib/timing/rates";
 import { sameCounts } from "@/lib/timing/same-raster";
 import { inSpan, nearestInSpan } from "@/lib/timing/span";
 
@@ -27,12 +27,21 @@ export type BlankingVerdict = {
 /** CTA-861 lets a clock be off by 0.5 % and be the same format (from memory). */
 const SAME_FORMAT_CLOCK = 0.005;
 
+const totalsOf = (timing: RasterTiming) => `${lineTotal(timing)} ${fieldLines(timing)}`;
+
+/** Published rasters by their totals: few share them. */
+const publishedByTotals = new Map<string, RasterTiming[]>();
+for (const { timing } of catalogue) {
+  const key = totalsOf(timing);
+  publishedByTotals.set(key, [...(publishedByTotals.get(key) ?? []), timing]);
+}
+
 /** The published raster that this is, its clock off by 0.5 % at most. */
 function isPublished(timing: RasterTiming): boolean {
-  return catalogue.some(
-    (entry) =>
-      Math.abs(timing.pixelClockHz / entry.timing.pixelClockHz - 1) <= SAME_FORMAT_CLOCK &&
-      sameCounts(timing, entry.timing),
+  const alike = publishedByTotals.get(totalsOf(timing)) ?? [];
+  return alike.some(
+    (published) =>
+      Math.abs(timing.pixelClockHz / published.pixelClockHz - 1) <= SAME_FORMAT_CLOCK && sameCounts(timing, published),
   );
 }
 
