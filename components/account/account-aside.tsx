@@ -12,7 +12,7 @@ export function AccountAside() {
   return (
     <aside className="border-line max-lg:border-t max-lg:pt-8 lg:border-l lg:pl-14">
       <LineWaveform timing={standardRaster("240p60").timing} />
-      <dl className="mt-8 grid gap-5 sm:grid-cols-3 lg:grid-cols-1 xl:grid-cols-3">
+      <dl className="mt-8 grid grid-cols-1 gap-5 sm:grid-cols-3 lg:grid-cols-1 xl:grid-cols-3">
         {reasons.map(([fact, detail]) => (
           <div key={fact}>
             <dt className="heading text-xl">{fact}</dt>

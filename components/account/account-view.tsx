@@ -25,7 +25,7 @@ export function AccountView() {
         title="Account"
         lead={account.data === undefined ? "Loading" : `${account.data.email}, ${account.data.role}, since ${formatDate(new Date(account.data.createdAt))}`}
       />
-      <div className="grid gap-x-14 gap-y-8 border-t border-line pt-6 lg:grid-cols-2">
+      <div className="grid grid-cols-1 gap-x-14 gap-y-8 border-t border-line pt-6 lg:grid-cols-2">
         <section aria-labelledby="name-head">
           <PartHead id="name-head" title="Name" />
           {account.data === undefined ? null : <NameForm key={account.data.name} name={account.data.name} />}

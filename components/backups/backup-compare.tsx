@@ -28,7 +28,7 @@ export function BackupCompare({ rows, knownGoodId }: { readonly rows: readonly B
   return (
     <section aria-labelledby="compare-head" className="mt-9">
       <PartHead id="compare-head" title="What changed" aside={changes === null ? "" : formatCount(changes.length, "value", "values")} />
-      <div className="grid max-w-3xl gap-4 sm:grid-cols-2">
+      <div className="grid grid-cols-1 max-w-3xl gap-4 sm:grid-cols-2">
         <SelectField label="From" options={options} value={leftId ?? ""} onChange={(event) => setLeft(event.target.value)} />
         <SelectField label="To" options={options} value={rightId ?? ""} onChange={(event) => setRight(event.target.value)} />
       </div>

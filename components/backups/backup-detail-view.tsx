@@ -44,7 +44,7 @@ export function BackupDetailView({ id }: { readonly id: string }) {
           </>
         }
       />
-      <div className="grid gap-x-12 gap-y-8 border-t border-line pt-5 xl:grid-cols-[minmax(0,1fr)_minmax(0,420px)]">
+      <div className="grid grid-cols-1 gap-x-12 gap-y-8 border-t border-line pt-5 xl:grid-cols-[minmax(0,1fr)_minmax(0,420px)]">
         <section className="min-w-0">
           <PartHead title="Slots" aside={`slot ${data.activeSlot} was active`} />
           <SlotTable document={content.document} activeSlot={data.activeSlot} />

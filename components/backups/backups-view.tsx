@@ -38,7 +38,7 @@ export function BackupsView({ shown, now }: { readonly shown: string | null; rea
       {devices.isPending ? <p className="text-muted">Loading</p> : null}
       {devices.isSuccess && chosen === undefined ? <NoDevices /> : null}
       {chosen === undefined ? null : (
-        <div className="-mx-4 grid flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
+        <div className="-mx-4 grid grid-cols-1 flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
           <nav aria-label="Devices" className="border-line px-4 py-4 max-lg:border-b md:px-7 lg:border-r">
             <ul>
               {rows.map((device) => (

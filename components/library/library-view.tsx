@@ -64,7 +64,7 @@ export function LibraryView({ wish }: { readonly wish: LibraryWish }) {
           </>
         }
       />
-      <div className="grid items-end gap-x-4 gap-y-3 border-t border-line py-4 sm:grid-cols-[minmax(0,1fr)_minmax(180px,280px)] lg:grid-cols-[minmax(0,420px)_minmax(180px,280px)_auto_1fr]">
+      <div className="grid grid-cols-1 items-end gap-x-4 gap-y-3 border-t border-line py-4 sm:grid-cols-[minmax(0,1fr)_minmax(180px,280px)] lg:grid-cols-[minmax(0,420px)_minmax(180px,280px)_auto_1fr]">
         <SearchField q={wish.q} onSearch={(q) => go({ q })} />
         <SelectField label="Hold against" options={options} value={screen.value} onChange={(event) => go({ screen: event.target.value, fitting: false })} />
         <div className="flex flex-wrap gap-x-5 pb-1.5">

@@ -49,7 +49,7 @@ export function ProfileView({ id, revision, screen }: ProfileViewProps) {
           acts={<ProfileActs profile={profile.data} revision={number} />}
         />
       </div>
-      <div className="gutter grid flex-1 gap-x-10 border-t border-line lg:grid-cols-[minmax(0,1fr)_minmax(300px,380px)]">
+      <div className="gutter grid grid-cols-1 flex-1 gap-x-10 border-t border-line lg:grid-cols-[minmax(0,1fr)_minmax(300px,380px)]">
         <div className="min-w-0 space-y-8 py-5">
           <section>
             <PartHead title="Slots" aside={<MadeFor document={document} />} />

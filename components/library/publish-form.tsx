@@ -48,7 +48,7 @@ export function PublishForm({ backup, isBusy, error, onPublish }: PublishFormPro
   };
   return (
     <form noValidate onSubmit={(event) => void form.handleSubmit(publish)(event)} className="flex flex-1 flex-col">
-      <div className="gutter grid flex-1 gap-x-12 gap-y-8 border-t border-line pt-5 pb-8 lg:grid-cols-2">
+      <div className="gutter grid grid-cols-1 flex-1 gap-x-12 gap-y-8 border-t border-line pt-5 pb-8 lg:grid-cols-2">
         <section aria-labelledby="slots-head">
           <PartHead id="slots-head" title="Slots" aside={`${chosen.size} of ${formatCount(slots.length, "slot", "slots")}`} />
           <ul className="border-t border-line">

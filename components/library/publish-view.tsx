@@ -43,7 +43,7 @@ export function PublishView({ backupId }: { readonly backupId: string | null }) 
           </EmptyState>
         </div>
       ) : (
-        <div className="gutter grid max-w-4xl gap-4 border-t border-line py-4 sm:grid-cols-2">
+        <div className="gutter grid grid-cols-1 max-w-4xl gap-4 border-t border-line py-4 sm:grid-cols-2">
           <SelectField
             label="Device"
             options={(devices.data ?? []).map((each) => ({ value: each.id, label: each.name }))}

@@ -60,7 +60,7 @@ function RevisionCompare({ profileId, rows, shown }: { readonly profileId: strin
   return (
     <div className="mt-6">
       <h3 className="mb-2 text-lg">Compare two revisions</h3>
-      <div className="grid max-w-2xl gap-4 sm:grid-cols-2">
+      <div className="grid grid-cols-1 max-w-2xl gap-4 sm:grid-cols-2">
         <SelectField label="From" options={options} value={String(left)} onChange={(event) => setLeft(Number(event.target.value))} />
         <SelectField label="To" options={options} value={String(right)} onChange={(event) => setRight(Number(event.target.value))} />
       </div>

@@ -104,7 +104,7 @@ export function ScreenDetail({ envelope, above, acts, notes, foot }: {
         </div>
         {acts === undefined ? null : <div className="flex flex-wrap gap-2.5">{acts}</div>}
       </div>
-      <div className="grid gap-x-10 gap-y-6 xl:grid-cols-[minmax(0,5fr)_minmax(0,6fr)]">
+      <div className="grid grid-cols-1 gap-x-10 gap-y-6 xl:grid-cols-[minmax(0,5fr)_minmax(0,6fr)]">
         <ScreenPlane envelope={envelope} heightPx={300} />
         <div>
           <h3 className="mb-2 text-lg">Standard modes on it</h3>

@@ -51,7 +51,7 @@ export function ScreenFormView({ title, lead, envelope, notes, act, isBusy, erro
       <div className="gutter">
         <PageHead title={title} lead={lead} />
       </div>
-      <div className="gutter grid flex-1 gap-x-10 gap-y-8 border-t border-line pt-5 pb-8 lg:grid-cols-[minmax(0,1fr)_minmax(320px,460px)]">
+      <div className="gutter grid grid-cols-1 flex-1 gap-x-10 gap-y-8 border-t border-line pt-5 pb-8 lg:grid-cols-[minmax(0,1fr)_minmax(320px,460px)]">
         <div className="min-w-0">
           <TextField label="Name" placeholder="Gallery 2, wide CRT" error={errorOf("name")} fieldClassName="max-w-md" {...register("name")} />
           <BandFields control={control} register={register} errorOf={errorOf} />
@@ -197,7 +197,7 @@ function LimitFields({ control, register, errorOf }: Wired & { readonly control:
 
 function LimitRow({ limit, register, children }: { readonly limit: EnvelopeLimit; readonly register: UseFormRegister<ScreenForm>; readonly children: ReactNode }) {
   return (
-    <div className="grid items-center gap-x-5 gap-y-2 border-b border-line py-2.5 sm:grid-cols-[150px_minmax(0,1fr)_176px]">
+    <div className="grid grid-cols-1 items-center gap-x-5 gap-y-2 border-b border-line py-2.5 sm:grid-cols-[150px_minmax(0,1fr)_176px]">
       <span className="font-[500]">{limitWords[limit]}</span>
       <div className="min-w-0 max-w-md">{children}</div>
       <SourceSelect limit={limit} register={register} />

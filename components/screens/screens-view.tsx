@@ -40,7 +40,7 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
           </ButtonLink>
         }
       />
-      <div className="-mx-4 grid flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
+      <div className="-mx-4 grid grid-cols-1 flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
         <div className="px-4 py-4 max-lg:border-b lg:border-r md:px-7 border-line">
           <OwnScreens screens={mine} current={first?.id} isWaiting={isWaiting} />
           {screens.error === null ? null : <ProblemMessage error={screens.error} act={<Button onClick={() => void screens.refetch()}>Try again</Button>} />}

@@ -17,7 +17,7 @@ export function Front() {
   const screen = demoScreen();
   return (
     <>
-      <div className="gutter grid items-start gap-x-14 gap-y-10 border-b border-line pt-8 pb-10 md:px-16 md:pt-14 lg:grid-cols-[minmax(340px,500px)_minmax(0,1fr)]">
+      <div className="gutter grid grid-cols-1 items-start gap-x-14 gap-y-10 border-b border-line pt-8 pb-10 md:px-16 md:pt-14 lg:grid-cols-[minmax(340px,500px)_minmax(0,1fr)]">
         <div>
           <h1 className="text-4xl tracking-[-0.02em] sm:text-5xl">A console for video scalers with a serial port</h1>
           <p className="mt-5 max-w-[44ch] text-[18px] leading-normal text-muted">

@@ -12,7 +12,7 @@ const TRIAL_SECONDS = 30;
 export function Promises({ band }: { readonly band: Span }) {
   const kHz = (hz: number) => hz / 1000;
   return (
-    <div className="gutter grid border-line md:px-16 lg:grid-cols-3 lg:divide-x lg:divide-line">
+    <div className="gutter grid grid-cols-1 border-line md:px-16 lg:grid-cols-3 lg:divide-x lg:divide-line">
       <Held title="Checked before a byte is written">
         <RangeRuler
           label="Line rate"

@@ -46,7 +46,7 @@ export function TryPicture({ deviceName, document, source, screen }: TryPictureP
   const ratio = picture?.ok === true ? lineRatioWords(picture.value.source.heightLines, picture.value.placed.heightLines) : "";
   const state = mode === undefined ? "nothing is put out" : simulated.locked ? `${modeName(mode)}, in lock` : `${modeName(mode)}, out of this screen’s range`;
   return (
-    <div className="grid gap-x-6 gap-y-5 sm:grid-cols-[206px_minmax(0,1fr)]">
+    <div className="grid grid-cols-1 gap-x-6 gap-y-5 sm:grid-cols-[206px_minmax(0,1fr)]">
       <div role="group" aria-label={`Slots of a simulated ${deviceName}`} className="order-2 grid content-start gap-x-4 gap-y-2.5 max-sm:grid-cols-2 sm:order-1">
         {slots.map((slot) => (
           <SlotChoice key={slot.number} slot={slot} timing={timingOf(slot)} isChosen={slot.number === number} onChoose={() => setNumber(slot.number)} />
@@ -78,7 +78,7 @@ function SlotChoice({ slot, timing, isChosen, onChoose }: { readonly slot: Slot;
       className={classNames("min-w-0 border-l-3 pl-2.5 text-left", isChosen ? "border-lamp" : "border-transparent enabled:hover:border-edge")}
     >
       <Tape name={isEmpty ? null : (slot.name ?? `Slot ${slot.number}`)} className="w-full" />
-      {timing === undefined ? null : <ModeMark timing={timing} className="mt-1" />}
+      {timing === undefined ? null : <ModeMark timing={timing} className="mt-1 max-sm:flex-col max-sm:items-start max-sm:gap-0" />}
     </button>
   );
 }
