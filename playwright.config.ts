@@ -22,7 +22,7 @@ export default defineConfig({
   fullyParallel: true,
   workers: 2,
   retries: 0,
-  timeout: 60_000,
+  timeout: 150_000,
   expect: { timeout: 10_000 },
   reporter: process.env.E2E_REPORT ? [["json", { outputFile: process.env.E2E_REPORT }], ["line"]] : [["list"]],
   use: {

@@ -114,11 +114,12 @@ function ReviewFoot({ review }: { readonly review: BenchReview }) {
   const { backUpAndTry, closeReview, acceptUnknownScreen, setCountdown } = useBenchActions();
   const account = useBenchAccount();
   const isFree = useSettled();
+  const progress = useBench((state) => state.progress);
   const { plan } = review.planned;
   const why = blockedBy(review, hasScreen, isLive);
   return (
     <FootBar
-      status={why === null ? <><span className="font-strong">Ready.</span> <span className="text-muted">{account ? "The backup is stored first." : "Without an account the backup stays in this page."}</span></> : <><span className="font-strong">Not yet:</span> <span className="text-muted">{why}</span></>}
+      status={progress !== null ? <span className="figure">Backing up: {progress.done} of {progress.total} settings, {formatFigure(progress.secondsLeft, "s", { decimals: 1 })} left</span> : why === null ? <><span className="font-strong">Ready.</span> <span className="text-muted">{account ? "The backup is stored first." : "Without an account the backup stays in this page."}</span></> : <><span className="font-strong">Not yet:</span> <span className="text-muted">{why}</span></>}
       cost={plan ? `${formatCount(plan.steps.length, "step", "steps")}  ${formatFigure(plan.bytes, "bytes")}  ${formatFigure(plan.seconds, "s", { decimals: 1 })}` : undefined}
     >
       <label className="flex items-center gap-2">

@@ -7,7 +7,7 @@ import { startSim, type SimProcess } from "@/tests/peers/serial/sim-process";
 export type Wire = "simulated" | "sim over TCP";
 
 /** Longer than any whole read at the wire's own pace, on a busy machine. */
-export const READ_MS = 30_000;
+export const READ_MS = 60_000;
 
 /** Every way that a page can reach a device in these tests. */
 export const WIRES: readonly Wire[] = ["simulated", "sim over TCP"];
@@ -22,7 +22,7 @@ export const test = base.extend<Fixtures>({
     const started: SimProcess[] = [];
     await provide(async (page, wire) => {
       if (wire === "simulated") return null;
-      const sim = await startSim(["--driver", "lanternfield-lf8", "--tcp", "127.0.0.1:0"]);
+      const sim = await startSim(["--driver", "lanternfield-lf8", "--tcp", "127.0.0.1:0", "--baud", "none"]);
       started.push(sim);
       const port = Number(sim.line.split(":").at(-1));
       return bridgeSerial(page, { host: "127.0.0.1", port });

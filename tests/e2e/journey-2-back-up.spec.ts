@@ -3,7 +3,6 @@ import { connect, moveBy, READ_MS, register, settled, test, tryIt, trial, WIRES,
 
 for (const wire of WIRES) {
   test(`back up over ${wire}: everything is read with progress, dated, named; the second backup says what changed`, async ({ page, expectAccessible, prepareWire }) => {
-    test.setTimeout(120_000);
     await prepareWire(page, wire);
     await register(page);
     await connect(page, wire);

@@ -11,7 +11,6 @@ const tooTall = {
 
 for (const wire of WIRES) {
   test(`apply a shared profile over ${wire}: what stops it is mended by a click, it is tried, and kept`, async ({ page, prepareWire, expectAccessible }) => {
-    test.setTimeout(150_000);
     await prepareWire(page, wire);
     await register(page);
     await connect(page, wire);
@@ -50,7 +49,6 @@ for (const wire of WIRES) {
   });
 
   test(`do nothing over ${wire}: the old values come back by themselves`, async ({ page, prepareWire }) => {
-    test.setTimeout(150_000);
     await prepareWire(page, wire);
     await register(page);
     await connect(page, wire);

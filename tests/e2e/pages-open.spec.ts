@@ -36,8 +36,8 @@ test("the switch outweighs the system's theme, and stays after a reload", async 
   await page.goto("/");
   const ground = () => page.evaluate(() => getComputedStyle(document.documentElement).backgroundColor);
   const day = await ground();
-  await page.getByRole("button", { name: "Day, change to night" }).click();
-  await expect(page.getByRole("button", { name: "Night, change to day" })).toBeVisible();
+  await page.getByRole("button", { name: "Day theme, change to night" }).click();
+  await expect(page.getByRole("button", { name: "Night theme, change to day" })).toBeVisible();
   const night = await ground();
   expect(night).not.toBe(day);
   await page.reload();
