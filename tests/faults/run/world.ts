@@ -76,13 +76,14 @@ export type World = {
   armedOver: NativeValues | null;
 };
 
-/** Setting 0 of the model: the active mode's timing. Setting 1: another slot's width. */
-export const CHANGED = { raster: "modes[1].timing.pixelClockHz", other: "slots[2].placement.widthPct" } as const;
+/** A change of the active mode's timing, with one written before it and one after. */
+export const CHANGED = { before: "everywhere.trim.leftPx", raster: "modes[1].timing.pixelClockHz", other: "slots[2].placement.widthPct" } as const;
 
 function planOf(definition: DriverDefinition, backup: Awaited<ReturnType<typeof takeBackup>>): { plan: CheckedPlan; identity: DeviceIdentity } {
   if (!backup.ok) throw new Error(backup.error.message);
   const { content, activeSlot, rasterOut, identity } = backup.value;
   const document = profileOf({
+    everywhere: { trim: { leftPx: 4 } },
     modes: [{ key: "a", timing: { ...rasterOf(definition, 1), pixelClockHz: 27_050_000 } }],
     slots: [{ number: 1, mode: "a" }, { number: 2, placement: { widthPct: 88 } }],
   });
