@@ -31,13 +31,13 @@ export function createStrikeOut(
   return (bytes, request) => {
     if (!isSealed(bytes)) return crossOutBytes(bytes);
     const code = bytes[1] ?? 0;
-    const isRequest = bytes.length > 8 ? code === WRITE_MULTIPLE : code !== READ_HOLDING && code !== READ_INPUT;
-    if (code === WRITE_MULTIPLE && bytes.length > 8) return cross(bytes, 7, wordAt(bytes, 2), wordAt(bytes, 4), "holding");
+    // Replies to reads have an odd length, so eight bytes are a request to read or a write's reply: neither holds a name.
     if (code === WRITE_SINGLE) return cross(bytes, 4, wordAt(bytes, 2), 1, "holding");
-    if (isRequest || !request || request[1] !== code || bytes[2] !== 2 * wordAt(request, 4)) {
-      // A reply whose request is not known could hold anything; requests to read hold nothing.
-      return bytes.length === 8 || isRequest ? bytes : sealFrame([...bytes.subarray(0, 3), ...crossOutBytes(bytes.subarray(3, -2))]);
-    }
-    return cross(bytes, 3, wordAt(request, 2), wordAt(request, 4), code === READ_INPUT ? "input" : "holding");
+    if (code === WRITE_MULTIPLE && bytes.length > 8) return cross(bytes, 7, wordAt(bytes, 2), wordAt(bytes, 4), "holding");
+    if (bytes.length === 8 || (code !== READ_HOLDING && code !== READ_INPUT)) return bytes;
+    const isAnswer = request !== undefined && request[1] === code && bytes[2] === 2 * wordAt(request, 4);
+    if (isAnswer) return cross(bytes, 3, wordAt(request, 2), wordAt(request, 4), code === READ_INPUT ? "input" : "holding");
+    // What it answers is not known, so it could hold anything.
+    return sealFrame([...bytes.subarray(0, 3), ...crossOutBytes(bytes.subarray(3, -2))]);
   };
 }
