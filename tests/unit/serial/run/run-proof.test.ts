@@ -50,6 +50,38 @@ describe("rule 5: proof", () => {
     expect(rig.device.stored).toMatchObject(formerValues(rig));
   });
 
+  it("does not take a restart before the last write for a proof of the next commit", async () => {
+    const rig = await trying(await runRig({ target, definition: cannotSay }));
+    rig.device.setFault((operation) => (operation.kind === "action" && operation.name === "commit" ? { kind: "torn", stored: 1 } : undefined));
+    await settle(rig.clock, rig.run.keep());
+    rig.device.powerCycle();
+    await rig.clock.advance(2_000);
+    await settle(rig.clock, rig.run.readAgain());
+    expect(rig.run.view.state).toBe("mixed");
+    rig.device.setFault(commitFails("ignore"));
+    await settle(rig.clock, rig.run.finish());
+    await settle(rig.clock, rig.run.readAgain());
+    expect(rig.run.view.state).toBe("unconfirmed");
+  });
+
+  it("keeps by the owner's last word alone: all new after a Put back that got nowhere is the owner's to settle", async () => {
+    const rig = await trying(await runRig({ target }));
+    rig.device.setFault(commitFails("ignore"));
+    await settle(rig.clock, rig.run.keep());
+    rig.device.setFault(null);
+    rig.device.operate({ kind: "action", name: "commit", fields: {} });
+    const stopWatching = rig.run.onView((view) => {
+      if (view.state !== "putting-back") return;
+      stopWatching();
+      rig.plug.unplug();
+    });
+    await settle(rig.clock, rig.run.putBack());
+    await settle(rig.clock, rig.run.resume(await reconnect(rig)));
+    expect(rig.run.view.state).toBe("mixed");
+    await settle(rig.clock, rig.run.finish());
+    expect(rig.run.view.state).toBe("kept");
+  });
+
   it("believes the owner's switch-off only until the next write", async () => {
     const blind = { ...cannotSay, status: { ...cannotSay.status, bootCount: undefined } };
     const rig = await trying(await runRig({ target, definition: blind }));
