@@ -8,6 +8,7 @@ import type { Page } from "@playwright/test";
  * otherwise the walk alone is the test, so that a caption which is no longer true fails.
  */
 async function stop(page: Page, name: string): Promise<void> {
+  await expect(page.getByText("Loading", { exact: true })).toHaveCount(0);
   const path = process.env.TOUR === "1" ? `docs/tour/${name}.png` : undefined;
   await page.screenshot({ animations: "disabled", ...(path === undefined ? {} : { path }) });
 }
