@@ -245,6 +245,42 @@ const propSet: readonly DemoBackup[] = [
   },
 ];
 
+const gallery1: readonly DemoBackup[] = [
+  {
+    key: "r1",
+    name: "Lent by the school",
+    cause: "by-hand",
+    at: "2026-06-30T09:00:00Z",
+    changes: slot(1, { name: "WALL OF SETS" }),
+    activeSlot: 1,
+    source: console480,
+  },
+  {
+    key: "r2",
+    name: "Second set swapped",
+    cause: "by-hand",
+    at: "2026-07-22T15:20:00Z",
+    changes: {
+      ...slot(1, { "placement.offsetPx": -8, "placement.heightPct": 94 }),
+      ...slot(2, { "colour.brightnessPct": 106 }),
+    },
+    activeSlot: 1,
+    source: console480,
+  },
+];
+
+const store: readonly DemoBackup[] = [
+  {
+    key: "t1",
+    name: "From the store room",
+    cause: "by-hand",
+    at: "2026-08-04T10:30:00Z",
+    changes: slot(2, { name: "Long wall", "colour.saturationPct": 90 }),
+    activeSlot: 2,
+    source: hd,
+  },
+];
+
 const lf8 = { driverSlug: "lanternfield-lf8", firmware: "3.2" } as const;
 
 /** The museum's devices and what was backed up from them. All simulated, and said to be. */
@@ -297,5 +333,26 @@ export const demoDevices: readonly DemoDevice[] = [
     screen: "prop-set",
     knownGood: "p1",
     backups: propSet,
+  },
+  {
+    key: "gallery-1",
+    owner: "imke",
+    name: "Gallery 1, wall of sets",
+    driverSlug: "brackenrow-4r",
+    serialNumber: "4R-00871",
+    firmware: "2.0",
+    screen: "gallery-2",
+    knownGood: "r1",
+    backups: gallery1,
+  },
+  {
+    key: "store",
+    owner: "imke",
+    name: "Store room, sixteen slots",
+    driverSlug: "ternwick-16",
+    serialNumber: "T16-3300",
+    firmware: "4.4",
+    screen: "gallery-2",
+    backups: store,
   },
 ];

@@ -44,8 +44,12 @@ export function taken(values: NativeValues = {}): Promise<TakenBackup> {
   });
 }
 
+type Read = Pick<TakenBackup, "activeSlot" | "arriving" | "rasterOut"> & {
+  readonly content: Omit<TakenBackup["content"], "document">;
+};
+
 export function backupBody(
-  { content, activeSlot, arriving, rasterOut }: TakenBackup,
+  { content, activeSlot, arriving, rasterOut }: Read,
   more: object = {},
 ): Record<string, unknown> {
   const { driver: from, values, unreadable } = content;

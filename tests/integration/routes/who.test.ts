@@ -3,223 +3,22 @@ import { beforeAll, describe, expect, it } from "vitest";
 import { declarationOf, routeMethods } from "@/app/api/_http/openapi";
 import { routeModules } from "@/app/api/openapi.json/routes";
 import { db } from "@/db/client";
-import { demoProfiles } from "@/db/demo/seed-profiles";
-import type { BackupDetail } from "@/lib/contracts/backup";
-import type { DeviceView } from "@/lib/contracts/device";
 import type { PlanView } from "@/lib/contracts/plan";
 import type { ProfileDetail } from "@/lib/contracts/profile";
 import type { RunView } from "@/lib/contracts/run";
-import type { ScreenView } from "@/lib/contracts/screen";
 import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
 import { planChanges } from "@/lib/serial/plan/plan-changes";
-import { standardRaster } from "@/lib/timing/standards";
-import {
-  addBackup,
-  addDevice,
-  addScreen,
-  backupBody,
-  cabinet,
-  deviceBody,
-  taken,
-} from "@/tests/integration/routes/bench";
+import { addBackup, addDevice, addScreen, taken } from "@/tests/integration/routes/bench";
 import { bodyOf, call } from "@/tests/integration/routes/http";
-import type { Call } from "@/tests/integration/routes/http";
+import { document, walks } from "@/tests/integration/routes/walks";
+import type { Belongings, Walk } from "@/tests/integration/routes/walks";
 import { person } from "@/tests/integration/routes/people";
 import type { Person } from "@/tests/integration/routes/people";
 
 type Handler = Parameters<typeof call>[0];
 
-/** Everything that one owner has, private, with a run that is open. */
-type Belongings = {
-  readonly owner: Person;
-  readonly screen: ScreenView;
-  readonly device: DeviceView;
-  readonly backup: BackupDetail;
-  readonly spare: BackupDetail;
-  readonly profile: ProfileDetail;
-  readonly plan: PlanView;
-  readonly run: RunView;
-  readonly session: string;
-};
-
-/**
- * What a valid request to a route is, and what it comes to for the owner of what it names and for anybody else
- * who is signed in, whatever their role.
- */
-type Walk = {
-  readonly given: (of: Belongings) => Call;
-  readonly owner: number;
-  readonly others: number;
-  readonly nobody?: number;
-};
-
 let its: Belongings;
 let others: ReadonlyMap<string, Person>;
-const document = demoProfiles.find(({ key }) => key === "upright-240")?.revisions.at(-1)?.document;
-const id = (of: { readonly id: string }, more: Call = {}): Call => ({ params: { id: of.id }, ...more });
-
-/** In an order in which each finds what it needs: what deletes comes last. */
-const walks: Readonly<Record<string, Walk>> = {
-  "GET /api/health": { given: () => ({}), owner: 200, others: 200, nobody: 200 },
-  "POST /api/timing/describe": {
-    given: () => ({ body: { timing: standardRaster("240p60").timing } }),
-    owner: 200,
-    others: 200,
-    nobody: 200,
-  },
-  "POST /api/profiles/check": { given: () => ({ body: { document } }), owner: 200, others: 200, nobody: 200 },
-  "POST /api/profiles/compare": {
-    given: () => ({ body: { left: document, right: document } }),
-    owner: 200,
-    others: 200,
-    nobody: 200,
-  },
-  "POST /api/profiles/convert": {
-    given: () => ({ body: document, path: "/x?to=json" }),
-    owner: 200,
-    others: 200,
-    nobody: 200,
-  },
-  "POST /api/account": {
-    given: () => ({ body: { name: "N", email: "walk@example.org", password: "long enough words" } }),
-    owner: 202,
-    others: 202,
-    nobody: 202,
-  },
-  "POST /api/sessions": {
-    given: () => ({ body: { email: "nobody@example.org", password: "long enough words" } }),
-    owner: 401,
-    others: 401,
-    nobody: 401,
-  },
-  "GET /api/account": { given: () => ({}), owner: 200, others: 200 },
-  "PATCH /api/account": { given: () => ({ body: { name: "Renamed" } }), owner: 200, others: 200 },
-  "PUT /api/account/password": {
-    given: () => ({ body: { current: "no password here", next: "long enough words" } }),
-    owner: 422,
-    others: 422,
-  },
-  "GET /api/sessions": { given: () => ({}), owner: 200, others: 200 },
-  "GET /api/screens": { given: () => ({}), owner: 200, others: 200 },
-  "POST /api/screens": { given: () => ({ body: { envelope: cabinet } }), owner: 201, others: 201 },
-  "GET /api/screens/{id}": { given: ({ screen }) => id(screen), owner: 200, others: 404 },
-  "PATCH /api/screens/{id}": {
-    given: ({ screen }) => id(screen, { body: { notes: "Walked" }, headers: { "if-match": '"1"' } }),
-    owner: 200,
-    others: 404,
-  },
-  "GET /api/devices": { given: () => ({}), owner: 200, others: 200 },
-  "POST /api/devices": {
-    given: ({ screen }) => ({ body: deviceBody({ screenId: screen.id }) }),
-    owner: 201,
-    others: 422,
-  },
-  "GET /api/devices/{id}": { given: ({ device }) => id(device), owner: 200, others: 404 },
-  "PATCH /api/devices/{id}": {
-    given: ({ device }) => id(device, { body: { name: "Walked" } }),
-    owner: 200,
-    others: 404,
-  },
-  "GET /api/devices/{id}/backups": { given: ({ device }) => id(device), owner: 200, others: 404 },
-  "POST /api/devices/{id}/backups": {
-    given: ({ device, backup }) => id(device, { body: backupBody(backup) }),
-    owner: 201,
-    others: 404,
-  },
-  "GET /api/backups/{id}": { given: ({ backup }) => id(backup), owner: 200, others: 404 },
-  "GET /api/backups/{id}/compare": {
-    given: ({ backup, spare }) => id(backup, { path: `/x?with=${spare.id}` }),
-    owner: 200,
-    others: 404,
-  },
-  "PATCH /api/backups/{id}": {
-    given: ({ backup }) => id(backup, { body: { name: "Walked" } }),
-    owner: 200,
-    others: 404,
-  },
-  "PUT /api/backups/{id}/known-good": { given: ({ spare }) => id(spare), owner: 200, others: 404 },
-  "DELETE /api/backups/{id}/known-good": { given: ({ spare }) => id(spare), owner: 200, others: 404 },
-  "DELETE /api/backups/{id}": { given: ({ spare }) => id(spare), owner: 204, others: 404 },
-  "POST /api/backups/{id}/undelete": { given: ({ spare }) => id(spare), owner: 200, others: 404 },
-  "GET /api/profiles": { given: () => ({}), owner: 200, others: 200, nobody: 200 },
-  "POST /api/profiles": {
-    given: ({ backup }) => ({ body: { fromBackup: backup.id, slots: [1], title: "Walked", visibility: "private" } }),
-    owner: 201,
-    others: 404,
-  },
-  "POST /api/profiles/import": { given: () => ({ body: document }), owner: 201, others: 201 },
-  "GET /api/profiles/{id}": { given: ({ profile }) => id(profile), owner: 200, others: 404, nobody: 404 },
-  "GET /api/profiles/{id}/export": { given: ({ profile }) => id(profile), owner: 200, others: 404, nobody: 404 },
-  "GET /api/profiles/{id}/revisions": { given: ({ profile }) => id(profile), owner: 200, others: 404, nobody: 404 },
-  "GET /api/profiles/{id}/revisions/{number}": {
-    given: ({ profile }) => ({ params: { id: profile.id, number: "1" } }),
-    owner: 200,
-    others: 404,
-    nobody: 404,
-  },
-  "POST /api/profiles/{id}/revisions": {
-    given: ({ profile }) => id(profile, { body: { document }, headers: { "if-match": '"1"' } }),
-    owner: 201,
-    others: 404,
-  },
-  "PATCH /api/profiles/{id}": {
-    given: ({ profile }) => id(profile, { body: { visibility: "private" } }),
-    owner: 200,
-    others: 404,
-  },
-  "DELETE /api/profiles/{id}": { given: ({ profile }) => id(profile), owner: 204, others: 404 },
-  "POST /api/plans": {
-    given: ({ backup, profile, screen }) => ({
-      body: {
-        backupId: backup.id,
-        target: { kind: "revision", revisionId: profile.revision.id },
-        leftOut: [],
-        screen: { id: screen.id },
-        acknowledged: [],
-        hash: "0".repeat(64),
-      },
-    }),
-    // By then the profile is deleted, so even its owner gets no plan of it.
-    owner: 422,
-    others: 404,
-  },
-  "GET /api/plans/{id}": { given: ({ plan }) => id(plan), owner: 200, others: 404 },
-  "GET /api/runs": { given: () => ({}), owner: 200, others: 200 },
-  "POST /api/runs": {
-    given: ({ plan }) => ({
-      body: { planId: plan.id, holder: "walking-tab" },
-      headers: { "if-match": `"${plan.hash}"` },
-    }),
-    owner: 409,
-    others: 404,
-  },
-  "GET /api/runs/{id}": { given: ({ run }) => id(run), owner: 200, others: 404 },
-  "GET /api/runs/{id}/steps": { given: ({ run }) => id(run), owner: 200, others: 404 },
-  "POST /api/runs/{id}/steps": {
-    given: ({ run }) =>
-      id(run, {
-        body: { holder: "walking-tab", entries: [{ number: 0, atMs: 1, kind: "state", state: "called-off" }] },
-      }),
-    owner: 200,
-    others: 404,
-  },
-  "PUT /api/runs/{id}/holder": {
-    given: ({ run }) => id(run, { body: { holder: "another-tab", force: true } }),
-    owner: 409,
-    others: 404,
-  },
-  "POST /api/runs/{id}/closing": {
-    given: ({ run, spare }) => id(run, { body: { afterBackupId: spare.id } }),
-    owner: 200,
-    others: 404,
-  },
-  "DELETE /api/screens/{id}": { given: ({ screen }) => id(screen), owner: 204, others: 404 },
-  "DELETE /api/devices/{id}": { given: ({ device }) => id(device), owner: 204, others: 404 },
-  "DELETE /api/sessions/{id}": { given: ({ session }) => ({ params: { id: session } }), owner: 204, others: 404 },
-  "DELETE /api/sessions": { given: () => ({}), owner: 200, others: 200 },
-  "DELETE /api/sessions/current": { given: () => ({}), owner: 204, others: 204 },
-};
-
 function handlerOf(name: string): Handler {
   const [method = "", path = ""] = name.split(" ");
   // The cast holds: the test below compares the names with the handlers that stand.
