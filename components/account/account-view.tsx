@@ -28,7 +28,7 @@ export function AccountView() {
       <div className="grid grid-cols-1 gap-x-14 gap-y-8 border-t border-line pt-6 lg:grid-cols-2">
         <section aria-labelledby="name-head">
           <PartHead id="name-head" title="Name" />
-          {account.data === undefined ? null : <NameForm key={account.data.name} name={account.data.name} />}
+          {account.data === undefined ? null : <NameForm name={account.data.name} />}
         </section>
         <section aria-labelledby="password-head">
           <PartHead id="password-head" title="Password" />

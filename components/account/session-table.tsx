@@ -38,6 +38,7 @@ export function SessionTable({ headId }: { readonly headId: string }) {
     {
       id: "act",
       header: "Acts",
+      hideHeader: true,
       align: "end",
       cell: (row) =>
         row.current ? null : (

@@ -34,7 +34,7 @@ export function BackupList({ device }: { readonly device: DeviceView }) {
     { id: "out", header: "Put out", cell: (row) => (row.rasterOut === null ? <span className="text-muted">nothing</span> : <ModeMark timing={row.rasterOut} />) },
     { id: "slot", header: "Slot", align: "end", sortBy: (row) => row.activeSlot, cell: (row) => <span className="figure">{row.activeSlot}</span> },
     { id: "changed", header: "Since the one before", sortBy: (row) => row.changedValues ?? -1, cell: (row) => <Changed row={row} /> },
-    { id: "acts", header: "Acts", align: "end", cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} /> },
+    { id: "acts", header: "Acts", hideHeader: true, align: "end", cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} /> },
   ];
   if (backups.error !== null) return <ProblemMessage error={backups.error} act={<Button onClick={() => void backups.refetch()}>Try again</Button>} />;
   if (backups.isPending) return <p className="text-muted">Loading</p>;
@@ -91,11 +91,9 @@ function BackupActs({ row, onRename }: { readonly row: BackupView; readonly onRe
   const remove = useDeleteBackup();
   const undelete = useUndeleteBackup();
   const say = (error: unknown) => toast({ text: problemText(error).fact });
-  const onDelete = () =>
-    remove.mutate(row, {
-      onSuccess: () => toast({ text: `${row.name} was deleted.`, undo: { onUndo: () => undelete.mutate(row.id, { onError: say }) } }),
-      onError: say,
-    });
+  // The row leaves with the backup, and callbacks of `mutate` with the row; promises stay.
+  const onUndo = () => void undelete.mutateAsync(row.id).catch(say);
+  const onDelete = () => void remove.mutateAsync(row).then(() => toast({ text: `${row.name} was deleted.`, undo: { onUndo } }), say);
   const isHeld = row.plans > 0 || row.knownGood;
   const items: readonly MenuItem[] = [
     { kind: "link", label: "Look inside", href: `/backups/${row.id}` },

@@ -69,14 +69,15 @@ function EditDevice({ device, onClose }: { readonly device: DeviceView; readonly
         },
       },
     );
+  // This dialog leaves with the device, and callbacks of `mutate` with it; a promise stays. A refusal shows below.
   const onDelete = () =>
-    remove.mutate(device, {
-      onSuccess: () => {
+    void remove.mutateAsync(device).then(
+      () => {
         toast({ text: `${device.name} was deleted.` });
-        onClose();
         router.replace("/backups");
       },
-    });
+      () => undefined,
+    );
   return (
     <Dialog
       open

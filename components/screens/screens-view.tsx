@@ -130,13 +130,15 @@ function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
   const router = useRouter();
   const toast = useToast();
   const remove = useDeleteScreen();
+  // This part leaves with the screen, and callbacks of `mutate` with it; a promise stays. A refusal shows below.
   const onDelete = () =>
-    remove.mutate(screen, {
-      onSuccess: () => {
+    void remove.mutateAsync(screen).then(
+      () => {
         toast({ text: `${screen.name} was deleted.` });
         router.replace("/screens");
       },
-    });
+      () => undefined,
+    );
   return (
     <ScreenDetail
       envelope={screen.envelope}

@@ -14,10 +14,10 @@ export function ThemeSwitch() {
   return (
     <button type="button" onClick={change} className="min-h-9 rounded-control px-2 font-[500] text-muted hover:text-text">
       <span className="when-day">
-        Day<span className="sr-only">, change to night</span>
+        Day <span className="sr-only">theme, change to night</span>
       </span>
       <span className="when-night">
-        Night<span className="sr-only">, change to day</span>
+        Night <span className="sr-only">theme, change to day</span>
       </span>
     </button>
   );

@@ -15,6 +15,8 @@ import { classNames } from "@/components/ui/class-names";
 export type DataColumn<Row> = {
   readonly id: string;
   readonly header: string;
+  /** For columns that explain themselves: the header is there for assistive technology alone. */
+  readonly hideHeader?: boolean;
   /** What the column sorts by; without it the column does not sort. Undefined values come last. */
   readonly sortBy?: (row: Row) => string | number | undefined;
   readonly cell: (row: Row) => ReactNode;
@@ -98,6 +100,8 @@ export function DataTable<Row extends object>({ caption, columns, rows, rowKey, 
                         {sorted === "asc" ? <ArrowUp aria-hidden size={13} /> : null}
                         {sorted === "desc" ? <ArrowDown aria-hidden size={13} /> : null}
                       </button>
+                    ) : column?.hideHeader === true ? (
+                      <span className="sr-only">{column.header}</span>
                     ) : (
                       column?.header
                     )}
@@ -142,7 +146,7 @@ function DataCell<Row>({ column, row }: { readonly column: DataColumn<Row>; read
         column.className,
       )}
     >
-      {phone === "plain" && column.header !== "" ? (
+      {phone === "plain" && column.hideHeader !== true ? (
         <span aria-hidden className="w-28 shrink-0 text-sm text-muted md:hidden">
           {column.header}
         </span>
