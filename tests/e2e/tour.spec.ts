@@ -9,6 +9,7 @@ import type { Page } from "@playwright/test";
  */
 async function stop(page: Page, name: string): Promise<void> {
   await expect(page.getByText("Loading", { exact: true })).toHaveCount(0);
+  await page.evaluate(() => scrollTo(0, 0));
   const path = process.env.TOUR === "1" ? `docs/tour/${name}.png` : undefined;
   await page.screenshot({ animations: "disabled", ...(path === undefined ? {} : { path }) });
 }
