@@ -4,7 +4,7 @@ import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
 import { FindingIcon } from "@/components/ui/finding-icon";
 import { classNames } from "@/components/ui/class-names";
-import { groupFindings, type FindingGroup } from "@/components/bench/finding-groups";
+import { groupFindings, staysAsItIs, type FindingGroup } from "@/components/bench/finding-groups";
 import type { Finding, Remedy } from "@/lib/profile/finding";
 
 export type FindingListProps = {
@@ -15,13 +15,15 @@ export type FindingListProps = {
   readonly onRemedy?: (remedy: Remedy) => void;
   /** A restore takes a backup as it is: only leaving a slot out is offered then. */
   readonly canSetValues?: boolean;
+  /** Native keys that a plan changes: what is about others is told in one. */
+  readonly changedKeys?: readonly string[];
 };
 
 /** Findings, the hardest first; each states the fact, the limit and the way out. */
-export function FindingList({ findings, acknowledged = [], onAcknowledge, onRemedy, canSetValues = true }: FindingListProps) {
+export function FindingList({ findings, acknowledged = [], onAcknowledge, onRemedy, canSetValues = true, changedKeys }: FindingListProps) {
   return (
     <ul aria-live="polite" className="divide-y divide-line">
-      {groupFindings(findings).map((group) => (
+      {groupFindings(findings, changedKeys ? (finding) => staysAsItIs(finding, changedKeys) : undefined).map((group) => (
         <li key={group.key} className="py-3" data-rule={group.rule} data-severity={group.severity}>
           <FindingText group={group} />
           {onRemedy === undefined ? null : <Remedies remedies={canSetValues ? group.remedies : group.remedies.filter((remedy) => remedy.kind === "leave-out")} onRemedy={onRemedy} />}

@@ -50,7 +50,7 @@ export function ReviewView({ review }: { readonly review: BenchReview }) {
         </div>
         <aside aria-labelledby="findings-head" className="pt-7">
           <h2 id="findings-head" className="text-xl">{headOf(review)}</h2>
-          <FindingList findings={planned.findings} acknowledged={review.acknowledged} onAcknowledge={acknowledge} onRemedy={takeRemedy} canSetValues={target.kind !== "restore"} />
+          <FindingList findings={planned.findings} acknowledged={review.acknowledged} onAcknowledge={acknowledge} onRemedy={takeRemedy} canSetValues={target.kind !== "restore"} changedKeys={planned.changes.map((change) => change.key)} />
           <SlotsLeftOut review={review} />
           <p className="mt-3 border-t border-line pt-3 text-sm text-muted">A signal above or below a CRT&apos;s range can damage its deflection stage. The set&apos;s service literature decides, before any figure here.</p>
           {device.kind === "simulated" ? <div className="mt-3"><DemoNote>This device is simulated: what it shows proves the plan, not the hardware.</DemoNote></div> : null}

@@ -6,7 +6,7 @@ import { SelectField } from "@/components/ui/field";
 import { Segmented } from "@/components/ui/segmented";
 import { RangeRuler } from "@/components/video/range-ruler";
 import { formatCount } from "@/components/ui/figures";
-import { applyPatch } from "@/lib/profile/paths";
+import { applyPatch, getValue } from "@/lib/profile/paths";
 import { safeStretch } from "@/lib/profile/safe-stretch";
 import { alsoMoved, settingRows, type Reach, type SettingRow } from "@/components/bench/setting-rows";
 import { useBench, useBenchActions, useSettled } from "@/components/bench/bench-provider";
@@ -31,6 +31,8 @@ export function SettingsColumn({ slot }: { readonly slot: number }) {
   const reading = useBench((state) => state.reading);
   const edits = useBench((state) => state.edits);
   const screen = useBench((state) => state.screen);
+  // While values are tried, the grey pin shows where each was in the backup before them.
+  const before = useBench((state) => (state.activity === "running" ? (state.backup?.content.document ?? null) : null));
   const { edit, clearEdits, reviewEdits } = useBenchActions();
   const isFree = useSettled();
   if (!device || !reading) return null;
@@ -46,7 +48,7 @@ export function SettingsColumn({ slot }: { readonly slot: number }) {
       {rows.length === 0 ? <p className="py-4 text-muted">Slot {slot} is empty: it has no mode to adjust.</p> : null}
       {rows.map((row) => (
         <SettingControl
-          key={row.path} row={row} disabled={!isFree} onChange={(value) => edit({ path: row.path, value })}
+          key={row.path} row={row} was={before ? getValue(before, row.path) : undefined} disabled={!isFree} onChange={(value) => edit({ path: row.path, value })}
           safe={envelope && row.range ? safeStretch(row.path, { document: planned, device: device.limits, screen: envelope }) : undefined}
         />
       ))}
@@ -59,15 +61,15 @@ export function SettingsColumn({ slot }: { readonly slot: number }) {
   );
 }
 
-type ControlProps = { readonly row: SettingRow; readonly safe: readonly [number, number] | null | undefined; readonly disabled: boolean; readonly onChange: (value: number | string) => void };
+type ControlProps = { readonly row: SettingRow; readonly was: unknown; readonly safe: readonly [number, number] | null | undefined; readonly disabled: boolean; readonly onChange: (value: number | string) => void };
 
-function SettingControl({ row, safe, disabled, onChange }: ControlProps) {
+function SettingControl({ row, was, safe, disabled, onChange }: ControlProps) {
   const { setting, range, choices } = row;
   if (range !== undefined && typeof row.planned === "number") {
     return (
       <RangeRuler
         label={setting.label} unit={setting.unit ?? ""} range={range} safe={safe} disabled={disabled} onChange={onChange}
-        now={typeof row.now === "number" ? row.now : undefined} planned={row.planned === row.now ? undefined : row.planned}
+        was={typeof was === "number" && was !== row.now ? was : undefined} now={typeof row.now === "number" ? row.now : undefined} planned={row.planned === row.now ? undefined : row.planned}
       />
     );
   }

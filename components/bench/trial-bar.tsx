@@ -19,7 +19,7 @@ export function TrialBar() {
   return (
     <section
       aria-label="Trial" data-run-state={view.state}
-      className={`gutter border-y py-3 ${isTrouble ? "border-halt" : "border-lamp"} bg-[color-mix(in_srgb,var(--lamp)_14%,var(--bg))]`}
+      className={`gutter sticky top-0 z-30 border-y py-3 ${isTrouble ? "border-halt" : "border-lamp"} bg-[color-mix(in_srgb,var(--lamp)_14%,var(--bg))]`}
     >
       <div className="flex flex-wrap items-center gap-x-5 gap-y-3">
         {view.countdown !== null ? <Countdown endsAtMs={view.countdown.endsAtMs} /> : isTrouble ? <StopIcon className="size-6" /> : null}

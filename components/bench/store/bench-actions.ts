@@ -6,7 +6,7 @@ import { connectReal, connectSimulated, disconnect, reconnect } from "@/componen
 import { backUp, readDevice } from "@/components/bench/store/reading";
 import { askRecall, recallHeld } from "@/components/bench/store/recalling";
 import { acknowledge, leaveOut, openReview, setCountdown, takeRemedy, withEdit } from "@/components/bench/store/review";
-import { act } from "@/components/bench/store/run-control";
+import { act, lookAt } from "@/components/bench/store/run-control";
 import { acceptUnknownScreen, chooseScreen, forgetScreen, type ScreenChoice } from "@/components/bench/store/screens";
 import { backUpAndTry } from "@/components/bench/store/try-plan";
 import type { BenchTarget } from "@/components/bench/store/types";
@@ -73,7 +73,7 @@ export function createBenchActions(core: BenchCore) {
     keep: () => void act(core, (run) => run.keep()),
     putBack: () => void act(core, (run) => run.putBack()),
     finish: () => void act(core, (run) => run.finish()),
-    look: (slot: number) => void act(core, (run) => run.look(slot)),
+    look: (slot: number) => void lookAt(core, slot),
     readRunAgain: () => void act(core, (run) => run.readAgain()),
     stateCycled: () => void act(core, (run) => run.stateCycled()),
     leaveRun: () => void act(core, (run) => run.leave()),

@@ -1,4 +1,6 @@
 import { createRun, restoreRun, type Run } from "@/lib/serial/run/create-run";
+import { backupContent } from "@/lib/serial/backup/take-backup";
+import { rasterOfSlot } from "@/lib/serial/plan/output-raster";
 import { planChanges } from "@/lib/serial/plan/plan-changes";
 import { reconcileJournals } from "@/lib/serial/run/reconcile-journals";
 import { FINAL_RUN_STATES, type JournalEntry, type RunActRefusal } from "@/lib/serial/run/types";
@@ -63,6 +65,26 @@ function journalOf(core: BenchCore, kept: KeptRun): BenchJournal {
   });
 }
 
+/** What the device holds while new values are tried: every one was read back before the trial began. */
+function showTried(core: BenchCore, plan: CheckedPlan): void {
+  const { driver } = core.line ?? {};
+  const { reading, device } = core.store.getState();
+  if (!driver || !reading || !device) return;
+  const { backup } = plan.input;
+  const values = { ...backup.values, ...Object.fromEntries(plan.changes.map(({ key, planned }) => [key, planned])) };
+  const content = backupContent(driver, { values, unreadable: backup.unreadable }, device.identity.firmware);
+  core.store.setState({ edits: [], reading: { ...reading, content, activeSlot: plan.activeSlot, rasterOut: plan.rasterAfter } });
+}
+
+/** Shows the slot that the trial looks at now. */
+export async function lookAt(core: BenchCore, slot: number): Promise<void> {
+  await act(core, (run) => run.look(slot));
+  const { reading, run } = core.store.getState();
+  const { driver } = core.line ?? {};
+  if (!driver || !reading || run?.view.state !== "trying" || run.view.notLookedAt.includes(slot)) return;
+  core.store.setState({ reading: { ...reading, activeSlot: slot, rasterOut: rasterOfSlot(driver, new Map(Object.entries(reading.content.values)), slot) } });
+}
+
 function show(core: BenchCore, run: Run, plan: CheckedPlan, notice: string | null = null): void {
   core.store.setState((state) => ({
     activity: FINAL_RUN_STATES.includes(run.view.state) ? (state.activity === "running" ? "idle" : state.activity) : "running",
@@ -94,8 +116,11 @@ function follow(core: BenchCore, run: Run, plan: CheckedPlan, kept: KeptRun, jou
   core.run = run;
   show(core, run, plan);
   let hasEnded = false;
+  let isTried = false;
   run.onView((view) => {
     show(core, run, plan);
+    if (view.state === "trying" && !isTried) showTried(core, plan);
+    isTried = view.state === "trying";
     if (!hasEnded && FINAL_RUN_STATES.includes(view.state) && !view.busy) {
       hasEnded = true;
       void afterEnd(core, run, kept, journal);
