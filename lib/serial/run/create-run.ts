@@ -2,15 +2,13 @@ import { fail, ok, type Result } from "@/lib/result";
 import type { Clock } from "@/lib/serial/clock";
 import { compiledDriver } from "@/lib/serial/plan/compiled-driver";
 import { isCheckedPlan } from "@/lib/serial/plan/plan-changes";
-import { rasterOfSlot } from "@/lib/serial/plan/output-raster";
 import type { CheckedPlan } from "@/lib/serial/plan/types";
 import type { DeviceIdentity, DeviceSession } from "@/lib/serial/session/types";
-import { arrivingProblem, backupProblem } from "./ready-problem";
+import { lookAt, mayLookAt, startWriting } from "./run-acts";
 import { RunCore, type Turn } from "./run-core";
 import { FACTS_AT_START, factsFrom, type RunFacts } from "./run-facts";
 import { goalOf } from "./run-goal";
-import { arrive, beginTrial, finishForward, keepTrial, putBack, trialSeconds, writeForward } from "./run-procedures";
-import { readWhole, recall, timer } from "./run-requests";
+import { arrive, beginTrial, finishForward, keepTrial, putBack } from "./run-procedures";
 import { FINAL_RUN_STATES, type JournalEntry, type JournalStore, type RunActRefusal, type RunState, type RunView } from "./types";
 
 export const COUNTDOWN_SECONDS = { min: 10, default: 30, max: 120 } as const;
@@ -72,56 +70,6 @@ async function takeTurns(core: RunCore, first: Turn): Promise<void> {
     if (taken === MAX_TURNS) throw new Error("A run did not come to rest");
     turn = await TURNS[turn](core);
   }
-}
-
-async function startWriting(core: RunCore): Promise<Turn> {
-  const { session, goal } = core;
-  if (session === null) return "rest";
-  if (!(await core.record({ kind: "word", word: "keep" }))) return "rest";
-  const read = await readWhole(core);
-  if (read === null) return "rest";
-  const arriving = await arrivingProblem(goal, session);
-  if (!arriving.ok) {
-    core.lose(arriving.error.message);
-    return "rest";
-  }
-  const problem = backupProblem(goal, read) || arriving.value;
-  if (problem !== "") {
-    await core.say("called-off", problem);
-    return "rest";
-  }
-  if (core.wantsBack) {
-    await core.say("called-off", "Stopped before anything was written.");
-    return "rest";
-  }
-  if (!(await core.say("writing"))) return "rest";
-  return writeForward(core, goal.plan.steps, goal.driver.definition.memory.deviceTimer !== undefined);
-}
-
-/** The slot is one that the plan changes, and what it puts out fits the screen as every raster of the plan does. */
-function mayLookAt(core: RunCore, slot: number): boolean {
-  const { plan, driver, allowed, homeSlot } = core.goal;
-  if (slot !== homeSlot && !plan.changedSlots.includes(slot)) return false;
-  const raster = rasterOfSlot(driver, new Map(Object.entries(core.goal.new)), slot);
-  return raster !== null && allowed(raster);
-}
-
-async function lookAt(core: RunCore, slot: number): Promise<Turn> {
-  core.endCountdown();
-  const raster = rasterOfSlot(core.goal.driver, new Map(Object.entries(core.goal.new)), slot);
-  const outcome = await recall(core, slot, "forward", raster);
-  if (outcome === "lost") return "rest";
-  if (outcome === "done") core.lookedAt.add(slot);
-  if (core.wantsBack) return "put-back";
-  const { deviceTimer } = core.goal.driver.definition.memory;
-  if (deviceTimer !== undefined && !core.unarmed) {
-    const extended = await timer(core, "extend", trialSeconds(core));
-    if (extended === "lost") return "rest";
-    if (extended === "refused") return "arrive";
-    if (core.wantsBack) return "put-back";
-  }
-  core.startCountdown();
-  return "rest";
 }
 
 function sameDevice(a: DeviceIdentity, b: DeviceIdentity): boolean {
