@@ -6,15 +6,25 @@ import { replan } from "@/components/bench/store/review";
 import type { Activity, BenchBackup } from "@/components/bench/store/types";
 import type { BackupView } from "@/lib/contracts/backup";
 
+/** Progress is drawn at most this often. */
+const DRAW_MS = 100;
+
 /** Reads the whole device once and shows it. Null: it was stopped, or the link is gone. */
 async function readWhole(core: BenchCore, activity: Activity): Promise<TakenBackup | null> {
   const { line, store } = core;
   if (!line) return null;
   core.abort = new AbortController();
+  let drawnMs = 0;
   store.setState({ activity });
   const taken = await takeBackup(line.session, line.driver, {
     signal: core.abort.signal,
-    onProgress: (progress) => store.setState({ progress }),
+    onProgress: (progress) => {
+      // A reply comes every 2 ms; drawing each would keep the page from hearing the next.
+      const nowMs = core.around.clock.nowMs();
+      if (nowMs < drawnMs + DRAW_MS && progress.done > 0) return;
+      drawnMs = nowMs;
+      store.setState({ progress });
+    },
   });
   const arriving = taken.ok ? await line.session.arriving(core.abort.signal) : null;
   core.abort = null;
