@@ -3,7 +3,13 @@
 import { Button, ButtonLink } from "@/components/ui/button";
 
 /** The page itself failed. The digest is the number under which the server logged it. */
-export default function PageError({ error, reset }: { readonly error: Error & { digest?: string }; readonly reset: () => void }) {
+export default function PageError({
+  error,
+  reset,
+}: {
+  readonly error: Error & { digest?: string };
+  readonly reset: () => void;
+}) {
   return (
     <main className="gutter flex flex-1 flex-col items-start justify-center gap-4 py-16 md:px-16">
       <h1 className="text-3xl">This page failed</h1>

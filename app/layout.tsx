@@ -37,7 +37,9 @@ export default async function RootLayout({ children }: { readonly children: Reac
     >
       <body>
         <Providers nonce={nonce}>
-          <BenchProvider account={user === null ? null : { id: user.id, name: user.name, role: user.role }}>{children}</BenchProvider>
+          <BenchProvider account={user === null ? null : { id: user.id, name: user.name, role: user.role }}>
+            {children}
+          </BenchProvider>
         </Providers>
       </body>
     </html>

@@ -3,8 +3,14 @@ import { standardRaster } from "@/lib/timing/standards";
 
 const reasons = [
   ["Backups stay", "Every slot of every device, by date, with what changed between two."],
-  ["Writes have a way back", "A change is checked, tried for as long as you say, and put back by itself unless you keep it."],
-  ["Screens are remembered", "What each CRT takes and where that figure comes from, so that checks need no second thought."],
+  [
+    "Writes have a way back",
+    "A change is checked, tried for as long as you say, and put back by itself unless you keep it.",
+  ],
+  [
+    "Screens are remembered",
+    "What each CRT takes and where that figure comes from, so that checks need no second thought.",
+  ],
 ] as const;
 
 /** What an account is for, beside the forms that lead to one. */

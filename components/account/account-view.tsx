@@ -23,7 +23,11 @@ export function AccountView() {
     <div className="gutter pb-12 md:px-16">
       <PageHead
         title="Account"
-        lead={account.data === undefined ? "Loading" : `${account.data.email}, ${account.data.role}, since ${formatDate(new Date(account.data.createdAt))}`}
+        lead={
+          account.data === undefined
+            ? "Loading"
+            : `${account.data.email}, ${account.data.role}, since ${formatDate(new Date(account.data.createdAt))}`
+        }
       />
       <div className="grid grid-cols-1 gap-x-14 gap-y-8 border-t border-line pt-6 lg:grid-cols-2">
         <section aria-labelledby="name-head">

@@ -14,7 +14,8 @@ const systems = [
   [/\bLinux\b/u, "Linux"],
 ] as const;
 
-const firstOf = (table: readonly (readonly [RegExp, string])[], text: string) => table.find(([pattern]) => pattern.test(text))?.[1];
+const firstOf = (table: readonly (readonly [RegExp, string])[], text: string) =>
+  table.find(([pattern]) => pattern.test(text))?.[1];
 
 /** A session's browser in words: "Firefox on Linux". Enough to tell one's own apart. */
 export function browserName(userAgent: string | null): string {

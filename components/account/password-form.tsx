@@ -16,13 +16,17 @@ import type { PasswordChange } from "@/lib/contracts/account";
 export function PasswordForm() {
   const toast = useToast();
   const change = useChangePassword();
-  const form = useForm<PasswordChange>({ resolver: zodResolver(passwordChange), defaultValues: { current: "", next: "" } });
+  const form = useForm<PasswordChange>({
+    resolver: zodResolver(passwordChange),
+    defaultValues: { current: "", next: "" },
+  });
   const { errors } = form.formState;
   const save = (given: PasswordChange) =>
     change.mutate(given, {
       onSuccess: ({ revoked }) => {
         form.reset();
-        const others = revoked === 0 ? "" : ` ${formatCount(revoked, "other browser was", "other browsers were")} signed out.`;
+        const others =
+          revoked === 0 ? "" : ` ${formatCount(revoked, "other browser was", "other browsers were")} signed out.`;
         toast({ text: `Password changed.${others}` });
       },
       onError: (error) => showFieldErrors<PasswordChange>(error, ["current", "next"], form.setError),
@@ -34,7 +38,13 @@ export function PasswordForm() {
         label="Password now"
         type="password"
         autoComplete="current-password"
-        error={errors.current === undefined ? undefined : (errors.current.type === "too_small" ? "Type the password you have now." : errors.current.message)}
+        error={
+          errors.current === undefined
+            ? undefined
+            : errors.current.type === "too_small"
+              ? "Type the password you have now."
+              : errors.current.message
+        }
         {...form.register("current")}
       />
       <TextField

@@ -25,7 +25,10 @@ async function register(given: Registration): Promise<boolean> {
 /** Makes an account. */
 export function RegisterForm({ returnPath }: { readonly returnPath: string }) {
   const router = useRouter();
-  const form = useForm<Registration>({ resolver: zodResolver(registration), defaultValues: { name: "", email: "", password: "" } });
+  const form = useForm<Registration>({
+    resolver: zodResolver(registration),
+    defaultValues: { name: "", email: "", password: "" },
+  });
   const { errors } = form.formState;
   const make = useMutation({
     mutationFn: register,
@@ -36,9 +39,26 @@ export function RegisterForm({ returnPath }: { readonly returnPath: string }) {
     onError: (error) => showFieldErrors<Registration>(error, ["name", "email", "password"], form.setError),
   });
   return (
-    <form noValidate method="post" onSubmit={(event) => void form.handleSubmit((given) => make.mutate(given))(event)} className="flex flex-col gap-4">
-      <TextField label="Name" hint="Shown beside what you publish." autoComplete="name" error={errors.name === undefined ? undefined : "Give a name of up to 80 characters."} {...form.register("name")} />
-      <TextField label="E-mail address" type="email" autoComplete="username" error={errors.email === undefined ? undefined : "This is no e-mail address."} {...form.register("email")} />
+    <form
+      noValidate
+      method="post"
+      onSubmit={(event) => void form.handleSubmit((given) => make.mutate(given))(event)}
+      className="flex flex-col gap-4"
+    >
+      <TextField
+        label="Name"
+        hint="Shown beside what you publish."
+        autoComplete="name"
+        error={errors.name === undefined ? undefined : "Give a name of up to 80 characters."}
+        {...form.register("name")}
+      />
+      <TextField
+        label="E-mail address"
+        type="email"
+        autoComplete="username"
+        error={errors.email === undefined ? undefined : "This is no e-mail address."}
+        {...form.register("email")}
+      />
       <TextField
         label="Password"
         type="password"

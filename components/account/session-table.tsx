@@ -33,8 +33,18 @@ export function SessionTable({ headId }: { readonly headId: string }) {
         </span>
       ),
     },
-    { id: "since", header: "Signed in", sortBy: (row) => row.createdAt, cell: (row) => <span className="figure">{formatMoment(new Date(row.createdAt))}</span> },
-    { id: "seen", header: "Last seen", sortBy: (row) => row.lastSeenAt, cell: (row) => <span className="figure">{formatMoment(new Date(row.lastSeenAt))}</span> },
+    {
+      id: "since",
+      header: "Signed in",
+      sortBy: (row) => row.createdAt,
+      cell: (row) => <span className="figure">{formatMoment(new Date(row.createdAt))}</span>,
+    },
+    {
+      id: "seen",
+      header: "Last seen",
+      sortBy: (row) => row.lastSeenAt,
+      cell: (row) => <span className="figure">{formatMoment(new Date(row.lastSeenAt))}</span>,
+    },
     {
       id: "act",
       header: "Acts",
@@ -67,7 +77,8 @@ export function SessionTable({ headId }: { readonly headId: string }) {
               disabled={revokeOthers.isPending}
               onClick={() =>
                 revokeOthers.mutate(undefined, {
-                  onSuccess: ({ revoked }) => toast({ text: `${formatCount(revoked, "other browser was", "other browsers were")} signed out.` }),
+                  onSuccess: ({ revoked }) =>
+                    toast({ text: `${formatCount(revoked, "other browser was", "other browsers were")} signed out.` }),
                 })
               }
             >
@@ -79,7 +90,13 @@ export function SessionTable({ headId }: { readonly headId: string }) {
       {sessions.error === null ? null : <ProblemMessage error={sessions.error} />}
       {revoke.error === null ? null : <ProblemMessage error={revoke.error} />}
       {revokeOthers.error === null ? null : <ProblemMessage error={revokeOthers.error} />}
-      <DataTable caption="Browsers that are signed in" columns={columns} rows={rows} rowKey={(row) => row.id} sorting={{ id: "seen", desc: true }} />
+      <DataTable
+        caption="Browsers that are signed in"
+        columns={columns}
+        rows={rows}
+        rowKey={(row) => row.id}
+        sorting={{ id: "seen", desc: true }}
+      />
     </>
   );
 }

@@ -27,13 +27,26 @@ export function SignInForm({ returnPath }: { readonly returnPath: string }) {
   });
   const isWrong = enter.error instanceof ApiProblem && enter.error.problem.status === 401;
   return (
-    <form noValidate method="post" onSubmit={(event) => void form.handleSubmit((given) => enter.mutate(given))(event)} className="flex flex-col gap-4">
-      <TextField label="E-mail address" type="email" autoComplete="username" error={errors.email?.message} {...form.register("email")} />
+    <form
+      noValidate
+      method="post"
+      onSubmit={(event) => void form.handleSubmit((given) => enter.mutate(given))(event)}
+      className="flex flex-col gap-4"
+    >
+      <TextField
+        label="E-mail address"
+        type="email"
+        autoComplete="username"
+        error={errors.email?.message}
+        {...form.register("email")}
+      />
       <TextField
         label="Password"
         type="password"
         autoComplete="current-password"
-        error={isWrong ? "Address or password is wrong." : errors.password === undefined ? undefined : "Type your password."}
+        error={
+          isWrong ? "Address or password is wrong." : errors.password === undefined ? undefined : "Type your password."
+        }
         {...form.register("password")}
       />
       {enter.error === null || isWrong ? null : <ProblemMessage error={enter.error} />}

@@ -9,13 +9,17 @@ const accountKey = ["account"] as const;
 const sessionsKey = ["sessions"] as const;
 
 export function useAccount() {
-  return useQuery({ queryKey: accountKey, queryFn: ({ signal }) => callApi("/api/account", { shape: accountView, signal }) });
+  return useQuery({
+    queryKey: accountKey,
+    queryFn: ({ signal }) => callApi("/api/account", { shape: accountView, signal }),
+  });
 }
 
 export function useRenameAccount() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: (change: AccountChange) => callApi("/api/account", { method: "PATCH", body: change, shape: accountView }),
+    mutationFn: (change: AccountChange) =>
+      callApi("/api/account", { method: "PATCH", body: change, shape: accountView }),
     onSuccess: (account) => client.setQueryData(accountKey, account),
   });
 }
@@ -23,13 +27,17 @@ export function useRenameAccount() {
 export function useChangePassword() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: (change: PasswordChange) => callApi("/api/account/password", { method: "PUT", body: change, shape: sessionsRevoked }),
+    mutationFn: (change: PasswordChange) =>
+      callApi("/api/account/password", { method: "PUT", body: change, shape: sessionsRevoked }),
     onSuccess: () => client.invalidateQueries({ queryKey: sessionsKey }),
   });
 }
 
 export function useSessions() {
-  return useQuery({ queryKey: sessionsKey, queryFn: ({ signal }) => callApi("/api/sessions", { shape: sessionList, signal }) });
+  return useQuery({
+    queryKey: sessionsKey,
+    queryFn: ({ signal }) => callApi("/api/sessions", { shape: sessionList, signal }),
+  });
 }
 
 export function useRevokeSession() {

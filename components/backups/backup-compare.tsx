@@ -17,20 +17,43 @@ function allChanges(comparison: BackupComparison): readonly Change[] {
 }
 
 /** What changed between two backups of a device: at first from the known good one, or the one before, to the last. */
-export function BackupCompare({ rows, knownGoodId }: { readonly rows: readonly BackupView[]; readonly knownGoodId: string | null }) {
+export function BackupCompare({
+  rows,
+  knownGoodId,
+}: {
+  readonly rows: readonly BackupView[];
+  readonly knownGoodId: string | null;
+}) {
   const last = rows[0];
   const before = rows.find((row) => row.id === knownGoodId && row.id !== last?.id) ?? rows[1];
   const [leftId, setLeft] = useState(before?.id ?? null);
   const [rightId, setRight] = useState(last?.id ?? null);
   const comparison = useBackupComparison(leftId, rightId);
-  const options = rows.map((row) => ({ value: row.id, label: `${row.name}, ${formatMoment(new Date(row.takenAt))}${row.knownGood ? ", known good" : ""}` }));
+  const options = rows.map((row) => ({
+    value: row.id,
+    label: `${row.name}, ${formatMoment(new Date(row.takenAt))}${row.knownGood ? ", known good" : ""}`,
+  }));
   const changes = comparison.data === undefined ? null : allChanges(comparison.data);
   return (
     <section aria-labelledby="compare-head" className="mt-9">
-      <PartHead id="compare-head" title="What changed" aside={changes === null ? "" : formatCount(changes.length, "value", "values")} />
-      <div className="grid grid-cols-1 max-w-3xl gap-4 sm:grid-cols-2">
-        <SelectField label="From" options={options} value={leftId ?? ""} onChange={(event) => setLeft(event.target.value)} />
-        <SelectField label="To" options={options} value={rightId ?? ""} onChange={(event) => setRight(event.target.value)} />
+      <PartHead
+        id="compare-head"
+        title="What changed"
+        aside={changes === null ? "" : formatCount(changes.length, "value", "values")}
+      />
+      <div className="grid max-w-3xl grid-cols-1 gap-4 sm:grid-cols-2">
+        <SelectField
+          label="From"
+          options={options}
+          value={leftId ?? ""}
+          onChange={(event) => setLeft(event.target.value)}
+        />
+        <SelectField
+          label="To"
+          options={options}
+          value={rightId ?? ""}
+          onChange={(event) => setRight(event.target.value)}
+        />
       </div>
       <div className="mt-3" aria-live="polite">
         {comparison.error === null ? null : <ProblemMessage error={comparison.error} />}
@@ -41,7 +64,12 @@ export function BackupCompare({ rows, knownGoodId }: { readonly rows: readonly B
         ) : changes.length === 0 ? (
           <p className="text-muted">Both hold the same.</p>
         ) : (
-          <ChangeTable caption="What changed between the two backups" leftName={comparison.data?.left.name ?? ""} rightName={comparison.data?.right.name ?? ""} changes={changes} />
+          <ChangeTable
+            caption="What changed between the two backups"
+            leftName={comparison.data?.left.name ?? ""}
+            rightName={comparison.data?.right.name ?? ""}
+            changes={changes}
+          />
         )}
       </div>
     </section>

@@ -51,11 +51,18 @@ export function BackupDetailView({ id }: { readonly id: string }) {
         </section>
         <section className="min-w-0">
           <PartHead title="Put out" aside={rasterOut === null ? "" : rasterWords(rasterOut)} />
-          {rasterOut === null ? <p className="text-muted">Nothing was put out.</p> : <LineWaveform timing={rasterOut} />}
-          <p className="mt-4 text-muted">{data.arriving === null ? "Nothing arrived." : `Arrived: ${sourceWords(data.arriving)}.`}</p>
+          {rasterOut === null ? (
+            <p className="text-muted">Nothing was put out.</p>
+          ) : (
+            <LineWaveform timing={rasterOut} />
+          )}
+          <p className="mt-4 text-muted">
+            {data.arriving === null ? "Nothing arrived." : `Arrived: ${sourceWords(data.arriving)}.`}
+          </p>
           {content.unreadable.length === 0 ? null : (
             <p className="mt-2 text-muted">
-              {formatCount(content.unreadable.length, "setting", "settings")} cannot be read on this device, so no restore changes them.
+              {formatCount(content.unreadable.length, "setting", "settings")} cannot be read on this device, so no
+              restore changes them.
             </p>
           )}
         </section>
@@ -72,7 +79,8 @@ function Facts({ backup }: { readonly backup: BackupDetail }) {
   const values = Object.keys(backup.content.values).length;
   return (
     <>
-      Taken {formatMoment(new Date(backup.takenAt))} {causeWords[backup.cause]}, firmware {backup.firmware}; {formatCount(values, "value", "values")}, {changedWords(backup.changedValues)}
+      Taken {formatMoment(new Date(backup.takenAt))} {causeWords[backup.cause]}, firmware {backup.firmware};{" "}
+      {formatCount(values, "value", "values")}, {changedWords(backup.changedValues)}
       {backup.changedValues === null ? " backup of this device" : " since the one before"}
       {backup.knownGood ? "; known good" : ""}.
     </>

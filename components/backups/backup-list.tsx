@@ -28,15 +28,50 @@ export function BackupList({ device }: { readonly device: DeviceView }) {
   const [renaming, setRenaming] = useState<BackupView | null>(null);
   const rows = backups.data?.pages.flatMap((page) => page.items) ?? [];
   const columns: readonly DataColumn<BackupView>[] = [
-    { id: "taken", header: "Taken", sortBy: (row) => row.takenAt, cell: (row) => <span className="figure whitespace-nowrap">{formatMoment(new Date(row.takenAt))}</span> },
+    {
+      id: "taken",
+      header: "Taken",
+      sortBy: (row) => row.takenAt,
+      cell: (row) => <span className="figure whitespace-nowrap">{formatMoment(new Date(row.takenAt))}</span>,
+    },
     { id: "name", header: "Backup", phone: "head", sortBy: (row) => row.name, cell: (row) => <BackupName row={row} /> },
-    { id: "cause", header: "Why", sortBy: (row) => row.cause, cell: (row) => <span className="text-muted">{causeWords[row.cause]}</span> },
-    { id: "out", header: "Put out", cell: (row) => (row.rasterOut === null ? <span className="text-muted">nothing</span> : <ModeMark timing={row.rasterOut} />) },
-    { id: "slot", header: "Slot", align: "end", sortBy: (row) => row.activeSlot, cell: (row) => <span className="figure">{row.activeSlot}</span> },
-    { id: "changed", header: "Since the one before", sortBy: (row) => row.changedValues ?? -1, cell: (row) => <Changed row={row} /> },
-    { id: "acts", header: "Acts", hideHeader: true, align: "end", cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} /> },
+    {
+      id: "cause",
+      header: "Why",
+      sortBy: (row) => row.cause,
+      cell: (row) => <span className="text-muted">{causeWords[row.cause]}</span>,
+    },
+    {
+      id: "out",
+      header: "Put out",
+      cell: (row) =>
+        row.rasterOut === null ? <span className="text-muted">nothing</span> : <ModeMark timing={row.rasterOut} />,
+    },
+    {
+      id: "slot",
+      header: "Slot",
+      align: "end",
+      sortBy: (row) => row.activeSlot,
+      cell: (row) => <span className="figure">{row.activeSlot}</span>,
+    },
+    {
+      id: "changed",
+      header: "Since the one before",
+      sortBy: (row) => row.changedValues ?? -1,
+      cell: (row) => <Changed row={row} />,
+    },
+    {
+      id: "acts",
+      header: "Acts",
+      hideHeader: true,
+      align: "end",
+      cell: (row) => <BackupActs row={row} onRename={() => setRenaming(row)} />,
+    },
   ];
-  if (backups.error !== null) return <ProblemMessage error={backups.error} act={<Button onClick={() => void backups.refetch()}>Try again</Button>} />;
+  if (backups.error !== null)
+    return (
+      <ProblemMessage error={backups.error} act={<Button onClick={() => void backups.refetch()}>Try again</Button>} />
+    );
   if (backups.isPending) return <p className="text-muted">Loading</p>;
   if (rows.length === 0) {
     return (
@@ -47,14 +82,23 @@ export function BackupList({ device }: { readonly device: DeviceView }) {
   }
   return (
     <>
-      <DataTable caption={`Backups of ${device.name}`} columns={columns} rows={rows} rowKey={(row) => row.id} sorting={{ id: "taken", desc: true }} isMarked={(row) => row.knownGood} />
+      <DataTable
+        caption={`Backups of ${device.name}`}
+        columns={columns}
+        rows={rows}
+        rowKey={(row) => row.id}
+        sorting={{ id: "taken", desc: true }}
+        isMarked={(row) => row.knownGood}
+      />
       {backups.hasNextPage ? (
         <Button className="mt-4" disabled={backups.isFetchingNextPage} onClick={() => void backups.fetchNextPage()}>
           Show older ones
         </Button>
       ) : null}
       {rows.length > 1 ? <BackupCompare rows={rows} knownGoodId={device.knownGoodBackupId} /> : null}
-      {renaming === null ? null : <RenameBackup key={renaming.id} backup={renaming} onClose={() => setRenaming(null)} />}
+      {renaming === null ? null : (
+        <RenameBackup key={renaming.id} backup={renaming} onClose={() => setRenaming(null)} />
+      )}
     </>
   );
 }
@@ -93,7 +137,8 @@ function BackupActs({ row, onRename }: { readonly row: BackupView; readonly onRe
   const say = (error: unknown) => toast({ text: problemText(error).fact });
   // The row leaves with the backup, and callbacks of `mutate` with the row; promises stay.
   const onUndo = () => void undelete.mutateAsync(row.id).catch(say);
-  const onDelete = () => void remove.mutateAsync(row).then(() => toast({ text: `${row.name} was deleted.`, undo: { onUndo } }), say);
+  const onDelete = () =>
+    void remove.mutateAsync(row).then(() => toast({ text: `${row.name} was deleted.`, undo: { onUndo } }), say);
   const isHeld = row.plans > 0 || row.knownGood;
   const items: readonly MenuItem[] = [
     { kind: "link", label: "Look inside", href: `/backups/${row.id}` },
@@ -106,12 +151,24 @@ function BackupActs({ row, onRename }: { readonly row: BackupView; readonly onRe
       onAct: () =>
         pin.mutate(
           { backup: row, pinned: !row.knownGood },
-          { onSuccess: () => toast({ text: row.knownGood ? `${row.name} is no longer known good.` : `${row.name} is known good now.` }), onError: say },
+          {
+            onSuccess: () =>
+              toast({
+                text: row.knownGood ? `${row.name} is no longer known good.` : `${row.name} is known good now.`,
+              }),
+            onError: say,
+          },
         ),
     },
     { kind: "act", label: "Rename", onAct: onRename },
     { kind: "rule" },
-    { kind: "act", label: isHeld ? "Delete (a plan or the pin holds it)" : "Delete", tone: "halt", disabled: isHeld, onAct: onDelete },
+    {
+      kind: "act",
+      label: isHeld ? "Delete (a plan or the pin holds it)" : "Delete",
+      tone: "halt",
+      disabled: isHeld,
+      onAct: onDelete,
+    },
   ];
   return (
     <Menu

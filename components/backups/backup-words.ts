@@ -30,8 +30,12 @@ export function rasterWords(raster: RasterTiming): string {
 export type Standing = { readonly severity: "fits" | "caution" | "note"; readonly words: string };
 
 /** How the last backup stands to the pinned one. */
-export function standingOf(device: Pick<DeviceView, "knownGoodBackupId" | "differsFromKnownGood" | "lastBackup">): Standing {
+export function standingOf(
+  device: Pick<DeviceView, "knownGoodBackupId" | "differsFromKnownGood" | "lastBackup">,
+): Standing {
   if (device.lastBackup === null) return { severity: "caution", words: "never backed up" };
   if (device.knownGoodBackupId === null) return { severity: "note", words: "no backup is known good" };
-  return device.differsFromKnownGood === true ? { severity: "caution", words: "differs from known good" } : { severity: "fits", words: "as known good" };
+  return device.differsFromKnownGood === true
+    ? { severity: "caution", words: "differs from known good" }
+    : { severity: "fits", words: "as known good" };
 }

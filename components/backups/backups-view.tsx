@@ -34,11 +34,13 @@ export function BackupsView({ shown, now }: { readonly shown: string | null; rea
           </ButtonLink>
         }
       />
-      {devices.error === null ? null : <ProblemMessage error={devices.error} act={<Button onClick={() => void devices.refetch()}>Try again</Button>} />}
+      {devices.error === null ? null : (
+        <ProblemMessage error={devices.error} act={<Button onClick={() => void devices.refetch()}>Try again</Button>} />
+      )}
       {devices.isPending ? <p className="text-muted">Loading</p> : null}
       {devices.isSuccess && chosen === undefined ? <NoDevices /> : null}
       {chosen === undefined ? null : (
-        <div className="-mx-4 grid grid-cols-1 flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
+        <div className="-mx-4 grid flex-1 grid-cols-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
           <nav aria-label="Devices" className="border-line px-4 py-4 max-lg:border-b md:px-7 lg:border-r">
             <ul>
               {rows.map((device) => (
@@ -47,7 +49,7 @@ export function BackupsView({ shown, now }: { readonly shown: string | null; rea
             </ul>
             <DemoNoteFor ownerIds={[user?.id]} className="mt-5" />
           </nav>
-          <div className="min-w-0 px-4 pt-5 pb-10 md:px-7">
+          <div className="min-w-0 px-4 pb-10 pt-5 md:px-7">
             <DeviceHead key={chosen.id} device={chosen} />
             <BackupList key={`backups of ${chosen.id}`} device={chosen} />
           </div>
@@ -75,7 +77,15 @@ function NoDevices() {
   );
 }
 
-function DeviceLink({ device, isCurrent, now }: { readonly device: DeviceView; readonly isCurrent: boolean; readonly now: Date }) {
+function DeviceLink({
+  device,
+  isCurrent,
+  now,
+}: {
+  readonly device: DeviceView;
+  readonly isCurrent: boolean;
+  readonly now: Date;
+}) {
   const standing = standingOf(device);
   const { lastBackup } = device;
   const raster = lastBackup?.rasterOut ?? null;
@@ -85,11 +95,16 @@ function DeviceLink({ device, isCurrent, now }: { readonly device: DeviceView; r
         href={`/backups?device=${device.id}`}
         scroll={false}
         aria-current={isCurrent ? "true" : undefined}
-        className={classNames("block border-b border-line px-3 py-2.5 hover:bg-surface", isCurrent && "bg-surface shadow-[inset_3px_0_0_var(--lamp)]")}
+        className={classNames(
+          "block border-b border-line px-3 py-2.5 hover:bg-surface",
+          isCurrent && "bg-surface shadow-[inset_3px_0_0_var(--lamp)]",
+        )}
       >
         <span className="flex items-baseline justify-between gap-3">
           <span className="font-strong">{device.name}</span>
-          <span className="text-sm text-muted">{lastBackup === null ? "" : formatAgo(new Date(lastBackup.takenAt), now)}</span>
+          <span className="text-sm text-muted">
+            {lastBackup === null ? "" : formatAgo(new Date(lastBackup.takenAt), now)}
+          </span>
         </span>
         {raster === null ? (
           <span className="block text-sm text-muted">{lastBackup === null ? "" : "put nothing out"}</span>
@@ -102,7 +117,9 @@ function DeviceLink({ device, isCurrent, now }: { readonly device: DeviceView; r
         <span className="mt-0.5 block text-sm">
           <FindingWord severity={standing.severity}>{standing.words}</FindingWord>
         </span>
-        {device.openRun === null ? null : <span className="block text-sm font-strong">A run is open: {device.openRun.state}</span>}
+        {device.openRun === null ? null : (
+          <span className="block text-sm font-strong">A run is open: {device.openRun.state}</span>
+        )}
       </Link>
     </li>
   );

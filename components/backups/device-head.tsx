@@ -21,10 +21,16 @@ export function DeviceHead({ device }: { readonly device: DeviceView }) {
   return (
     <div className="mb-4 flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
       <div className="min-w-0 flex-1">
-        <h2 className="text-2xl break-words">{device.name}</h2>
+        <h2 className="break-words text-2xl">{device.name}</h2>
         <p className="text-muted">
           {deviceWords(device)}
-          {device.serialNumber === null ? ", told by its owner" : <>, serial number <span className="figure">{device.serialNumber}</span></>}
+          {device.serialNumber === null ? (
+            ", told by its owner"
+          ) : (
+            <>
+              , serial number <span className="figure">{device.serialNumber}</span>
+            </>
+          )}
         </p>
         <LastRaster device={device} />
       </div>
@@ -38,13 +44,25 @@ function LastRaster({ device }: { readonly device: DeviceView }) {
   const screens = useScreens();
   const raster = device.lastBackup?.rasterOut ?? null;
   const screen = screens.data?.find((each) => each.id === device.screen?.id);
-  if (raster === null) return device.screen === null ? <p className="text-muted">No screen is set.</p> : <p className="text-muted">Before it: {device.screen.name}</p>;
+  if (raster === null)
+    return device.screen === null ? (
+      <p className="text-muted">No screen is set.</p>
+    ) : (
+      <p className="text-muted">Before it: {device.screen.name}</p>
+    );
   const fit = screen === undefined ? null : fitOf(raster, screen.envelope);
   return (
     <p className="mt-1">
-      Last seen: <span className="figure">{modeName(raster)}, {rasterWords(raster)}</span>
+      Last seen:{" "}
+      <span className="figure">
+        {modeName(raster)}, {rasterWords(raster)}
+      </span>
       {device.screen === null ? <span className="text-muted">, no screen is set</span> : <> on {device.screen.name} </>}
-      {fit === null ? null : <FindingWord severity={fit.fits ? "fits" : "stop"}>{fit.fits ? "in range" : `out of range: ${fit.words.split("; ")[0]}`}</FindingWord>}
+      {fit === null ? null : (
+        <FindingWord severity={fit.fits ? "fits" : "stop"}>
+          {fit.fits ? "in range" : `out of range: ${fit.words.split("; ")[0]}`}
+        </FindingWord>
+      )}
     </p>
   );
 }
@@ -58,7 +76,10 @@ function EditDevice({ device, onClose }: { readonly device: DeviceView; readonly
   const [name, setName] = useState(device.name);
   const [screenId, setScreenId] = useState(device.screen?.id ?? "");
   const [asking, setAsking] = useState(false);
-  const options = [{ value: "", label: "No screen" }, ...(screens.data ?? []).map((screen) => ({ value: screen.id, label: screen.name }))];
+  const options = [
+    { value: "", label: "No screen" },
+    ...(screens.data ?? []).map((screen) => ({ value: screen.id, label: screen.name })),
+  ];
   const save = () =>
     change.mutate(
       { device, change: { name: name.trim(), screenId: screenId === "" ? null : screenId } },
@@ -98,8 +119,20 @@ function EditDevice({ device, onClose }: { readonly device: DeviceView; readonly
       }
     >
       <div className="flex flex-col gap-4">
-        <TextField label="Name" maxLength={80} value={name} error={name.trim() === "" ? "Give the device a name." : undefined} onChange={(event) => setName(event.target.value)} />
-        <SelectField label="Screen before it" hint="Every check uses what this screen takes." options={options} value={screenId} onChange={(event) => setScreenId(event.target.value)} />
+        <TextField
+          label="Name"
+          maxLength={80}
+          value={name}
+          error={name.trim() === "" ? "Give the device a name." : undefined}
+          onChange={(event) => setName(event.target.value)}
+        />
+        <SelectField
+          label="Screen before it"
+          hint="Every check uses what this screen takes."
+          options={options}
+          value={screenId}
+          onChange={(event) => setScreenId(event.target.value)}
+        />
         {change.error === null ? null : <ProblemMessage error={change.error} />}
         {remove.error === null ? null : <ProblemMessage error={remove.error} />}
       </div>

@@ -36,7 +36,13 @@ export function RenameBackup({ backup, onClose }: { readonly backup: BackupView;
           if (wanted !== "") rename.mutate({ backup, name: wanted }, { onSuccess: onClose });
         }}
       >
-        <TextField label="Name" maxLength={120} value={name} error={wanted === "" ? "Give the backup a name." : undefined} onChange={(event) => setName(event.target.value)} />
+        <TextField
+          label="Name"
+          maxLength={120}
+          value={name}
+          error={wanted === "" ? "Give the backup a name." : undefined}
+          onChange={(event) => setName(event.target.value)}
+        />
       </form>
       {rename.error === null ? null : <ProblemMessage error={rename.error} />}
     </Dialog>

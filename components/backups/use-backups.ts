@@ -16,7 +16,8 @@ const PAGE = 50;
 export function useDevices() {
   return useQuery({
     queryKey: devicesKey,
-    queryFn: async ({ signal }) => (await callApi(`/api/devices?limit=${MOST_DEVICES}`, { shape: devicePage, signal })).items,
+    queryFn: async ({ signal }) =>
+      (await callApi(`/api/devices?limit=${MOST_DEVICES}`, { shape: devicePage, signal })).items,
   });
 }
 
@@ -27,7 +28,10 @@ export function useBackups(deviceId: string | null) {
     enabled: deviceId !== null,
     initialPageParam: null as string | null,
     queryFn: ({ pageParam, signal }) =>
-      callApi(`/api/devices/${deviceId}/backups?limit=${PAGE}${pageParam === null ? "" : `&cursor=${encodeURIComponent(pageParam)}`}`, { shape: backupPage, signal }),
+      callApi(
+        `/api/devices/${deviceId}/backups?limit=${PAGE}${pageParam === null ? "" : `&cursor=${encodeURIComponent(pageParam)}`}`,
+        { shape: backupPage, signal },
+      ),
     getNextPageParam: (page) => page.nextCursor,
   });
 }
@@ -55,7 +59,10 @@ export function useBackupComparison(left: string | null, right: string | null) {
 function useReadAgain() {
   const client = useQueryClient();
   return async () => {
-    await Promise.all([client.invalidateQueries({ queryKey: backupsKey }), client.invalidateQueries({ queryKey: devicesKey })]);
+    await Promise.all([
+      client.invalidateQueries({ queryKey: backupsKey }),
+      client.invalidateQueries({ queryKey: devicesKey }),
+    ]);
   };
 }
 
@@ -63,7 +70,12 @@ export function useRenameBackup() {
   const onSuccess = useReadAgain();
   return useMutation({
     mutationFn: ({ backup, name }: { readonly backup: BackupView; readonly name: string }) =>
-      callApi(`/api/backups/${backup.id}`, { method: "PATCH", body: { name }, ifMatch: `"${backup.version}"`, shape: backupView }),
+      callApi(`/api/backups/${backup.id}`, {
+        method: "PATCH",
+        body: { name },
+        ifMatch: `"${backup.version}"`,
+        shape: backupView,
+      }),
     onSuccess,
   });
 }
@@ -79,24 +91,38 @@ export function usePinBackup() {
 
 export function useDeleteBackup() {
   const onSuccess = useReadAgain();
-  return useMutation({ mutationFn: (backup: BackupView) => callApi(`/api/backups/${backup.id}`, { method: "DELETE" }), onSuccess });
+  return useMutation({
+    mutationFn: (backup: BackupView) => callApi(`/api/backups/${backup.id}`, { method: "DELETE" }),
+    onSuccess,
+  });
 }
 
 export function useUndeleteBackup() {
   const onSuccess = useReadAgain();
-  return useMutation({ mutationFn: (id: string) => callApi(`/api/backups/${id}/undelete`, { method: "POST", shape: backupView }), onSuccess });
+  return useMutation({
+    mutationFn: (id: string) => callApi(`/api/backups/${id}/undelete`, { method: "POST", shape: backupView }),
+    onSuccess,
+  });
 }
 
 export function useChangeDevice() {
   const onSuccess = useReadAgain();
   return useMutation({
     mutationFn: ({ device, change }: { readonly device: DeviceView; readonly change: DeviceChange }) =>
-      callApi(`/api/devices/${device.id}`, { method: "PATCH", body: change, ifMatch: `"${device.version}"`, shape: deviceView }),
+      callApi(`/api/devices/${device.id}`, {
+        method: "PATCH",
+        body: change,
+        ifMatch: `"${device.version}"`,
+        shape: deviceView,
+      }),
     onSuccess,
   });
 }
 
 export function useDeleteDevice() {
   const onSuccess = useReadAgain();
-  return useMutation({ mutationFn: (device: DeviceView) => callApi(`/api/devices/${device.id}`, { method: "DELETE" }), onSuccess });
+  return useMutation({
+    mutationFn: (device: DeviceView) => callApi(`/api/devices/${device.id}`, { method: "DELETE" }),
+    onSuccess,
+  });
 }

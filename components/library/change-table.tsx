@@ -4,7 +4,12 @@ import { ChangedRing } from "@/components/ui/finding-icon";
 import { neutralSetting } from "@/lib/profile/neutral-settings";
 import { patternOf } from "@/lib/profile/paths";
 
-export type Change = { readonly path: string; readonly left?: unknown; readonly right?: unknown; readonly unit?: string | undefined };
+export type Change = {
+  readonly path: string;
+  readonly left?: unknown;
+  readonly right?: unknown;
+  readonly unit?: string | undefined;
+};
 
 /** A value of a document as it stands on screen. */
 export function changeText(path: string, value: unknown, unit: string | undefined): string {
@@ -26,9 +31,15 @@ export function ChangeTable({ caption, leftName, rightName, changes }: ChangeTab
       <caption className="sr-only">{caption}</caption>
       <thead>
         <tr className="border-b border-line text-left text-sm text-muted">
-          <th scope="col" className="py-1.5 pr-4 font-[500]">Value</th>
-          <th scope="col" className="w-1/4 py-1.5 pr-4 font-[500] break-words">{leftName}</th>
-          <th scope="col" className="w-1/4 py-1.5 font-[500] break-words">{rightName}</th>
+          <th scope="col" className="py-1.5 pr-4 font-[500]">
+            Value
+          </th>
+          <th scope="col" className="w-1/4 break-words py-1.5 pr-4 font-[500]">
+            {leftName}
+          </th>
+          <th scope="col" className="w-1/4 break-words py-1.5 font-[500]">
+            {rightName}
+          </th>
         </tr>
       </thead>
       <tbody>
@@ -38,8 +49,10 @@ export function ChangeTable({ caption, leftName, rightName, changes }: ChangeTab
               <ChangedRing className="mr-2" />
               {settingName(change.path)}
             </th>
-            <td className="figure py-1.5 pr-4 break-words text-muted">{changeText(change.path, change.left, change.unit)}</td>
-            <td className="figure py-1.5 break-words">{changeText(change.path, change.right, change.unit)}</td>
+            <td className="figure break-words py-1.5 pr-4 text-muted">
+              {changeText(change.path, change.left, change.unit)}
+            </td>
+            <td className="figure break-words py-1.5">{changeText(change.path, change.right, change.unit)}</td>
           </tr>
         ))}
       </tbody>

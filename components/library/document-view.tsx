@@ -20,7 +20,9 @@ const cell = "py-2 pr-4 align-middle";
 export function placementWords(placement: ProfileSlot["placement"]): string {
   if (placement === undefined) return "";
   const { offsetPx, offsetLines, widthPct, heightPct } = placement;
-  const size = [widthPct, heightPct].filter((part) => part !== undefined).map((part) => formatFigure(part, "%", { decimals: 1 }));
+  const size = [widthPct, heightPct]
+    .filter((part) => part !== undefined)
+    .map((part) => formatFigure(part, "%", { decimals: 1 }));
   const offset = [
     ...(offsetPx === undefined ? [] : [formatFigure(offsetPx, "px")]),
     ...(offsetLines === undefined ? [] : [formatFigure(offsetLines, Math.abs(offsetLines) === 1 ? "line" : "lines")]),
@@ -36,31 +38,62 @@ export function sourceWords(expects: ProfileSlot["expects"]): string {
 }
 
 /** Slots of a document on tape, with what each names. */
-export function SlotTable({ document, activeSlot }: { readonly document: ProfileDocument; readonly activeSlot?: number }) {
+export function SlotTable({
+  document,
+  activeSlot,
+}: {
+  readonly document: ProfileDocument;
+  readonly activeSlot?: number;
+}) {
   const slots = document.slots ?? [];
   const modes = new Map((document.modes ?? []).map((mode) => [mode.key, mode]));
   if (slots.length === 0) return <p className="text-muted">It names no slots.</p>;
   return (
     <ul className="border-t border-line">
       {slots.map((slot) => (
-        <SlotRow key={slot.number} slot={slot} mode={slot.mode === undefined ? undefined : modes.get(slot.mode)} isActive={slot.number === activeSlot} />
+        <SlotRow
+          key={slot.number}
+          slot={slot}
+          mode={slot.mode === undefined ? undefined : modes.get(slot.mode)}
+          isActive={slot.number === activeSlot}
+        />
       ))}
     </ul>
   );
 }
 
-function SlotRow({ slot, mode, isActive }: { readonly slot: ProfileSlot; readonly mode: ProfileMode | undefined; readonly isActive: boolean }) {
+function SlotRow({
+  slot,
+  mode,
+  isActive,
+}: {
+  readonly slot: ProfileSlot;
+  readonly mode: ProfileMode | undefined;
+  readonly isActive: boolean;
+}) {
   const timing = drawable(mode?.timing);
-  const details = [sourceWords(slot.expects), placementWords(slot.placement), slot.input === undefined ? "" : `from ${slot.input}`, slot.syncKind === undefined ? "" : `${syncKindWords[slot.syncKind]} sync`, slot.outputKind ?? ""].filter((part) => part !== "");
+  const details = [
+    sourceWords(slot.expects),
+    placementWords(slot.placement),
+    slot.input === undefined ? "" : `from ${slot.input}`,
+    slot.syncKind === undefined ? "" : `${syncKindWords[slot.syncKind]} sync`,
+    slot.outputKind ?? "",
+  ].filter((part) => part !== "");
   const isEmpty = mode === undefined && slot.mode === undefined && details.length === 0;
   return (
-    <li className={`grid items-center gap-x-4 gap-y-1 border-b border-line py-2 sm:grid-cols-[28px_minmax(0,200px)_200px_minmax(0,1fr)] ${isActive ? "bg-surface shadow-[inset_3px_0_0_var(--lamp)]" : ""}`}>
+    <li
+      className={`grid items-center gap-x-4 gap-y-1 border-b border-line py-2 sm:grid-cols-[28px_minmax(0,200px)_200px_minmax(0,1fr)] ${isActive ? "bg-surface shadow-[inset_3px_0_0_var(--lamp)]" : ""}`}
+    >
       <span className={`figure pl-2 ${isActive ? "text-lamp" : "text-muted"}`}>
         {slot.number}
         {isActive ? <span className="sr-only">, active</span> : null}
       </span>
       <Tape name={slot.name ?? (isEmpty ? null : `Slot ${slot.number}`)} className="w-full" />
-      {timing === undefined ? <span className="figure text-muted">{slot.mode === undefined ? "" : `mode ${slot.mode}`}</span> : <ModeMark timing={timing} />}
+      {timing === undefined ? (
+        <span className="figure text-muted">{slot.mode === undefined ? "" : `mode ${slot.mode}`}</span>
+      ) : (
+        <ModeMark timing={timing} />
+      )}
       <span className="figure text-muted">{details.join("  ")}</span>
     </li>
   );
@@ -76,13 +109,27 @@ export function ModeTable({ document }: { readonly document: ProfileDocument }) 
         <caption className="sr-only">Modes with their rasters</caption>
         <thead>
           <tr className="border-b border-line">
-            <th scope="col" className={head}>Mode</th>
-            <th scope="col" className={head}>Raster</th>
-            <th scope="col" className={head}>Line rate</th>
-            <th scope="col" className={head}>Field rate</th>
-            <th scope="col" className={head}>Clock</th>
-            <th scope="col" className={head}>Across, clocks</th>
-            <th scope="col" className={head}>Down, lines</th>
+            <th scope="col" className={head}>
+              Mode
+            </th>
+            <th scope="col" className={head}>
+              Raster
+            </th>
+            <th scope="col" className={head}>
+              Line rate
+            </th>
+            <th scope="col" className={head}>
+              Field rate
+            </th>
+            <th scope="col" className={head}>
+              Clock
+            </th>
+            <th scope="col" className={head}>
+              Across, clocks
+            </th>
+            <th scope="col" className={head}>
+              Down, lines
+            </th>
           </tr>
         </thead>
         <tbody>
@@ -98,7 +145,8 @@ export function ModeTable({ document }: { readonly document: ProfileDocument }) 
 function ModeRow({ mode }: { readonly mode: ProfileMode }) {
   const timing = drawable(mode.timing);
   if (timing === undefined) return null;
-  const axis = ({ active, frontPorch, sync, backPorch }: RasterTiming["horizontal"]) => [active, frontPorch, sync, backPorch].map((part) => formatNumber(part)).join(" + ");
+  const axis = ({ active, frontPorch, sync, backPorch }: RasterTiming["horizontal"]) =>
+    [active, frontPorch, sync, backPorch].map((part) => formatNumber(part)).join(" + ");
   return (
     <tr className="border-b border-line">
       <th scope="row" className={`${cell} text-left font-strong`}>

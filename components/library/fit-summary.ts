@@ -12,5 +12,8 @@ export function fitSummary(outline: ProfileOutline, envelope: ScreenEnvelope): F
   const fitting = timings.filter((timing) => fitOf(timing, envelope).fits).length;
   if (fitting === timings.length) return { severity: "fits", words: "fits this screen" };
   if (timings.length === 1) return { severity: "stop", words: "its mode doesn’t fit" };
-  return { severity: "stop", words: fitting === 0 ? "no mode fits" : `${timings.length - fitting} of ${timings.length} modes don’t fit` };
+  return {
+    severity: "stop",
+    words: fitting === 0 ? "no mode fits" : `${timings.length - fitting} of ${timings.length} modes don’t fit`,
+  };
 }

@@ -24,7 +24,10 @@ export function ImportButton() {
     setFileName(file.name);
     take.mutate(file, {
       onSuccess: ({ profile, unknownFields }) => {
-        const kept = unknownFields.length === 0 ? "" : ` It has ${unknownFields.length} fields that this version does not know; they were kept.`;
+        const kept =
+          unknownFields.length === 0
+            ? ""
+            : ` It has ${unknownFields.length} fields that this version does not know; they were kept.`;
         toast({ text: `${profile.title} was imported. Only you see it until you share it.${kept}` });
         router.push(`/library/${profile.id}`);
       },

@@ -1,36 +1,31 @@
 "use client";
 
-import Link from "next/link";
 import { usePathname, useRouter } from "next/navigation";
 import { useEffect, useState } from "react";
-import { fitSummary } from "@/components/library/fit-summary";
 import { ImportButton } from "@/components/library/import-button";
-import { drawable } from "@/components/library/document-view";
+import { ProfileTable } from "@/components/library/profile-table";
 import { chosenScreen, useScreenOptions } from "@/components/library/use-my-screen";
-import type { ScreenOption } from "@/components/library/use-my-screen";
 import { useProfiles } from "@/components/library/use-profiles";
 import { DemoNoteFor } from "@/components/shell/demo-people";
 import { signInPath } from "@/components/shell/navigation";
 import { useSignedIn } from "@/components/shell/signed-in";
 import { Button, ButtonLink } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
-import { DataTable } from "@/components/ui/data-table";
-import type { DataColumn } from "@/components/ui/data-table";
 import { EmptyState } from "@/components/ui/empty-state";
 import { inputLook, SelectField } from "@/components/ui/field";
-import { formatCount, formatLineRateSpan } from "@/components/ui/figures";
-import { FindingWord } from "@/components/ui/finding-icon";
-import { formatDate } from "@/components/ui/moments";
+import { formatCount } from "@/components/ui/figures";
 import { PageHead } from "@/components/ui/page-head";
 import { ProblemMessage } from "@/components/ui/problem-message";
-import { ModeMark } from "@/components/video/mode-glyph";
-import type { ProfileSummary } from "@/lib/contracts/profile";
 
-export type LibraryWish = { readonly q: string; readonly screen: string | null; readonly mine: boolean; readonly fitting: boolean };
+export type LibraryWish = {
+  readonly q: string;
+  readonly screen: string | null;
+  readonly mine: boolean;
+  readonly fitting: boolean;
+};
 
 /** Time to finish a word before it is searched for. */
 const TYPING_MS = 250;
-const MODES_SHOWN = 2;
 
 /** Profiles, searched and held against a screen. The address holds the whole wish, so it can be shared. */
 export function LibraryView({ wish }: { readonly wish: LibraryWish }) {
@@ -39,7 +34,11 @@ export function LibraryView({ wish }: { readonly wish: LibraryWish }) {
   const pathname = usePathname();
   const options = useScreenOptions();
   const screen = chosenScreen(options, wish.screen);
-  const profiles = useProfiles({ q: wish.q, mine: wish.mine && user !== null, fittingScreenId: wish.fitting ? screen.ownId : null });
+  const profiles = useProfiles({
+    q: wish.q,
+    mine: wish.mine && user !== null,
+    fittingScreenId: wish.fitting ? screen.ownId : null,
+  });
   const rows = profiles.data?.pages.flatMap((page) => page.items) ?? [];
   const go = (change: Partial<LibraryWish>) => {
     const next = { ...wish, ...change };
@@ -66,21 +65,41 @@ export function LibraryView({ wish }: { readonly wish: LibraryWish }) {
       />
       <div className="grid grid-cols-1 items-end gap-x-4 gap-y-3 border-t border-line py-4 sm:grid-cols-[minmax(0,1fr)_minmax(180px,280px)] lg:grid-cols-[minmax(0,420px)_minmax(180px,280px)_auto_1fr]">
         <SearchField q={wish.q} onSearch={(q) => go({ q })} />
-        <SelectField label="Hold against" options={options} value={screen.value} onChange={(event) => go({ screen: event.target.value, fitting: false })} />
+        <SelectField
+          label="Hold against"
+          options={options}
+          value={screen.value}
+          onChange={(event) => go({ screen: event.target.value, fitting: false })}
+        />
         <div className="flex flex-wrap gap-x-5 pb-1.5">
-          {screen.ownId === null ? null : <Checkbox label="Only those that fit" checked={wish.fitting} onChange={(fitting) => go({ fitting })} />}
+          {screen.ownId === null ? null : (
+            <Checkbox label="Only those that fit" checked={wish.fitting} onChange={(fitting) => go({ fitting })} />
+          )}
           {user === null ? null : <Checkbox label="Only mine" checked={wish.mine} onChange={(mine) => go({ mine })} />}
         </div>
         <p aria-live="polite" className="pb-1.5 text-sm text-muted lg:text-right">
-          {profiles.isPending ? "Loading" : `${formatCount(rows.length, "profile", "profiles")}${profiles.hasNextPage ? ", more below" : ""}`}
+          {profiles.isPending
+            ? "Loading"
+            : `${formatCount(rows.length, "profile", "profiles")}${profiles.hasNextPage ? ", more below" : ""}`}
         </p>
       </div>
-      {profiles.error === null ? null : <ProblemMessage error={profiles.error} act={<Button onClick={() => void profiles.refetch()}>Try again</Button>} />}
+      {profiles.error === null ? null : (
+        <ProblemMessage
+          error={profiles.error}
+          act={<Button onClick={() => void profiles.refetch()}>Try again</Button>}
+        />
+      )}
       {rows.length > 0 ? <ProfileTable rows={rows} screen={screen} /> : null}
-      {profiles.isSuccess && rows.length === 0 ? <NothingFound wish={wish} onClear={() => go({ q: "", mine: false, fitting: false })} /> : null}
+      {profiles.isSuccess && rows.length === 0 ? (
+        <NothingFound wish={wish} onClear={() => go({ q: "", mine: false, fitting: false })} />
+      ) : null}
       <DemoNoteFor ownerIds={rows.map((row) => row.owner.id)} className="mt-6" />
       {profiles.hasNextPage ? (
-        <Button className="mt-4 self-start" disabled={profiles.isFetchingNextPage} onClick={() => void profiles.fetchNextPage()}>
+        <Button
+          className="mt-4 self-start"
+          disabled={profiles.isFetchingNextPage}
+          onClick={() => void profiles.fetchNextPage()}
+        >
           Show more
         </Button>
       ) : null}
@@ -107,7 +126,15 @@ function SearchField({ q, onSearch }: { readonly q: string; readonly onSearch: (
       <label htmlFor="library-search" className="font-strong">
         Search
       </label>
-      <input id="library-search" type="search" maxLength={100} value={typed} placeholder="240 lines, upright" onChange={(event) => setTyped(event.target.value)} className={inputLook} />
+      <input
+        id="library-search"
+        type="search"
+        maxLength={100}
+        value={typed}
+        placeholder="240 lines, upright"
+        onChange={(event) => setTyped(event.target.value)}
+        className={inputLook}
+      />
     </div>
   );
 }
@@ -115,66 +142,13 @@ function SearchField({ q, onSearch }: { readonly q: string; readonly onSearch: (
 function NothingFound({ wish, onClear }: { readonly wish: LibraryWish; readonly onClear: () => void }) {
   const isNarrow = wish.q !== "" || wish.mine || wish.fitting;
   return (
-    <EmptyState title={isNarrow ? "Nothing matches" : "The library is empty"} act={isNarrow ? <Button onClick={onClear}>Show all profiles</Button> : undefined}>
-      {isNarrow ? "No profile has all of these words, or fits this screen." : "Publish a backup of yours, or import a .porch.json file."}
+    <EmptyState
+      title={isNarrow ? "Nothing matches" : "The library is empty"}
+      act={isNarrow ? <Button onClick={onClear}>Show all profiles</Button> : undefined}
+    >
+      {isNarrow
+        ? "No profile has all of these words, or fits this screen."
+        : "Publish a backup of yours, or import a .porch.json file."}
     </EmptyState>
-  );
-}
-
-function ProfileTable({ rows, screen }: { readonly rows: readonly ProfileSummary[]; readonly screen: ScreenOption }) {
-  const { envelope } = screen;
-  const columns: readonly DataColumn<ProfileSummary>[] = [
-    {
-      id: "title",
-      header: "Profile",
-      phone: "head",
-      sortBy: (row) => row.title,
-      cell: (row) => (
-        <>
-          <Link href={profileHref(row.id, screen)} className="text-lg font-strong hover:underline">
-            {row.title}
-          </Link>
-          {row.visibility === "private" ? <span className="ml-2 text-sm text-muted">private</span> : null}
-          <span className="block max-w-[60ch] text-sm text-muted">{row.summary}</span>
-        </>
-      ),
-    },
-    { id: "modes", header: "Modes", sortBy: (row) => row.lineRateHz?.[0], cell: (row) => <OutlineModes row={row} /> },
-    ...(envelope === null
-      ? []
-      : [
-          {
-            id: "fit",
-            header: "On this screen",
-            sortBy: (row: ProfileSummary) => fitSummary(row.outline, envelope).severity,
-            cell: (row: ProfileSummary) => {
-              const fit = fitSummary(row.outline, envelope);
-              return <FindingWord severity={fit.severity}>{fit.words}</FindingWord>;
-            },
-          } satisfies DataColumn<ProfileSummary>,
-        ]),
-    { id: "slots", header: "Slots", align: "end", sortBy: (row) => row.outline.slotCount, cell: (row) => <span className="figure">{row.outline.slotCount}</span> },
-    { id: "by", header: "By", sortBy: (row) => row.owner.name, cell: (row) => row.owner.name },
-    { id: "revision", header: "Revision", align: "end", sortBy: (row) => row.currentRevision, cell: (row) => <span className="figure">{row.currentRevision}</span> },
-    { id: "changed", header: "Changed", sortBy: (row) => row.updatedAt, cell: (row) => <span className="figure whitespace-nowrap">{formatDate(new Date(row.updatedAt))}</span> },
-  ];
-  return <DataTable caption="Profiles" columns={columns} rows={rows} rowKey={(row) => row.id} />;
-}
-
-function profileHref(id: string, screen: ScreenOption): string {
-  return screen.value === "" ? `/library/${id}` : `/library/${id}?screen=${screen.value}`;
-}
-
-function OutlineModes({ row }: { readonly row: ProfileSummary }) {
-  const timings = row.outline.modes.flatMap((mode) => drawable(mode.timing) ?? []);
-  const more = row.outline.modeCount - Math.min(MODES_SHOWN, timings.length);
-  return (
-    <span className="flex flex-col gap-0.5">
-      {timings.slice(0, MODES_SHOWN).map((timing, index) => (
-        <ModeMark key={index} timing={timing} />
-      ))}
-      {more > 0 ? <span className="text-sm text-muted">{formatCount(more, "more", "more")}</span> : null}
-      {row.lineRateHz === null ? null : <span className="sr-only">{formatLineRateSpan(row.lineRateHz)}</span>}
-    </span>
   );
 }

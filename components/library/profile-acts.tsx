@@ -22,7 +22,8 @@ export function ProfileActs({ profile, revision }: { readonly profile: ProfileDe
   const isShared = profile.visibility === "shared";
   const change = () =>
     setVisibility.mutate(isShared ? "private" : "shared", {
-      onSuccess: () => toast({ text: isShared ? "Only you see this profile now." : "Everybody sees this profile now." }),
+      onSuccess: () =>
+        toast({ text: isShared ? "Only you see this profile now." : "Everybody sees this profile now." }),
       onError: say,
     });
   const items: readonly MenuItem[] = [

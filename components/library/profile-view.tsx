@@ -18,7 +18,11 @@ import { ProblemMessage } from "@/components/ui/problem-message";
 import type { ProfileDetail } from "@/lib/contracts/profile";
 import type { ProfileDocument } from "@/lib/profile/document";
 
-export type ProfileViewProps = { readonly id: string; readonly revision: number | null; readonly screen: string | null };
+export type ProfileViewProps = {
+  readonly id: string;
+  readonly revision: number | null;
+  readonly screen: string | null;
+};
 
 /** A profile: what it holds, how it stands to a screen, its revisions, and the way to apply it. */
 export function ProfileView({ id, revision, screen }: ProfileViewProps) {
@@ -38,7 +42,11 @@ export function ProfileView({ id, revision, screen }: ProfileViewProps) {
   const shown = revision === null ? profile.data?.revision : older.data;
   if (profile.data === undefined || shown === undefined) return <p className="gutter py-8 text-muted">Loading</p>;
   const { document, number } = shown;
-  const goScreen = (value: string) => router.replace(`/library/${id}?${new URLSearchParams({ screen: value, ...(revision === null ? {} : { revision: String(revision) }) })}`, { scroll: false });
+  const goScreen = (value: string) =>
+    router.replace(
+      `/library/${id}?${new URLSearchParams({ screen: value, ...(revision === null ? {} : { revision: String(revision) }) })}`,
+      { scroll: false },
+    );
   return (
     <>
       <div className="gutter">
@@ -49,7 +57,7 @@ export function ProfileView({ id, revision, screen }: ProfileViewProps) {
           acts={<ProfileActs profile={profile.data} revision={number} />}
         />
       </div>
-      <div className="gutter grid grid-cols-1 flex-1 gap-x-10 border-t border-line lg:grid-cols-[minmax(0,1fr)_minmax(300px,380px)]">
+      <div className="gutter grid flex-1 grid-cols-1 gap-x-10 border-t border-line lg:grid-cols-[minmax(0,1fr)_minmax(300px,380px)]">
         <div className="min-w-0 space-y-8 py-5">
           <section>
             <PartHead title="Slots" aside={<MadeFor document={document} />} />
@@ -72,7 +80,13 @@ export function ProfileView({ id, revision, screen }: ProfileViewProps) {
           <ScreenCheck document={document} options={options} chosen={chosen} onChoose={goScreen} />
         </aside>
       </div>
-      <FootBar status={<span className="text-muted">The device is backed up first, and nothing reaches its non-volatile memory until you keep it.</span>}>
+      <FootBar
+        status={
+          <span className="text-muted">
+            The device is backed up first, and nothing reaches its non-volatile memory until you keep it.
+          </span>
+        }
+      >
         <ButtonLink kind="primary" href={`/bench?apply=${id}&revision=${number}`}>
           Apply
         </ButtonLink>
@@ -103,7 +117,9 @@ function ProfileLine({ profile, number }: { readonly profile: ProfileDetail; rea
 function MadeFor({ document }: { readonly document: ProfileDocument }) {
   const { screen, driver } = document.madeFor ?? {};
   const parts = [
-    ...(driver === undefined ? [] : [`taken from ${driver.slug}${driver.firmware === undefined ? "" : `, firmware ${driver.firmware}`}`]),
+    ...(driver === undefined
+      ? []
+      : [`taken from ${driver.slug}${driver.firmware === undefined ? "" : `, firmware ${driver.firmware}`}`]),
     ...(screen === undefined ? [] : [`made for ${screen.name}, ${bandsInShort(screen)}`]),
   ];
   return parts.length === 0 ? null : <>{parts.join("; ")}</>;

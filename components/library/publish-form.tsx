@@ -39,7 +39,14 @@ export function PublishForm({ backup, isBusy, error, onPublish }: PublishFormPro
   const form = useForm<PublishValues>({ defaultValues: { title: "", summary: "", notes: "", visibility: "private" } });
   const { errors } = form.formState;
   const publish = (values: PublishValues) =>
-    onPublish({ fromBackup: backup.id, slots: [...chosen].sort((a, b) => a - b), title: values.title.trim(), summary: values.summary, notes: values.notes, visibility: values.visibility });
+    onPublish({
+      fromBackup: backup.id,
+      slots: [...chosen].sort((a, b) => a - b),
+      title: values.title.trim(),
+      summary: values.summary,
+      notes: values.notes,
+      visibility: values.visibility,
+    });
   const toggle = (number: number, isOn: boolean) => {
     const next = new Set(chosen);
     if (isOn) next.add(number);
@@ -48,9 +55,13 @@ export function PublishForm({ backup, isBusy, error, onPublish }: PublishFormPro
   };
   return (
     <form noValidate onSubmit={(event) => void form.handleSubmit(publish)(event)} className="flex flex-1 flex-col">
-      <div className="gutter grid grid-cols-1 flex-1 gap-x-12 gap-y-8 border-t border-line pt-5 pb-8 lg:grid-cols-2">
+      <div className="gutter grid flex-1 grid-cols-1 gap-x-12 gap-y-8 border-t border-line pb-8 pt-5 lg:grid-cols-2">
         <section aria-labelledby="slots-head">
-          <PartHead id="slots-head" title="Slots" aside={`${chosen.size} of ${formatCount(slots.length, "slot", "slots")}`} />
+          <PartHead
+            id="slots-head"
+            title="Slots"
+            aside={`${chosen.size} of ${formatCount(slots.length, "slot", "slots")}`}
+          />
           <ul className="border-t border-line">
             {slots.map((slot) => {
               const timing = drawable(document.modes?.find((mode) => mode.key === slot.mode)?.timing);
@@ -77,7 +88,13 @@ export function PublishForm({ backup, isBusy, error, onPublish }: PublishFormPro
             {...form.register("title", { validate: (title) => title.trim() !== "" })}
           />
           <TextField label="Summary" maxLength={500} hint="One line for the list." {...form.register("summary")} />
-          <TextAreaField label="Notes" rows={6} maxLength={20_000} hint="What it was tested on, what to watch for." {...form.register("notes")} />
+          <TextAreaField
+            label="Notes"
+            rows={6}
+            maxLength={20_000}
+            hint="What it was tested on, what to watch for."
+            {...form.register("notes")}
+          />
           <div>
             <p className="mb-1.5 font-strong">Who sees it</p>
             <Controller
@@ -100,7 +117,17 @@ export function PublishForm({ backup, isBusy, error, onPublish }: PublishFormPro
           {error === null ? null : <ProblemMessage error={error} />}
         </section>
       </div>
-      <FootBar status={chosen.size === 0 ? <><strong>Not yet:</strong> choose at least one slot.</> : <span className="text-muted">Names of slots and modes are part of it; serial number and port are not.</span>}>
+      <FootBar
+        status={
+          chosen.size === 0 ? (
+            <>
+              <strong>Not yet:</strong> choose at least one slot.
+            </>
+          ) : (
+            <span className="text-muted">Names of slots and modes are part of it; serial number and port are not.</span>
+          )
+        }
+      >
         <Button type="submit" kind="primary" disabled={isBusy || chosen.size === 0}>
           Publish
         </Button>

@@ -29,7 +29,10 @@ export function PublishView({ backupId }: { readonly backupId: string | null }) 
   return (
     <div className="flex flex-1 flex-col">
       <div className="gutter">
-        <PageHead title="Publish a backup" lead="Some slots of a backup, with the modes that they use, as a neutral document that other makers’ devices can take too." />
+        <PageHead
+          title="Publish a backup"
+          lead="Some slots of a backup, with the modes that they use, as a neutral document that other makers’ devices can take too."
+        />
       </div>
       {problem === null ? null : (
         <div className="gutter pb-4">
@@ -38,27 +41,35 @@ export function PublishView({ backupId }: { readonly backupId: string | null }) 
       )}
       {devices.data?.length === 0 ? (
         <div className="gutter">
-          <EmptyState title="There is no backup to publish" act={<ButtonLink href="/bench">Connect a device</ButtonLink>}>
+          <EmptyState
+            title="There is no backup to publish"
+            act={<ButtonLink href="/bench">Connect a device</ButtonLink>}
+          >
             Back a device up on the Bench first; then its slots can be published from here.
           </EmptyState>
         </div>
       ) : (
-        <div className="gutter grid grid-cols-1 max-w-4xl gap-4 border-t border-line py-4 sm:grid-cols-2">
-          <SelectField
-            label="Device"
-            options={(devices.data ?? []).map((each) => ({ value: each.id, label: each.name }))}
-            value={device ?? ""}
-            onChange={(event) => {
-              setDeviceId(event.target.value);
-              setChosenId(null);
-            }}
-          />
-          <SelectField
-            label="Backup"
-            options={rows.map((row) => ({ value: row.id, label: `${row.name}, ${formatMoment(new Date(row.takenAt))}` }))}
-            value={wanted ?? ""}
-            onChange={(event) => setChosenId(event.target.value)}
-          />
+        <div className="gutter border-t border-line py-4">
+          <div className="grid max-w-4xl grid-cols-1 gap-4 sm:grid-cols-2">
+            <SelectField
+              label="Device"
+              options={(devices.data ?? []).map((each) => ({ value: each.id, label: each.name }))}
+              value={device ?? ""}
+              onChange={(event) => {
+                setDeviceId(event.target.value);
+                setChosenId(null);
+              }}
+            />
+            <SelectField
+              label="Backup"
+              options={rows.map((row) => ({
+                value: row.id,
+                label: `${row.name}, ${formatMoment(new Date(row.takenAt))}`,
+              }))}
+              value={wanted ?? ""}
+              onChange={(event) => setChosenId(event.target.value)}
+            />
+          </div>
         </div>
       )}
       {backup.data === undefined ? null : (

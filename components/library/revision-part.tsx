@@ -20,11 +20,21 @@ export function RevisionPart({ profileId, current, shown }: RevisionPartProps) {
   const rows = revisions.data ?? [];
   return (
     <section aria-labelledby="revisions-head">
-      <PartHead id="revisions-head" title="Revisions" aside={rows.length === 0 ? "" : formatCount(rows.length, "revision", "revisions")} />
+      <PartHead
+        id="revisions-head"
+        title="Revisions"
+        aside={rows.length === 0 ? "" : formatCount(rows.length, "revision", "revisions")}
+      />
       {revisions.error === null ? null : <ProblemMessage error={revisions.error} />}
       <ol className="border-t border-line">
         {rows.map((row) => (
-          <RevisionRow key={row.id} row={row} profileId={profileId} isShown={row.number === shown} isCurrent={row.number === current} />
+          <RevisionRow
+            key={row.id}
+            row={row}
+            profileId={profileId}
+            isShown={row.number === shown}
+            isCurrent={row.number === current}
+          />
         ))}
       </ol>
       {rows.length > 1 ? <RevisionCompare key={shown} profileId={profileId} rows={rows} shown={shown} /> : null}
@@ -32,12 +42,29 @@ export function RevisionPart({ profileId, current, shown }: RevisionPartProps) {
   );
 }
 
-function RevisionRow({ row, profileId, isShown, isCurrent }: { readonly row: RevisionView; readonly profileId: string; readonly isShown: boolean; readonly isCurrent: boolean }) {
+function RevisionRow({
+  row,
+  profileId,
+  isShown,
+  isCurrent,
+}: {
+  readonly row: RevisionView;
+  readonly profileId: string;
+  readonly isShown: boolean;
+  readonly isCurrent: boolean;
+}) {
   return (
-    <li className={`grid grid-cols-[36px_1fr_auto] items-baseline gap-x-3 border-b border-line py-1.5 pl-2 ${isShown ? "bg-surface shadow-[inset_3px_0_0_var(--lamp)]" : ""}`}>
+    <li
+      className={`grid grid-cols-[36px_1fr_auto] items-baseline gap-x-3 border-b border-line py-1.5 pl-2 ${isShown ? "bg-surface shadow-[inset_3px_0_0_var(--lamp)]" : ""}`}
+    >
       <span className="figure">{row.number}</span>
       <span className="min-w-0">
-        <Link href={isCurrent ? `/library/${profileId}` : `/library/${profileId}?revision=${row.number}`} aria-current={isShown ? "true" : undefined} scroll={false} className="hover:underline">
+        <Link
+          href={isCurrent ? `/library/${profileId}` : `/library/${profileId}?revision=${row.number}`}
+          aria-current={isShown ? "true" : undefined}
+          scroll={false}
+          className="hover:underline"
+        >
           {row.note === "" ? `Revision ${row.number}` : row.note}
         </Link>
         <span className="ml-2 text-sm text-muted">{row.author?.name ?? ""}</span>
@@ -47,22 +74,46 @@ function RevisionRow({ row, profileId, isShown, isCurrent }: { readonly row: Rev
   );
 }
 
-function RevisionCompare({ profileId, rows, shown }: { readonly profileId: string; readonly rows: readonly RevisionView[]; readonly shown: number }) {
+function RevisionCompare({
+  profileId,
+  rows,
+  shown,
+}: {
+  readonly profileId: string;
+  readonly rows: readonly RevisionView[];
+  readonly shown: number;
+}) {
   const before = rows.find((row) => row.number < shown) ?? rows.at(-1);
   const [left, setLeft] = useState(before?.number ?? shown);
   const [right, setRight] = useState(shown);
   const [leftRevision, rightRevision] = [useRevision(profileId, left), useRevision(profileId, right)];
   const changes = useMemo(
-    () => (leftRevision.data === undefined || rightRevision.data === undefined ? null : compareDocuments(leftRevision.data.document, rightRevision.data.document)),
+    () =>
+      leftRevision.data === undefined || rightRevision.data === undefined
+        ? null
+        : compareDocuments(leftRevision.data.document, rightRevision.data.document),
     [leftRevision.data, rightRevision.data],
   );
-  const options = rows.map((row) => ({ value: String(row.number), label: `Revision ${row.number}${row.note === "" ? "" : `, ${row.note.slice(0, 60)}`}` }));
+  const options = rows.map((row) => ({
+    value: String(row.number),
+    label: `Revision ${row.number}${row.note === "" ? "" : `, ${row.note.slice(0, 60)}`}`,
+  }));
   return (
     <div className="mt-6">
       <h3 className="mb-2 text-lg">Compare two revisions</h3>
-      <div className="grid grid-cols-1 max-w-2xl gap-4 sm:grid-cols-2">
-        <SelectField label="From" options={options} value={String(left)} onChange={(event) => setLeft(Number(event.target.value))} />
-        <SelectField label="To" options={options} value={String(right)} onChange={(event) => setRight(Number(event.target.value))} />
+      <div className="grid max-w-2xl grid-cols-1 gap-4 sm:grid-cols-2">
+        <SelectField
+          label="From"
+          options={options}
+          value={String(left)}
+          onChange={(event) => setLeft(Number(event.target.value))}
+        />
+        <SelectField
+          label="To"
+          options={options}
+          value={String(right)}
+          onChange={(event) => setRight(Number(event.target.value))}
+        />
       </div>
       <div className="mt-3" aria-live="polite">
         {leftRevision.error === null ? null : <ProblemMessage error={leftRevision.error} />}
@@ -71,7 +122,12 @@ function RevisionCompare({ profileId, rows, shown }: { readonly profileId: strin
         ) : changes.length === 0 ? (
           <p className="text-muted">They name the same.</p>
         ) : (
-          <ChangeTable caption={`What changed from revision ${left} to ${right}`} leftName={`Revision ${left}`} rightName={`Revision ${right}`} changes={changes} />
+          <ChangeTable
+            caption={`What changed from revision ${left} to ${right}`}
+            leftName={`Revision ${left}`}
+            rightName={`Revision ${right}`}
+            changes={changes}
+          />
         )}
       </div>
     </div>

@@ -41,13 +41,17 @@ export function useProfiles(wish: ProfileWish) {
 }
 
 export function useProfile(id: string) {
-  return useQuery({ queryKey: [...profilesKey, id], queryFn: ({ signal }) => callApi(`/api/profiles/${id}`, { shape: profileDetail, signal }) });
+  return useQuery({
+    queryKey: [...profilesKey, id],
+    queryFn: ({ signal }) => callApi(`/api/profiles/${id}`, { shape: profileDetail, signal }),
+  });
 }
 
 export function useRevisions(id: string) {
   return useQuery({
     queryKey: [...profilesKey, id, "revisions"],
-    queryFn: async ({ signal }) => (await callApi(`/api/profiles/${id}/revisions?limit=${MOST_REVISIONS}`, { shape: revisionPage, signal })).items,
+    queryFn: async ({ signal }) =>
+      (await callApi(`/api/profiles/${id}/revisions?limit=${MOST_REVISIONS}`, { shape: revisionPage, signal })).items,
   });
 }
 
@@ -64,7 +68,8 @@ export function useRevision(id: string, number: number | null) {
 export function usePublish() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: (profile: NewProfile) => callApi("/api/profiles", { method: "POST", body: profile, shape: profileDetail }),
+    mutationFn: (profile: NewProfile) =>
+      callApi("/api/profiles", { method: "POST", body: profile, shape: profileDetail }),
     onSuccess: () => client.invalidateQueries({ queryKey: profilesKey }),
   });
 }
@@ -81,7 +86,8 @@ export function useImport() {
 export function useSetVisibility(id: string) {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: (visibility: "private" | "shared") => callApi(`/api/profiles/${id}`, { method: "PATCH", body: { visibility }, shape: profileDetail }),
+    mutationFn: (visibility: "private" | "shared") =>
+      callApi(`/api/profiles/${id}`, { method: "PATCH", body: { visibility }, shape: profileDetail }),
     onSuccess: () => client.invalidateQueries({ queryKey: profilesKey }),
   });
 }

@@ -21,7 +21,9 @@ function sendable(envelope: ScreenEnvelope) {
     })),
     syncKinds: limits.syncKinds === undefined ? undefined : [...limits.syncKinds],
     syncVpp: limits.syncVpp === undefined ? undefined : ([limits.syncVpp[0], limits.syncVpp[1]] as [number, number]),
-    sources: Object.fromEntries(Object.entries(sources ?? {}).flatMap(([limit, source]) => (source === undefined ? [] : [[limit, source]]))),
+    sources: Object.fromEntries(
+      Object.entries(sources ?? {}).flatMap(([limit, source]) => (source === undefined ? [] : [[limit, source]])),
+    ),
   };
 }
 
@@ -44,7 +46,10 @@ export function NewScreenView({ presetId }: { readonly presetId: string | null }
       isBusy={add.isPending}
       error={add.error}
       onSave={(envelope, notes) =>
-        add.mutate({ envelope: sendable(envelope), notes, ...(preset === undefined ? {} : { presetId: preset.id }) }, { onSuccess: (screen) => router.push(`/screens?show=${screen.id}`) })
+        add.mutate(
+          { envelope: sendable(envelope), notes, ...(preset === undefined ? {} : { presetId: preset.id }) },
+          { onSuccess: (screen) => router.push(`/screens?show=${screen.id}`) },
+        )
       }
     />
   );
@@ -74,7 +79,10 @@ export function EditScreenView({ id }: { readonly id: string }) {
       isBusy={change.isPending}
       error={change.error}
       onSave={(next, nextNotes) =>
-        change.mutate({ change: { envelope: sendable(next), notes: nextNotes }, version }, { onSuccess: () => router.push(`/screens?show=${id}`) })
+        change.mutate(
+          { change: { envelope: sendable(next), notes: nextNotes }, version },
+          { onSuccess: () => router.push(`/screens?show=${id}`) },
+        )
       }
     />
   );

@@ -29,10 +29,12 @@ const rateText: Readonly<Partial<Record<RasterRule, (value: number) => string>>>
 function verdictWords(verdict: EnvelopeVerdict): string {
   if (verdict.rule === "interlace") return "this screen takes no interlace";
   const text = rateText[verdict.rule] ?? formatUs;
-  const side = verdict.max !== undefined && verdict.measured > verdict.max ? ["ends", verdict.max] : ["begins", verdict.min];
+  const side =
+    verdict.max !== undefined && verdict.measured > verdict.max ? ["ends", verdict.max] : ["begins", verdict.min];
   const [verb, limit] = side;
   if (typeof limit !== "number") return `${ruleWords[verdict.rule]} ${text(verdict.measured)}`;
-  const least = verdict.unit === "µs" ? `needs ${formatFigure(limit, "µs", { decimalsAtMost: 2 })}` : `${verb} at ${text(limit)}`;
+  const least =
+    verdict.unit === "µs" ? `needs ${formatFigure(limit, "µs", { decimalsAtMost: 2 })}` : `${verb} at ${text(limit)}`;
   return `${ruleWords[verdict.rule]} ${text(verdict.measured)}, this screen ${least}`;
 }
 

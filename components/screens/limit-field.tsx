@@ -10,7 +10,13 @@ import type { EnvelopeLimit, LimitSource } from "@/lib/timing/envelope";
 const sources = Object.keys(sourceWords) as readonly LimitSource[];
 
 /** Where a limit comes from: asked beside every limit. */
-export function SourceSelect({ limit, register }: { readonly limit: EnvelopeLimit; readonly register: UseFormRegister<ScreenForm> }) {
+export function SourceSelect({
+  limit,
+  register,
+}: {
+  readonly limit: EnvelopeLimit;
+  readonly register: UseFormRegister<ScreenForm>;
+}) {
   return (
     <select
       aria-label={`${limitWords[limit]}, where it comes from`}
@@ -28,8 +34,17 @@ export function SourceSelect({ limit, register }: { readonly limit: EnvelopeLimi
 }
 
 export type FigureName =
-  | "maxPixelClockMhz" | "minSyncUs" | "minBackPorchUs" | "minFieldBlankUs" | "loadOhm" | "syncMinV" | "syncMaxV"
-  | "hiddenLeftPct" | "hiddenRightPct" | "hiddenTopPct" | "hiddenBottomPct"
+  | "maxPixelClockMhz"
+  | "minSyncUs"
+  | "minBackPorchUs"
+  | "minFieldBlankUs"
+  | "loadOhm"
+  | "syncMinV"
+  | "syncMaxV"
+  | "hiddenLeftPct"
+  | "hiddenRightPct"
+  | "hiddenTopPct"
+  | "hiddenBottomPct"
   | `bands.${number}.${"lineMinKhz" | "lineMaxKhz" | "fieldMinHz" | "fieldMaxHz"}`;
 
 export type FigureFieldProps = {
@@ -59,7 +74,7 @@ export function FigureField({ name, label, unit, error, register }: FigureFieldP
           className={`${inputLook} figure pr-12 text-[14px]`}
           {...register(name)}
         />
-        <span aria-hidden className="figure pointer-events-none absolute top-1/2 right-3 -translate-y-1/2 text-muted">
+        <span aria-hidden className="figure pointer-events-none absolute right-3 top-1/2 -translate-y-1/2 text-muted">
           {unit}
         </span>
       </span>

@@ -52,10 +52,14 @@ export function aspectWords(aspect: string): string {
 
 /** A limit in words, one line each; empty where it is not known. */
 export function limitValues(envelope: ScreenEnvelope, limit: EnvelopeLimit): readonly string[] {
-  const number = (value: number | undefined, text: (value: number) => string) => (value === undefined ? [] : [text(value)]);
+  const number = (value: number | undefined, text: (value: number) => string) =>
+    value === undefined ? [] : [text(value)];
   switch (limit) {
     case "bands":
-      return envelope.bands.map((band) => `${formatLineRateSpan(band.lineRateHz)} at ${formatSpan(band.fieldRateHz, "Hz", { decimalsAtMost: 2 })}`);
+      return envelope.bands.map(
+        (band) =>
+          `${formatLineRateSpan(band.lineRateHz)} at ${formatSpan(band.fieldRateHz, "Hz", { decimalsAtMost: 2 })}`,
+      );
     case "interlace":
       return envelope.interlace === undefined ? [] : [envelope.interlace ? "taken" : "not taken"];
     case "maxPixelClockHz":
@@ -63,7 +67,9 @@ export function limitValues(envelope: ScreenEnvelope, limit: EnvelopeLimit): rea
     case "syncKinds":
       return envelope.syncKinds === undefined ? [] : [envelope.syncKinds.map((kind) => syncKindWords[kind]).join(", ")];
     case "syncVpp":
-      return envelope.syncVpp === undefined ? [] : [formatSpan(envelope.syncVpp, "V peak to peak", { decimalsAtMost: 2 })];
+      return envelope.syncVpp === undefined
+        ? []
+        : [formatSpan(envelope.syncVpp, "V peak to peak", { decimalsAtMost: 2 })];
     case "loadOhm":
       return number(envelope.loadOhm, (ohm) => formatFigure(ohm, "Ω"));
     case "minSyncUs":

@@ -13,7 +13,9 @@ import { standardNames, standardRaster } from "@/lib/timing/standards";
 const standards = standardNames.map((name) => ({ name, timing: standardRaster(name).timing }));
 
 /** Line counts whose rays help to read the plane: those of the standards. */
-const rayLines = [...new Set(standards.map(({ timing }) => linesPerField(timing)))].filter((lines) => Number.isInteger(lines));
+const rayLines = [...new Set(standards.map(({ timing }) => linesPerField(timing)))].filter((lines) =>
+  Number.isInteger(lines),
+);
 
 function pointsFor(envelope: ScreenEnvelope): readonly RatePoint[] {
   return standards.map(({ name, timing }) => ({
@@ -27,19 +29,39 @@ function pointsFor(envelope: ScreenEnvelope): readonly RatePoint[] {
 
 /** Where the standard rasters fall in the bands of a screen. */
 export function ScreenPlane({ envelope, heightPx }: { readonly envelope: ScreenEnvelope; readonly heightPx?: number }) {
-  return <RatePlane screenName={envelope.name} bands={envelope.bands} points={nearBands(pointsFor(envelope), envelope.bands)} rayLines={rayLines} heightPx={heightPx} />;
+  return (
+    <RatePlane
+      screenName={envelope.name}
+      bands={envelope.bands}
+      points={nearBands(pointsFor(envelope), envelope.bands)}
+      rayLines={rayLines}
+      heightPx={heightPx}
+    />
+  );
 }
 
 /** Each limit of a screen, with where it comes from. */
-export function LimitTable({ envelope, notes }: { readonly envelope: ScreenEnvelope; readonly notes?: Readonly<Partial<Record<EnvelopeLimit, string>>> | undefined }) {
+export function LimitTable({
+  envelope,
+  notes,
+}: {
+  readonly envelope: ScreenEnvelope;
+  readonly notes?: Readonly<Partial<Record<EnvelopeLimit, string>>> | undefined;
+}) {
   return (
     <table className="w-full border-collapse">
       <caption className="sr-only">Limits of {envelope.name}</caption>
       <thead>
         <tr className="border-b border-line text-left text-sm text-muted">
-          <th scope="col" className="py-1.5 pr-4 font-[500]">Limit</th>
-          <th scope="col" className="py-1.5 pr-4 font-[500]">Value</th>
-          <th scope="col" className="py-1.5 font-[500]">From</th>
+          <th scope="col" className="py-1.5 pr-4 font-[500]">
+            Limit
+          </th>
+          <th scope="col" className="py-1.5 pr-4 font-[500]">
+            Value
+          </th>
+          <th scope="col" className="py-1.5 font-[500]">
+            From
+          </th>
         </tr>
       </thead>
       <tbody>
@@ -51,7 +73,15 @@ export function LimitTable({ envelope, notes }: { readonly envelope: ScreenEnvel
   );
 }
 
-function LimitRow({ envelope, limit, note }: { readonly envelope: ScreenEnvelope; readonly limit: EnvelopeLimit; readonly note: string | undefined }) {
+function LimitRow({
+  envelope,
+  limit,
+  note,
+}: {
+  readonly envelope: ScreenEnvelope;
+  readonly limit: EnvelopeLimit;
+  readonly note: string | undefined;
+}) {
   const values = limitValues(envelope, limit);
   const source = envelope.sources?.[limit];
   return (
@@ -60,10 +90,26 @@ function LimitRow({ envelope, limit, note }: { readonly envelope: ScreenEnvelope
         {limitWords[limit]}
       </th>
       <td className="py-2 pr-4">
-        {values.length === 0 ? <span className="text-muted">not known, so not checked</span> : values.map((value) => <span key={value} className="figure block">{value}</span>)}
+        {values.length === 0 ? (
+          <span className="text-muted">not known, so not checked</span>
+        ) : (
+          values.map((value) => (
+            <span key={value} className="figure block">
+              {value}
+            </span>
+          ))
+        )}
         {note === undefined ? null : <span className="mt-0.5 block text-sm text-muted">{note}</span>}
       </td>
-      <td className="py-2">{values.length === 0 ? "" : source === undefined ? <span className="text-muted">not stated</span> : sourceWords[source]}</td>
+      <td className="py-2">
+        {values.length === 0 ? (
+          ""
+        ) : source === undefined ? (
+          <span className="text-muted">not stated</span>
+        ) : (
+          sourceWords[source]
+        )}
+      </td>
     </tr>
   );
 }
@@ -88,7 +134,13 @@ export function StandardFits({ envelope }: { readonly envelope: ScreenEnvelope }
 }
 
 /** A screen whole: name and acts, plane, standards, limits. */
-export function ScreenDetail({ envelope, above, acts, notes, foot }: {
+export function ScreenDetail({
+  envelope,
+  above,
+  acts,
+  notes,
+  foot,
+}: {
   readonly envelope: ScreenEnvelope;
   readonly above?: ReactNode;
   readonly acts?: ReactNode;
@@ -100,7 +152,7 @@ export function ScreenDetail({ envelope, above, acts, notes, foot }: {
       <div className="mb-4 flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
         <div className="min-w-0">
           {above === undefined ? null : <p className="text-sm text-muted">{above}</p>}
-          <h2 className="text-2xl break-words">{envelope.name}</h2>
+          <h2 className="break-words text-2xl">{envelope.name}</h2>
         </div>
         {acts === undefined ? null : <div className="flex flex-wrap gap-2.5">{acts}</div>}
       </div>
@@ -111,7 +163,7 @@ export function ScreenDetail({ envelope, above, acts, notes, foot }: {
           <StandardFits envelope={envelope} />
         </div>
       </div>
-      <h3 className="mt-6 mb-1 text-lg">Limits</h3>
+      <h3 className="mb-1 mt-6 text-lg">Limits</h3>
       <LimitTable envelope={envelope} notes={notes} />
       {foot}
     </article>

@@ -50,7 +50,12 @@ export function formFromEnvelope(envelope: ScreenEnvelope, notes: string): Scree
     minSyncUs: text(envelope.minSyncUs),
     minBackPorchUs: text(envelope.minBackPorchUs),
     minFieldBlankUs: text(envelope.minFieldBlankUs),
-    syncKinds: { separate: takes("separate"), composite: takes("composite"), onGreen: takes("onGreen"), onLuma: takes("onLuma") },
+    syncKinds: {
+      separate: takes("separate"),
+      composite: takes("composite"),
+      onGreen: takes("onGreen"),
+      onLuma: takes("onLuma"),
+    },
     syncMinV: text(syncVpp?.[0]),
     syncMaxV: text(syncVpp?.[1]),
     loadOhm: text(envelope.loadOhm),
@@ -64,7 +69,12 @@ export function formFromEnvelope(envelope: ScreenEnvelope, notes: string): Scree
 }
 
 /** A band to fill in. */
-export const emptyBand: ScreenForm["bands"][number] = { lineMinKhz: "", lineMaxKhz: "", fieldMinHz: "", fieldMaxHz: "" };
+export const emptyBand: ScreenForm["bands"][number] = {
+  lineMinKhz: "",
+  lineMaxKhz: "",
+  fieldMinHz: "",
+  fieldMaxHz: "",
+};
 
 /** Collects what cannot be read while the rest is. */
 class Reader {
@@ -81,7 +91,11 @@ class Reader {
     return Number((value * scale).toFixed(6));
   }
 
-  pair(paths: readonly [string, string], typed: readonly [string, string], scale = 1): readonly [number, number] | undefined {
+  pair(
+    paths: readonly [string, string],
+    typed: readonly [string, string],
+    scale = 1,
+  ): readonly [number, number] | undefined {
     const [low, high] = [this.figure(paths[0], typed[0], scale), this.figure(paths[1], typed[1], scale)];
     if (low !== undefined && high !== undefined) return [low, high];
     const missing = low === undefined ? 0 : 1;
@@ -98,7 +112,11 @@ class Reader {
     if (line !== undefined && field !== undefined) return { lineRateHz: line, fieldRateHz: field };
     const isEmpty = Object.values(band).every((value) => value.trim() === "");
     if (isEmpty) this.problems.push({ path: at("lineMinKhz"), message: "Fill this band in, or take it away." });
-    else if (this.problems.length === 0) this.problems.push({ path: at(line === undefined ? "lineMinKhz" : "fieldMinHz"), message: "A band needs line rates and field rates." });
+    else if (this.problems.length === 0)
+      this.problems.push({
+        path: at(line === undefined ? "lineMinKhz" : "fieldMinHz"),
+        message: "A band needs line rates and field rates.",
+      });
     return undefined;
   }
 }
@@ -154,7 +172,10 @@ export function envelopeFromForm(form: ScreenForm): Result<ScreenEnvelope, reado
     aspect: form.aspect === "" ? undefined : form.aspect,
     visiblePct: hiddenOf(form, reader),
   };
-  const problems = reader.problems.length > 0 ? reader.problems : envelopeProblems(stated).map(({ path, message }) => ({ path: fieldOf(path), message }));
+  const problems =
+    reader.problems.length > 0
+      ? reader.problems
+      : envelopeProblems(stated).map(({ path, message }) => ({ path: fieldOf(path), message }));
   if (problems.length > 0) return fail(problems);
   const sources = Object.fromEntries(
     (Object.keys(limitWords) as EnvelopeLimit[]).flatMap((limit) => {

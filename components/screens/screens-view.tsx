@@ -27,7 +27,9 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
   const mine = screens.data ?? [];
   const isWaiting = user !== null && screens.isPending;
   const chosen = mine.find((screen) => screen.id === shown);
-  const preset = screenPresets.find((each) => each.id === shown) ?? (shown === null && mine.length === 0 && !isWaiting ? screenPresets[0] : undefined);
+  const preset =
+    screenPresets.find((each) => each.id === shown) ??
+    (shown === null && mine.length === 0 && !isWaiting ? screenPresets[0] : undefined);
   const first = chosen ?? (preset === undefined ? mine[0] : undefined);
   return (
     <div className="gutter flex flex-1 flex-col">
@@ -40,11 +42,16 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
           </ButtonLink>
         }
       />
-      <div className="-mx-4 grid grid-cols-1 flex-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
-        <div className="px-4 py-4 max-lg:border-b lg:border-r md:px-7 border-line">
+      <div className="-mx-4 grid flex-1 grid-cols-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
+        <div className="border-line px-4 py-4 max-lg:border-b md:px-7 lg:border-r">
           <OwnScreens screens={mine} current={first?.id} isWaiting={isWaiting} />
-          {screens.error === null ? null : <ProblemMessage error={screens.error} act={<Button onClick={() => void screens.refetch()}>Try again</Button>} />}
-          <h2 className="mt-6 mb-1 text-lg">Standard envelopes</h2>
+          {screens.error === null ? null : (
+            <ProblemMessage
+              error={screens.error}
+              act={<Button onClick={() => void screens.refetch()}>Try again</Button>}
+            />
+          )}
+          <h2 className="mb-1 mt-6 text-lg">Standard envelopes</h2>
           <p className="mb-2 text-sm text-muted">To start from. The set’s service literature decides.</p>
           <ul>
             {screenPresets.map((each) => (
@@ -52,19 +59,32 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
             ))}
           </ul>
           <DemoNoteFor ownerIds={[user?.id]} className="mt-6" />
-          <p className="mt-6 border-l-3 border-edge pl-3 text-sm text-muted">
-            Inside a CRT cabinet voltages stay lethal after switch-off. Service work belongs to a licensed technician; local codes come first.
+          <p className="border-l-3 mt-6 border-edge pl-3 text-sm text-muted">
+            Inside a CRT cabinet voltages stay lethal after switch-off. Service work belongs to a licensed technician;
+            local codes come first.
           </p>
         </div>
-        <div className="min-w-0 px-4 pt-5 pb-10 md:px-7">
-          {first !== undefined ? <OwnScreenDetail key={first.id} screen={first} /> : preset !== undefined ? <PresetDetail preset={preset} /> : null}
+        <div className="min-w-0 px-4 pb-10 pt-5 md:px-7">
+          {first !== undefined ? (
+            <OwnScreenDetail key={first.id} screen={first} />
+          ) : preset !== undefined ? (
+            <PresetDetail preset={preset} />
+          ) : null}
         </div>
       </div>
     </div>
   );
 }
 
-function OwnScreens({ screens, current, isWaiting }: { readonly screens: readonly ScreenView[]; readonly current: string | undefined; readonly isWaiting: boolean }) {
+function OwnScreens({
+  screens,
+  current,
+  isWaiting,
+}: {
+  readonly screens: readonly ScreenView[];
+  readonly current: string | undefined;
+  readonly isWaiting: boolean;
+}) {
   const user = useSignedIn();
   return (
     <>
@@ -94,18 +114,33 @@ function OwnScreens({ screens, current, isWaiting }: { readonly screens: readonl
   );
 }
 
-function ScreenLink({ id, envelope, current, aside }: { readonly id: string; readonly envelope: ScreenEnvelope; readonly current: boolean; readonly aside?: string }) {
+function ScreenLink({
+  id,
+  envelope,
+  current,
+  aside,
+}: {
+  readonly id: string;
+  readonly envelope: ScreenEnvelope;
+  readonly current: boolean;
+  readonly aside?: string;
+}) {
   return (
     <li>
       <Link
         href={`/screens?show=${id}`}
         scroll={false}
         aria-current={current ? "true" : undefined}
-        className={classNames("block border-b border-line px-3 py-2 hover:bg-surface", current && "bg-surface shadow-[inset_3px_0_0_var(--lamp)]")}
+        className={classNames(
+          "block border-b border-line px-3 py-2 hover:bg-surface",
+          current && "bg-surface shadow-[inset_3px_0_0_var(--lamp)]",
+        )}
       >
         <span className="block font-strong">{envelope.name}</span>
         <span className="figure block text-muted">{bandsInShort(envelope)}</span>
-        {aside === undefined || aside === "" ? null : <span className="block text-sm text-muted">before it: {aside}</span>}
+        {aside === undefined || aside === "" ? null : (
+          <span className="block text-sm text-muted">before it: {aside}</span>
+        )}
       </Link>
     </li>
   );
@@ -142,7 +177,11 @@ function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
   return (
     <ScreenDetail
       envelope={screen.envelope}
-      above={screen.devices.length === 0 ? "No device stands before it" : `Before it: ${screen.devices.map((device) => device.name).join(", ")}`}
+      above={
+        screen.devices.length === 0
+          ? "No device stands before it"
+          : `Before it: ${screen.devices.map((device) => device.name).join(", ")}`
+      }
       acts={
         <>
           <ButtonLink href={`/screens/${screen.id}/edit`}>Edit</ButtonLink>
@@ -156,7 +195,7 @@ function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
         <>
           {screen.notes === "" ? null : (
             <>
-              <h3 className="mt-6 mb-1 text-lg">Notes</h3>
+              <h3 className="mb-1 mt-6 text-lg">Notes</h3>
               <p className="max-w-[70ch] whitespace-pre-wrap">{screen.notes}</p>
             </>
           )}

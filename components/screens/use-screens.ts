@@ -16,12 +16,16 @@ export function useScreens() {
   return useQuery({
     queryKey: screensKey,
     enabled: user !== null,
-    queryFn: async ({ signal }) => (await callApi(`/api/screens?limit=${MOST_SCREENS}`, { shape: screenPage, signal })).items,
+    queryFn: async ({ signal }) =>
+      (await callApi(`/api/screens?limit=${MOST_SCREENS}`, { shape: screenPage, signal })).items,
   });
 }
 
 export function useScreen(id: string) {
-  return useQuery({ queryKey: [...screensKey, id], queryFn: ({ signal }) => callApi(`/api/screens/${id}`, { shape: screenView, signal }) });
+  return useQuery({
+    queryKey: [...screensKey, id],
+    queryFn: ({ signal }) => callApi(`/api/screens/${id}`, { shape: screenView, signal }),
+  });
 }
 
 export function useAddScreen() {

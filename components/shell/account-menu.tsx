@@ -41,7 +41,10 @@ export function AccountMenu() {
   return (
     <Menu
       trigger={
-        <button type="button" className="inline-flex min-h-9 max-w-48 items-center gap-1.5 rounded-control px-2 font-[500] hover:bg-sunk">
+        <button
+          type="button"
+          className="inline-flex min-h-9 max-w-48 items-center gap-1.5 rounded-control px-2 font-[500] hover:bg-sunk"
+        >
           <span className="truncate">{user.name}</span>
           <ChevronDown aria-hidden size={15} className="shrink-0 text-muted" />
         </button>

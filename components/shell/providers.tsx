@@ -18,7 +18,9 @@ function makeClient(): QueryClient {
       queries: {
         staleTime: 15_000,
         retry: (failures, error) =>
-          failures < MAX_RETRIES && error instanceof ApiProblem && (error.problem.status === 0 || error.problem.status >= 500),
+          failures < MAX_RETRIES &&
+          error instanceof ApiProblem &&
+          (error.problem.status === 0 || error.problem.status >= 500),
       },
     },
   });

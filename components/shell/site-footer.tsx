@@ -4,9 +4,9 @@ import Link from "next/link";
 export function SiteFooter() {
   return (
     <footer className="gutter mt-auto flex flex-wrap items-start gap-x-14 gap-y-4 border-t border-line py-6 text-sm text-muted md:px-16">
-      <p className="max-w-[76ch] min-w-[min(100%,20rem)] flex-1">
-        A signal above or below a CRT’s range can damage it. Leave the screen unplugged until the device’s raster has been
-        read and fits. Work inside a cabinet belongs to a licensed technician.
+      <p className="min-w-[min(100%,20rem)] max-w-[76ch] flex-1">
+        A signal above or below a CRT’s range can damage it. Leave the screen unplugged until the device’s raster has
+        been read and fits. Work inside a cabinet belongs to a licensed technician.
       </p>
       <nav aria-label="More" className="flex flex-wrap gap-x-8 gap-y-2">
         <Link href="/library" className="hover:text-text">

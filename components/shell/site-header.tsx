@@ -19,7 +19,10 @@ export function SiteHeader() {
   const current = currentItem(pathname);
   return (
     <header className="gutter flex items-center gap-x-4 border-b border-line py-2.5 md:gap-x-7 md:py-3">
-      <a href="#main" className="sr-only rounded-control bg-surface px-3 py-2 focus:not-sr-only focus:absolute focus:top-2 focus:left-2 focus:z-50">
+      <a
+        href="#main"
+        className="sr-only rounded-control bg-surface px-3 py-2 focus:not-sr-only focus:absolute focus:left-2 focus:top-2 focus:z-50"
+      >
         Skip to the content
       </a>
       <Wordmark />
@@ -67,13 +70,18 @@ function PhoneMenu() {
   const user = useSignedIn();
   const signOut = useSignOut();
   const pages = navigation.map(({ href, label }): MenuItem => ({ kind: "link", href, label }));
-  const account: readonly MenuItem[] = user === null ? [{ kind: "link", href: "/sign-in", label: "Sign in" }] : accountItems(signOut);
+  const account: readonly MenuItem[] =
+    user === null ? [{ kind: "link", href: "/sign-in", label: "Sign in" }] : accountItems(signOut);
   return (
     <span className="flex items-center">
       <ThemeSwitch />
       <Menu
         trigger={
-          <button type="button" aria-label="Menu" className="-mr-2 flex size-11 items-center justify-center rounded-control">
+          <button
+            type="button"
+            aria-label="Menu"
+            className="-mr-2 flex size-11 items-center justify-center rounded-control"
+          >
             <MenuIcon aria-hidden size={22} />
           </button>
         }

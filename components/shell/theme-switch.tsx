@@ -12,7 +12,11 @@ export function ThemeSwitch() {
     document.cookie = themeCookie(next);
   };
   return (
-    <button type="button" onClick={change} className="min-h-9 rounded-control px-2 font-[500] text-muted hover:text-text">
+    <button
+      type="button"
+      onClick={change}
+      className="min-h-9 rounded-control px-2 font-[500] text-muted hover:text-text"
+    >
       <span className="when-day">
         Day <span className="sr-only">theme, change to night</span>
       </span>

@@ -14,7 +14,10 @@ export const DEMO_SOURCE: SourceFormat = { activePx: 1280, activeLines: 720, int
 export function demoDocument(): ProfileDocument {
   const compiled = compileDriver(shippedDriver(DEMO_SLUG));
   if (!compiled.ok) throw new Error("The shipped driver does not compile");
-  return documentFromNative(compiled.value, Object.fromEntries(compiled.value.settings.map(({ key, initial }) => [key, initial])));
+  return documentFromNative(
+    compiled.value,
+    Object.fromEntries(compiled.value.settings.map(({ key, initial }) => [key, initial])),
+  );
 }
 
 /** How source lines fall on output lines, in short: "720 → 240, 3 : 1". */

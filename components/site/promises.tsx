@@ -25,13 +25,15 @@ export function Promises({ band }: { readonly band: Span }) {
       <Held title="Put back unless you keep it">
         <div className="flex items-center gap-5 py-2">
           <span className="font-mono text-4xl text-lamp [font-stretch:75%]">{formatCountdown(TRIAL_SECONDS)}</span>
-          <p className="max-w-[34ch] text-muted">New values stay in working memory until you press Keep. A black picture needs no answer.</p>
+          <p className="max-w-[34ch] text-muted">
+            New values stay in working memory until you press Keep. A black picture needs no answer.
+          </p>
         </div>
       </Held>
       <Held title="Neutral profiles">
         <p className="max-w-[46ch] py-2 text-muted">
-          One document for different makers’ devices: modes, placements and slots, each value with its unit. Yours goes out the
-          same way, as a file or to the library.
+          One document for different makers’ devices: modes, placements and slots, each value with its unit. Yours goes
+          out the same way, as a file or to the library.
         </p>
       </Held>
     </div>

@@ -25,7 +25,8 @@ type Slot = NonNullable<ProfileDocument["slots"]>[number];
 /** Slots of the simulated device on tape; the chosen one's picture on a simulated screen, in lock or torn. */
 export function TryPicture({ deviceName, document, source, screen }: TryPictureProps) {
   const slots = useMemo(() => (document.slots ?? []).slice(0, 6), [document]);
-  const timingOf = (slot: Slot): RasterTiming | undefined => document.modes?.find((mode) => mode.key === slot.mode)?.timing;
+  const timingOf = (slot: Slot): RasterTiming | undefined =>
+    document.modes?.find((mode) => mode.key === slot.mode)?.timing;
   const [number, setNumber] = useState(slots[0]?.number ?? 0);
   const chosen = slots.find((slot) => slot.number === number);
   const mode = chosen === undefined ? undefined : timingOf(chosen);
@@ -38,18 +39,38 @@ export function TryPicture({ deviceName, document, source, screen }: TryPictureP
         placement: chosen?.placement ?? {},
         screen,
         pattern: "circle",
-        longSidePx: 960,
+        // 720 px high on a wide set: three to a line of 240, so that lines and gaps are even.
+        longSidePx: 1280,
       }),
     [source, document, mode, chosen, screen],
   );
-  const picture = mode === undefined ? undefined : effectivePicture({ source, trim: document.everywhere?.trim ?? {}, mode, placement: chosen?.placement ?? {} });
-  const ratio = picture?.ok === true ? lineRatioWords(picture.value.source.heightLines, picture.value.placed.heightLines) : "";
-  const state = mode === undefined ? "nothing is put out" : simulated.locked ? `${modeName(mode)}, in lock` : `${modeName(mode)}, out of this screen’s range`;
+  const picture =
+    mode === undefined
+      ? undefined
+      : effectivePicture({ source, trim: document.everywhere?.trim ?? {}, mode, placement: chosen?.placement ?? {} });
+  const ratio =
+    picture?.ok === true ? lineRatioWords(picture.value.source.heightLines, picture.value.placed.heightLines) : "";
+  const state =
+    mode === undefined
+      ? "nothing is put out"
+      : simulated.locked
+        ? `${modeName(mode)}, in lock`
+        : `${modeName(mode)}, out of this screen’s range`;
   return (
     <div className="grid grid-cols-1 gap-x-6 gap-y-5 sm:grid-cols-[206px_minmax(0,1fr)]">
-      <div role="group" aria-label={`Slots of a simulated ${deviceName}`} className="order-2 grid content-start gap-x-4 gap-y-2.5 max-sm:grid-cols-2 sm:order-1">
+      <div
+        role="group"
+        aria-label={`Slots of a simulated ${deviceName}`}
+        className="order-2 grid content-start gap-x-4 gap-y-2.5 max-sm:grid-cols-2 sm:order-1"
+      >
         {slots.map((slot) => (
-          <SlotChoice key={slot.number} slot={slot} timing={timingOf(slot)} isChosen={slot.number === number} onChoose={() => setNumber(slot.number)} />
+          <SlotChoice
+            key={slot.number}
+            slot={slot}
+            timing={timingOf(slot)}
+            isChosen={slot.number === number}
+            onChoose={() => setNumber(slot.number)}
+          />
         ))}
       </div>
       <div className="order-1 min-w-0 sm:order-2">
@@ -67,7 +88,17 @@ export function TryPicture({ deviceName, document, source, screen }: TryPictureP
   );
 }
 
-function SlotChoice({ slot, timing, isChosen, onChoose }: { readonly slot: Slot; readonly timing: RasterTiming | undefined; readonly isChosen: boolean; readonly onChoose: () => void }) {
+function SlotChoice({
+  slot,
+  timing,
+  isChosen,
+  onChoose,
+}: {
+  readonly slot: Slot;
+  readonly timing: RasterTiming | undefined;
+  readonly isChosen: boolean;
+  readonly onChoose: () => void;
+}) {
   const isEmpty = timing === undefined;
   return (
     <button
@@ -75,10 +106,15 @@ function SlotChoice({ slot, timing, isChosen, onChoose }: { readonly slot: Slot;
       disabled={isEmpty}
       aria-pressed={isEmpty ? undefined : isChosen}
       onClick={onChoose}
-      className={classNames("min-w-0 border-l-3 pl-2.5 text-left", isChosen ? "border-lamp" : "border-transparent enabled:hover:border-edge")}
+      className={classNames(
+        "border-l-3 min-w-0 pl-2.5 text-left",
+        isChosen ? "border-lamp" : "border-transparent enabled:hover:border-edge",
+      )}
     >
       <Tape name={isEmpty ? null : (slot.name ?? `Slot ${slot.number}`)} className="w-full" />
-      {timing === undefined ? null : <ModeMark timing={timing} className="mt-1 max-sm:flex-col max-sm:items-start max-sm:gap-0" />}
+      {timing === undefined ? null : (
+        <ModeMark timing={timing} className="mt-1 max-sm:flex-col max-sm:items-start max-sm:gap-0" />
+      )}
     </button>
   );
 }

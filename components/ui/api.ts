@@ -40,7 +40,11 @@ async function readProblem(response: Response): Promise<Problem> {
   const text = await response.text();
   const parsed = problemSchema.safeParse(parseJson(text));
   if (parsed.success) return parsed.data;
-  return { type: "about:blank", title: "The server gave an answer that Backporch does not know.", status: response.status };
+  return {
+    type: "about:blank",
+    title: "The server gave an answer that Backporch does not know.",
+    status: response.status,
+  };
 }
 
 function parseJson(text: string): unknown {

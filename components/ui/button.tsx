@@ -54,7 +54,13 @@ export function ButtonLink({ kind, size, icon, className, children, ...rest }: B
 }
 
 /** A square button with an icon alone; `label` is its name. */
-export function IconButton({ label, className, children, type = "button", ...rest }: ComponentProps<"button"> & { readonly label: string }) {
+export function IconButton({
+  label,
+  className,
+  children,
+  type = "button",
+  ...rest
+}: ComponentProps<"button"> & { readonly label: string }) {
   return (
     <button
       type={type}

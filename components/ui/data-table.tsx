@@ -21,8 +21,8 @@ export type DataColumn<Row> = {
   readonly sortBy?: (row: Row) => string | number | undefined;
   readonly cell: (row: Row) => ReactNode;
   readonly align?: "start" | "end";
-  /** On a phone: `head` leads the row, `hidden` leaves it out; else the cell stands with its header beside it. */
-  readonly phone?: "head" | "plain" | "hidden";
+  /** On a phone: `head` leads the row, `hidden` leaves it out, `bare` stands alone; else its header stands beside it. */
+  readonly phone?: "head" | "plain" | "bare" | "hidden";
   readonly className?: string;
 };
 
@@ -45,7 +45,14 @@ function compare(a: unknown, b: unknown): number {
 }
 
 /** A dense table with rules, a sticky head and columns that sort; on a phone each row stands as a small block. */
-export function DataTable<Row extends object>({ caption, columns, rows, rowKey, sorting: initial, isMarked }: DataTableProps<Row>) {
+export function DataTable<Row extends object>({
+  caption,
+  columns,
+  rows,
+  rowKey,
+  sorting: initial,
+  isMarked,
+}: DataTableProps<Row>) {
   const [sorting, setSorting] = useState(initial === undefined ? [] : [{ id: initial.id, desc: initial.desc }]);
   const defs = useMemo(() => {
     const helper = createColumnHelper<typeof features, Row>();
@@ -90,12 +97,16 @@ export function DataTable<Row extends object>({ caption, columns, rows, rowKey, 
                     key={header.id}
                     aria-sort={sorted === false ? undefined : sorted === "asc" ? "ascending" : "descending"}
                     className={classNames(
-                      "sticky top-0 z-10 border-b border-line bg-bg py-2 pr-4 text-sm font-[500] whitespace-nowrap text-muted first:pl-2 last:pr-0",
+                      "sticky top-0 z-10 whitespace-nowrap border-b border-line bg-bg py-2 pr-4 text-sm font-[500] text-muted first:pl-2 last:pr-0",
                       column?.align === "end" ? "text-right" : "text-left",
                     )}
                   >
                     {header.column.getCanSort() ? (
-                      <button type="button" onClick={header.column.getToggleSortingHandler()} className="inline-flex min-h-6 items-center gap-1 hover:text-text">
+                      <button
+                        type="button"
+                        onClick={header.column.getToggleSortingHandler()}
+                        className="inline-flex min-h-6 items-center gap-1 hover:text-text"
+                      >
                         {column?.header}
                         {sorted === "asc" ? <ArrowUp aria-hidden size={13} /> : null}
                         {sorted === "desc" ? <ArrowDown aria-hidden size={13} /> : null}
@@ -138,9 +149,10 @@ function DataCell<Row>({ column, row }: { readonly column: DataColumn<Row>; read
     <td
       role="cell"
       className={classNames(
-        "align-middle md:table-cell md:py-2 md:pr-4 md:last:pr-0 md:first:pl-2",
+        "align-middle md:table-cell md:py-2 md:pr-4 md:first:pl-2 md:last:pr-0",
         phone === "hidden" && "hidden",
         phone === "head" && "block pb-1",
+        phone === "bare" && "block py-0.5",
         phone === "plain" && "flex items-baseline gap-3 py-0.5",
         column.align === "end" && "md:text-right",
         column.className,
@@ -159,7 +171,15 @@ function DataCell<Row>({ column, row }: { readonly column: DataColumn<Row>; read
 type Sorting = { readonly id: string; readonly desc: boolean };
 
 /** A phone shows no head, so the order is chosen from a list. */
-function PhoneSort<Row>({ columns, sorting, onChange }: { readonly columns: readonly DataColumn<Row>[]; readonly sorting: Sorting | undefined; readonly onChange: (sorting: Sorting) => void }) {
+function PhoneSort<Row>({
+  columns,
+  sorting,
+  onChange,
+}: {
+  readonly columns: readonly DataColumn<Row>[];
+  readonly sorting: Sorting | undefined;
+  readonly onChange: (sorting: Sorting) => void;
+}) {
   const sortable = columns.filter((column) => column.sortBy !== undefined);
   if (sortable.length < 2) return null;
   return (

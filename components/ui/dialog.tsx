@@ -26,7 +26,10 @@ export function Dialog({ open, onOpenChange, title, description, children, foot 
     <Primitive.Root open={open} onOpenChange={onOpenChange}>
       <Primitive.Portal>
         <Primitive.Overlay className={overlayLook} />
-        <Primitive.Content className={panelLook} {...(description === undefined ? { "aria-describedby": undefined } : {})}>
+        <Primitive.Content
+          className={panelLook}
+          {...(description === undefined ? { "aria-describedby": undefined } : {})}
+        >
           <div className="flex items-start justify-between gap-4 border-b border-line px-5 py-4">
             <div>
               <Primitive.Title className="text-xl">{title}</Primitive.Title>
@@ -34,7 +37,10 @@ export function Dialog({ open, onOpenChange, title, description, children, foot 
                 <Primitive.Description className="mt-1 text-muted">{description}</Primitive.Description>
               )}
             </div>
-            <Primitive.Close aria-label="Close" className="-mt-1 -mr-2 flex size-9 shrink-0 items-center justify-center rounded-control text-muted hover:text-text">
+            <Primitive.Close
+              aria-label="Close"
+              className="-mr-2 -mt-1 flex size-9 shrink-0 items-center justify-center rounded-control text-muted hover:text-text"
+            >
               <X aria-hidden size={18} />
             </Primitive.Close>
           </div>
@@ -64,13 +70,23 @@ export type ConfirmProps = {
 };
 
 /** Asks before an act that has no undo. The focus begins on the way out. */
-export function Confirm({ open, onOpenChange, title, description, act, actKind = "primary", cancel = "Cancel", onAct, children }: ConfirmProps) {
+export function Confirm({
+  open,
+  onOpenChange,
+  title,
+  description,
+  act,
+  actKind = "primary",
+  cancel = "Cancel",
+  onAct,
+  children,
+}: ConfirmProps) {
   return (
     <AlertDialog.Root open={open} onOpenChange={onOpenChange}>
       <AlertDialog.Portal>
         <AlertDialog.Overlay className={overlayLook} />
         <AlertDialog.Content className={panelLook}>
-          <div className="min-h-0 flex-1 overflow-y-auto px-5 pt-5 pb-4">
+          <div className="min-h-0 flex-1 overflow-y-auto px-5 pb-4 pt-5">
             <AlertDialog.Title className="text-xl">{title}</AlertDialog.Title>
             <AlertDialog.Description className="mt-2 text-muted">{description}</AlertDialog.Description>
             {children}

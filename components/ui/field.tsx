@@ -59,7 +59,12 @@ export function Field({ label, hint, error, aside, className, children }: FieldP
   );
 }
 
-type Worded = { readonly label: string; readonly hint?: ReactNode; readonly error?: string | undefined; readonly aside?: ReactNode };
+type Worded = {
+  readonly label: string;
+  readonly hint?: ReactNode;
+  readonly error?: string | undefined;
+  readonly aside?: ReactNode;
+};
 
 export type TextFieldProps = Omit<ComponentProps<"input">, "id"> & Worded & { readonly fieldClassName?: string };
 
@@ -88,7 +93,16 @@ export type SelectFieldProps = Omit<ComponentProps<"select">, "id" | "children">
   Worded & { readonly options: readonly SelectOption[]; readonly fieldClassName?: string };
 
 /** A field with a list to choose from: the system's own list, so it is at home on a phone. */
-export function SelectField({ label, hint, error, aside, options, className, fieldClassName, ...select }: SelectFieldProps) {
+export function SelectField({
+  label,
+  hint,
+  error,
+  aside,
+  options,
+  className,
+  fieldClassName,
+  ...select
+}: SelectFieldProps) {
   return (
     <Field label={label} hint={hint} error={error} aside={aside} className={fieldClassName}>
       {(control) => (

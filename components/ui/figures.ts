@@ -88,7 +88,10 @@ export function formatCountdown(seconds: number): string {
  * @returns null when it is no number
  */
 export function parseFigure(typed: string): number | null {
-  const text = typed.replace(/[\s\u2009\u00A0]/gu, "").replace(MINUS, "-").replace(",", ".");
+  const text = typed
+    .replace(/[\s\u2009\u00A0]/gu, "")
+    .replace(MINUS, "-")
+    .replace(",", ".");
   const match = /^([+-]?(?:\d+\.?\d*|\.\d+))(?:[a-zµ%Ω]*)$/iu.exec(text);
   return match === null ? null : Number(match[1]);
 }

@@ -63,13 +63,25 @@ const tones: Readonly<Record<FindingSeverity, string>> = {
 };
 
 /** Icon for the severity of a finding. */
-export function FindingIcon({ severity, className }: { readonly severity: FindingSeverity; readonly className?: string }) {
+export function FindingIcon({
+  severity,
+  className,
+}: {
+  readonly severity: FindingSeverity;
+  readonly className?: string;
+}) {
   const Icon = icons[severity];
   return <Icon className={className} />;
 }
 
 /** A word with the shape and colour of its severity: "fits your screen", "2 values to change". */
-export function FindingWord({ severity, children }: { readonly severity: FindingSeverity; readonly children: ReactNode }) {
+export function FindingWord({
+  severity,
+  children,
+}: {
+  readonly severity: FindingSeverity;
+  readonly children: ReactNode;
+}) {
   return (
     <span className={classNames("inline-flex items-baseline gap-1.5", tones[severity])}>
       <FindingIcon severity={severity} className="translate-y-[2px]" />

@@ -12,7 +12,11 @@ export type FootBarProps = {
 /** The bar at the foot of a view whose act is big. It stays in sight while the view scrolls. */
 export function FootBar({ status, cost, children }: FootBarProps) {
   return (
-    <div role="region" aria-label="What to do next" className="gutter sticky bottom-0 z-20 mt-auto flex flex-wrap items-center gap-x-5 gap-y-2 border-t border-edge bg-surface py-3">
+    <div
+      role="region"
+      aria-label="What to do next"
+      className="gutter sticky bottom-0 z-20 mt-auto flex flex-wrap items-center gap-x-5 gap-y-2 border-t border-edge bg-surface py-3"
+    >
       <div className="min-w-[min(100%,18rem)] flex-1" aria-live="polite">
         {status}
       </div>

@@ -6,7 +6,11 @@ import { ApiProblem } from "@/components/ui/api";
  *
  * @returns true when each complaint found its field, so that nothing is left to say elsewhere
  */
-export function showFieldErrors<T extends FieldValues>(error: unknown, fields: readonly FieldPath<T>[], setError: UseFormSetError<T>): boolean {
+export function showFieldErrors<T extends FieldValues>(
+  error: unknown,
+  fields: readonly FieldPath<T>[],
+  setError: UseFormSetError<T>,
+): boolean {
   if (!(error instanceof ApiProblem)) return false;
   const complaints = error.problem.errors ?? [];
   const placed = complaints.filter(({ path, message }) => {

@@ -12,7 +12,11 @@ export function Tooltip({ text, children }: { readonly text: string; readonly ch
     <TooltipPrimitive.Root delayDuration={300}>
       <TooltipPrimitive.Trigger asChild>{children}</TooltipPrimitive.Trigger>
       <TooltipPrimitive.Portal>
-        <TooltipPrimitive.Content sideOffset={6} collisionPadding={8} className={`${panelLook} max-w-72 px-3 py-1.5 text-sm`}>
+        <TooltipPrimitive.Content
+          sideOffset={6}
+          collisionPadding={8}
+          className={`${panelLook} max-w-72 px-3 py-1.5 text-sm`}
+        >
           {text}
         </TooltipPrimitive.Content>
       </TooltipPrimitive.Portal>
@@ -21,12 +25,25 @@ export function Tooltip({ text, children }: { readonly text: string; readonly ch
 }
 
 /** A small panel beside its trigger. */
-export function Popover({ trigger, label, children }: { readonly trigger: ReactElement; readonly label: string; readonly children: ReactNode }) {
+export function Popover({
+  trigger,
+  label,
+  children,
+}: {
+  readonly trigger: ReactElement;
+  readonly label: string;
+  readonly children: ReactNode;
+}) {
   return (
     <PopoverPrimitive.Root>
       <PopoverPrimitive.Trigger asChild>{trigger}</PopoverPrimitive.Trigger>
       <PopoverPrimitive.Portal>
-        <PopoverPrimitive.Content aria-label={label} sideOffset={6} collisionPadding={12} className={`${panelLook} max-w-[min(92vw,420px)] p-4`}>
+        <PopoverPrimitive.Content
+          aria-label={label}
+          sideOffset={6}
+          collisionPadding={12}
+          className={`${panelLook} max-w-[min(92vw,420px)] p-4`}
+        >
           {children}
         </PopoverPrimitive.Content>
       </PopoverPrimitive.Portal>
@@ -36,7 +53,13 @@ export function Popover({ trigger, label, children }: { readonly trigger: ReactE
 
 export type MenuItem =
   | { readonly kind: "link"; readonly label: string; readonly href: string; readonly download?: boolean }
-  | { readonly kind: "act"; readonly label: string; readonly onAct: () => void; readonly disabled?: boolean; readonly tone?: "halt" }
+  | {
+      readonly kind: "act";
+      readonly label: string;
+      readonly onAct: () => void;
+      readonly disabled?: boolean;
+      readonly tone?: "halt";
+    }
   | { readonly kind: "rule" };
 
 const itemLook =
@@ -74,7 +97,15 @@ function MenuEntry({ item }: { readonly item: MenuItem }) {
 }
 
 /** A menu under a button. */
-export function Menu({ trigger, items, align = "end" }: { readonly trigger: ReactElement; readonly items: readonly MenuItem[]; readonly align?: "start" | "end" }) {
+export function Menu({
+  trigger,
+  items,
+  align = "end",
+}: {
+  readonly trigger: ReactElement;
+  readonly items: readonly MenuItem[];
+  readonly align?: "start" | "end";
+}) {
   return (
     <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger asChild>{trigger}</DropdownMenu.Trigger>

@@ -6,7 +6,7 @@ import { problemText } from "@/components/ui/problem-text";
 export function ProblemMessage({ error, act }: { readonly error: unknown; readonly act?: ReactNode }) {
   const { fact, detail, errors, requestId } = problemText(error);
   return (
-    <div role="alert" className="flex items-start gap-3 border-l-3 border-halt bg-surface px-4 py-3">
+    <div role="alert" className="border-l-3 flex items-start gap-3 border-halt bg-surface px-4 py-3">
       <StopIcon className="mt-0.5" />
       <div className="min-w-0 flex-1">
         <p className="font-strong text-halt">{fact}</p>

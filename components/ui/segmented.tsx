@@ -7,8 +7,9 @@ import { classNames } from "@/components/ui/class-names";
 export type Choice<V extends string> = { readonly value: V; readonly label: ReactNode; readonly disabled?: boolean };
 
 const groupLook = "flex w-full rounded-control border border-edge";
+// Of type: inside a form each choice is followed by a hidden input.
 const itemLook =
-  "min-h-9 flex-1 border-r border-edge px-3 py-1.5 text-center font-button text-muted first:rounded-l-[6px] last:rounded-r-[6px] last:border-r-0 enabled:hover:text-text disabled:opacity-45";
+  "min-h-9 flex-1 border-r border-edge px-3 py-1.5 text-center font-button text-muted first-of-type:rounded-l-[6px] last-of-type:rounded-r-[6px] last-of-type:border-r-0 enabled:hover:text-text disabled:opacity-45";
 
 export type SegmentedProps<V extends string> = {
   /** Name of the group for assistive technology. */
@@ -21,7 +22,14 @@ export type SegmentedProps<V extends string> = {
 };
 
 /** One of a few, all of them in sight; arrow keys move the choice. */
-export function Segmented<V extends string>({ label, value, choices, onChange, disabled, className }: SegmentedProps<V>) {
+export function Segmented<V extends string>({
+  label,
+  value,
+  choices,
+  onChange,
+  disabled,
+  className,
+}: SegmentedProps<V>) {
   return (
     <RadioGroup.Root
       aria-label={label}
@@ -72,7 +80,7 @@ export function TabPages<V extends string>({ label, value, pages, onChange }: Ta
             key={page.value}
             value={page.value}
             disabled={page.disabled}
-            className="-mb-px border-b-2 border-transparent py-2 font-button whitespace-nowrap text-muted hover:text-text focus-visible:-outline-offset-2 data-[state=active]:border-lamp data-[state=active]:text-text"
+            className="-mb-px whitespace-nowrap border-b-2 border-transparent py-2 font-button text-muted hover:text-text focus-visible:-outline-offset-2 data-[state=active]:border-lamp data-[state=active]:text-text"
           >
             {page.label}
           </Tabs.Trigger>

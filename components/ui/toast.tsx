@@ -40,7 +40,7 @@ export function ToastProvider({ children }: { readonly children: ReactNode }) {
         {entries.map((entry) => (
           <ToastEntry key={entry.id} entry={entry} onGone={drop} />
         ))}
-        <Toast.Viewport className="fixed right-0 bottom-0 z-50 flex w-full max-w-[440px] flex-col gap-2 p-4 outline-none" />
+        <Toast.Viewport className="fixed bottom-0 right-0 z-50 flex w-full max-w-[440px] flex-col gap-2 p-4 outline-none" />
       </Toast.Provider>
     </ToastContext.Provider>
   );
@@ -53,7 +53,7 @@ function ToastEntry({ entry, onGone }: { readonly entry: Entry; readonly onGone:
       onOpenChange={(open) => {
         if (!open) onGone(entry.id);
       }}
-      className="appears flex items-center gap-3 rounded-control border border-edge bg-surface py-2 pr-2 pl-4 shadow-xl"
+      className="appears flex items-center gap-3 rounded-control border border-edge bg-surface py-2 pl-4 pr-2 shadow-xl"
     >
       <Toast.Description className="flex-1">{entry.text}</Toast.Description>
       {undo === undefined ? null : (
@@ -63,7 +63,10 @@ function ToastEntry({ entry, onGone }: { readonly entry: Entry; readonly onGone:
           </Button>
         </Toast.Action>
       )}
-      <Toast.Close aria-label="Close" className="flex size-8 items-center justify-center rounded-control text-muted hover:text-text">
+      <Toast.Close
+        aria-label="Close"
+        className="flex size-8 items-center justify-center rounded-control text-muted hover:text-text"
+      >
         <X aria-hidden size={16} />
       </Toast.Close>
     </Toast.Root>

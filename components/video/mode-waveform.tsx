@@ -30,7 +30,9 @@ const partOf = (waveform: Waveform, part: DrawnPart["part"]): DrawnPart => {
 
 /** "blanking drawn 2.2 times wider than the picture", or nothing where it is drawn true. */
 function factorWords(factor: number): string {
-  return factor < 1.05 ? "drawn to scale" : `blanking drawn ${formatNumber(factor, { decimals: 1 })} times wider than the picture`;
+  return factor < 1.05
+    ? "drawn to scale"
+    : `blanking drawn ${formatNumber(factor, { decimals: 1 })} times wider than the picture`;
 }
 
 /** One line of a mode, long form: parts in µs, blanking enlarged by the factor that is stated. */
@@ -41,10 +43,18 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
   const all = waveform.parts.map((drawn) => label(drawn.part)).join(", ");
   const caption = `${modeName(timing)}: one line, ${formatUs(linePeriodUs(timing))}; ${factorWords(waveform.blankingFactor)}`;
   const wide = widthPx >= LABELS_FROM_PX;
-  const [front, sync, back, active] = (["frontPorch", "sync", "backPorch", "active"] as const).map((part) => partOf(waveform, part));
+  const [front, sync, back, active] = (["frontPorch", "sync", "backPorch", "active"] as const).map((part) =>
+    partOf(waveform, part),
+  );
   return (
     <figure ref={attach} className="min-w-0">
-      <svg role="img" aria-label={`One line: ${all}`} width={widthPx} height={HEIGHT_PX} className="block max-w-full overflow-visible">
+      <svg
+        role="img"
+        aria-label={`One line: ${all}`}
+        width={widthPx}
+        height={HEIGHT_PX}
+        className="block max-w-full overflow-visible"
+      >
         <path d={waveformPath(waveform.parts, LEVELS, widthPx)} className="fill-none stroke-signal" strokeWidth={2} />
         {wide && front && sync && back && active ? (
           <g className="figure fill-muted">
@@ -57,7 +67,12 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
             <text x={back.fromPx + 6} y={LEVELS.blackPx + 18}>
               {label("backPorch")}
             </text>
-            <text x={(active.fromPx + active.toPx) / 2} y={LEVELS.whitePx + 20} textAnchor="middle" className="fill-text">
+            <text
+              x={(active.fromPx + active.toPx) / 2}
+              y={LEVELS.whitePx + 20}
+              textAnchor="middle"
+              className="fill-text"
+            >
               {`${label("active")}, ${formatNumber(active.count)} px`}
             </text>
           </g>
@@ -91,12 +106,23 @@ export function FieldWaveform({ timing }: { readonly timing: RasterTiming }) {
   const field = timing.interlaced ? "one field of two" : "one field";
   return (
     <figure ref={attach} className="min-w-0">
-      <svg role="img" aria-label={`${field}, in lines: ${all}`} width={widthPx} height={HEIGHT_PX} className="block max-w-full overflow-visible">
+      <svg
+        role="img"
+        aria-label={`${field}, in lines: ${all}`}
+        width={widthPx}
+        height={HEIGHT_PX}
+        className="block max-w-full overflow-visible"
+      >
         <path d={path} className="fill-none stroke-signal" strokeWidth={2} />
         <path d={comb} className="fill-none stroke-signal" strokeWidth={1.5} />
         <g className="figure fill-muted">
           {blanking.map((drawn) => (
-            <text key={drawn.part} x={(drawn.fromPx + drawn.toPx) / 2} y={drawn.part === "sync" ? LEVELS.syncPx + 18 : LEVELS.blackPx - 10} textAnchor="middle">
+            <text
+              key={drawn.part}
+              x={(drawn.fromPx + drawn.toPx) / 2}
+              y={drawn.part === "sync" ? LEVELS.syncPx + 18 : LEVELS.blackPx - 10}
+              textAnchor="middle"
+            >
               {formatNumber(drawn.count)}
             </text>
           ))}

@@ -30,7 +30,12 @@ export function planeDomain(bands: readonly EnvelopeBand[], points: readonly Pla
   return { lineRateHz: padded(line, LEAST_LINE_WIDTH_HZ), fieldRateHz: padded(field, LEAST_FIELD_HEIGHT_HZ) };
 }
 
-export type PlaneFrame = { readonly leftPx: number; readonly topPx: number; readonly widthPx: number; readonly heightPx: number };
+export type PlaneFrame = {
+  readonly leftPx: number;
+  readonly topPx: number;
+  readonly widthPx: number;
+  readonly heightPx: number;
+};
 
 export function xOf(lineRateHz: number, domain: PlaneDomain, frame: PlaneFrame): number {
   const [min, max] = domain.lineRateHz;
@@ -76,7 +81,11 @@ const LABEL_HEIGHT_PX = 13;
  *
  * Bound: 8 steps a ray.
  */
-export function rayLabels(rays: readonly (RaySegment | undefined)[], domain: PlaneDomain, frame: PlaneFrame): readonly (RayLabel | undefined)[] {
+export function rayLabels(
+  rays: readonly (RaySegment | undefined)[],
+  domain: PlaneDomain,
+  frame: PlaneFrame,
+): readonly (RayLabel | undefined)[] {
   const placed: RayLabel[] = [];
   return rays.map((ray) => {
     if (ray === undefined) return undefined;
@@ -84,9 +93,14 @@ export function rayLabels(rays: readonly (RaySegment | undefined)[], domain: Pla
       const share = 1 - step / 10;
       const lineRateHz = ray.from.lineRateHz + share * (ray.to.lineRateHz - ray.from.lineRateHz);
       const fieldRateHz = ray.from.fieldRateHz + share * (ray.to.fieldRateHz - ray.from.fieldRateHz);
-      const label = { x: xOf(lineRateHz, domain, frame) - 5, y: Math.max(yOf(fieldRateHz, domain, frame) + 4, frame.topPx + 11) };
+      const label = {
+        x: xOf(lineRateHz, domain, frame) - 5,
+        y: Math.max(yOf(fieldRateHz, domain, frame) + 4, frame.topPx + 11),
+      };
       const isInside = label.x - LABEL_WIDTH_PX >= frame.leftPx;
-      const isFree = placed.every((other) => Math.abs(other.x - label.x) >= LABEL_WIDTH_PX || Math.abs(other.y - label.y) >= LABEL_HEIGHT_PX);
+      const isFree = placed.every(
+        (other) => Math.abs(other.x - label.x) >= LABEL_WIDTH_PX || Math.abs(other.y - label.y) >= LABEL_HEIGHT_PX,
+      );
       if (isInside && isFree) {
         placed.push(label);
         return label;
@@ -99,5 +113,7 @@ export function rayLabels(rays: readonly (RaySegment | undefined)[], domain: Pla
 /** Rasters near enough to a band to be worth showing with it: within a quarter of its line rates. */
 export function nearBands<P extends PlanePoint>(points: readonly P[], bands: readonly EnvelopeBand[]): readonly P[] {
   if (bands.length === 0) return points;
-  return points.filter(({ lineRateHz }) => bands.some((band) => lineRateHz >= band.lineRateHz[0] * 0.75 && lineRateHz <= band.lineRateHz[1] * 1.25));
+  return points.filter(({ lineRateHz }) =>
+    bands.some((band) => lineRateHz >= band.lineRateHz[0] * 0.75 && lineRateHz <= band.lineRateHz[1] * 1.25),
+  );
 }

@@ -4,9 +4,23 @@ import type { LinkState } from "@/components/shell/link-state";
 export function PorchLamp({ state, text }: { readonly state: LinkState; readonly text: string }) {
   return (
     <span className="inline-flex shrink-0" data-link-state={state}>
-      <svg aria-hidden width={46} height={28} viewBox="0 0 46 28" className="fill-none" strokeWidth={2} strokeLinejoin="round">
+      <svg
+        aria-hidden
+        width={46}
+        height={28}
+        viewBox="0 0 46 28"
+        className="fill-none"
+        strokeWidth={2}
+        strokeLinejoin="round"
+      >
         {state === "lit" || state === "breathing" ? (
-          <circle cx={21.5} cy={9.5} r={9} className={state === "breathing" ? "lamp-breathes fill-glow" : "fill-glow"} opacity={0.25} />
+          <circle
+            cx={21.5}
+            cy={9.5}
+            r={9}
+            className={state === "breathing" ? "lamp-breathes fill-glow" : "fill-glow"}
+            opacity={0.25}
+          />
         ) : null}
         <path d="M1 16h7v9h8v-9h11V6h18" className="stroke-text" />
         <LampBulb state={state} />

@@ -37,7 +37,13 @@ export function RangeRuler(props: RangeRulerProps) {
         {onChange === undefined || value === undefined ? (
           <span className="figure text-[15px]">{figure}</span>
         ) : (
-          <TypedValue label={label} unit={unit} text={format(value)} disabled={disabled} onValue={(typed) => onChange(snap(typed, range))} />
+          <TypedValue
+            label={label}
+            unit={unit}
+            text={format(value)}
+            disabled={disabled}
+            onValue={(typed) => onChange(snap(typed, range))}
+          />
         )}
       </div>
       {onChange === undefined || value === undefined ? (
@@ -68,7 +74,18 @@ type SliderProps = RangeRulerProps & {
   readonly onChange: (value: number) => void;
 };
 
-function RulerSlider({ labelId, value, valueText, range, safe, was, planned, now, disabled = false, onChange }: SliderProps) {
+function RulerSlider({
+  labelId,
+  value,
+  valueText,
+  range,
+  safe,
+  was,
+  planned,
+  now,
+  disabled = false,
+  onChange,
+}: SliderProps) {
   const change = (next: number) => {
     if (next !== value) onChange(next);
   };
@@ -97,7 +114,7 @@ function RulerSlider({ labelId, value, valueText, range, safe, was, planned, now
       onKeyDown={onKeyDown}
       onPointerDown={onPointer}
       onPointerMove={onPointer}
-      className={classNames("touch-pan-y pt-1.5 pb-1", disabled ? "cursor-not-allowed" : "cursor-ew-resize")}
+      className={classNames("touch-pan-y pb-1 pt-1.5", disabled ? "cursor-not-allowed" : "cursor-ew-resize")}
     >
       <RulerTrack range={range} safe={safe} was={was} planned={planned} now={now} />
     </div>
@@ -140,7 +157,7 @@ function TypedValue({ label, unit, text, disabled, onValue }: TypedProps) {
             setDraft(null);
           }
         }}
-        className="w-[8ch] rounded-[4px] border border-transparent bg-transparent px-1 text-right hover:border-edge focus:border-edge focus:bg-surface aria-invalid:border-halt"
+        className="aria-invalid:border-halt w-[8ch] rounded-[4px] border border-transparent bg-transparent px-1 text-right hover:border-edge focus:border-edge focus:bg-surface"
       />
       <span>{unit}</span>
     </span>

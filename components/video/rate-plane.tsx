@@ -33,11 +33,22 @@ export function RatePlane({ screenName, bands, points, rayLines = [], heightPx =
   const clipId = useId();
   const domain = planeDomain(bands, points);
   if (domain === undefined) return <p className="text-muted">No rates are known for {screenName}.</p>;
-  const frame: PlaneFrame = { leftPx: LEFT_PX, topPx: 6, widthPx: widthPx - LEFT_PX - 6, heightPx: heightPx - BOTTOM_PX - 6 };
+  const frame: PlaneFrame = {
+    leftPx: LEFT_PX,
+    topPx: 6,
+    widthPx: widthPx - LEFT_PX - 6,
+    heightPx: heightPx - BOTTOM_PX - 6,
+  };
   const rays = rayLines.map((lines) => raySegment(lines, domain));
   return (
     <figure ref={attach} className="min-w-0">
-      <svg role="img" aria-label={planeWords(screenName, bands, points)} width={widthPx} height={heightPx} className="figure block max-w-full">
+      <svg
+        role="img"
+        aria-label={planeWords(screenName, bands, points)}
+        width={widthPx}
+        height={heightPx}
+        className="figure block max-w-full"
+      >
         <PlaneAxes domain={domain} frame={frame} />
         <clipPath id={clipId}>
           <rect x={frame.leftPx} y={frame.topPx} width={frame.widthPx} height={frame.heightPx} />
@@ -46,7 +57,9 @@ export function RatePlane({ screenName, bands, points, rayLines = [], heightPx =
           {bands.map((band) => (
             <PlaneBand key={band.lineRateHz.join()} band={band} domain={domain} frame={frame} />
           ))}
-          {rays.map((ray, index) => (ray === undefined ? null : <PlaneRay key={rayLines[index]} ray={ray} domain={domain} frame={frame} />))}
+          {rays.map((ray, index) =>
+            ray === undefined ? null : <PlaneRay key={rayLines[index]} ray={ray} domain={domain} frame={frame} />,
+          )}
         </g>
         {rayLabels(rays, domain, frame).map((label, index) => (
           <PlaneRayName key={rayLines[index]} label={label} lines={rayLines[index]} />
@@ -69,7 +82,10 @@ function PlaneAxes({ domain, frame }: Placed) {
   const bottom = frame.topPx + frame.heightPx;
   return (
     <g className="fill-muted">
-      <path d={`M${frame.leftPx} ${frame.topPx}V${bottom}H${frame.leftPx + frame.widthPx}`} className="fill-none stroke-edge" />
+      <path
+        d={`M${frame.leftPx} ${frame.topPx}V${bottom}H${frame.leftPx + frame.widthPx}`}
+        className="fill-none stroke-edge"
+      />
       {planeTicks(domain.fieldRateHz, 6).map((rate) => (
         <text key={`f${rate}`} x={frame.leftPx - 7} y={yOf(rate, domain, frame) + 4} textAnchor="end">
           {formatNumber(rate)}
@@ -90,7 +106,15 @@ function PlaneBand({ band, domain, frame }: Placed & { readonly band: EnvelopeBa
   if (left === undefined || right === undefined || top === undefined || bottom === undefined) return null;
   // A fixed-frequency band would be a hairline: it is drawn 3 px wide at least.
   const widthPx = Math.max(3, right - left);
-  return <rect x={(left + right - widthPx) / 2} y={top} width={widthPx} height={Math.max(3, bottom - top)} className="fill-signal/15 stroke-signal" />;
+  return (
+    <rect
+      x={(left + right - widthPx) / 2}
+      y={top}
+      width={widthPx}
+      height={Math.max(3, bottom - top)}
+      className="fill-signal/15 stroke-signal"
+    />
+  );
 }
 
 function PlaneRay({ ray, domain, frame }: Placed & { readonly ray: RaySegment }) {
@@ -121,7 +145,14 @@ function PlanePointMark({ point, domain, frame }: Placed & { readonly point: Rat
 
 function planeWords(screenName: string, bands: readonly EnvelopeBand[], points: readonly RatePoint[]): string {
   const taken = bands.map((band) => `${formatLineRateSpan(band.lineRateHz)} at ${formatSpan(band.fieldRateHz, "Hz")}`);
-  const kinds: Readonly<Record<RatePoint["kind"], string>> = { fits: "fits", chosen: "chosen", outside: "does not fit" };
-  const shown = points.map((point) => `${point.label} (${formatLineRate(point.lineRateHz)}, ${formatFieldRate(point.fieldRateHz)}) ${kinds[point.kind]}`);
+  const kinds: Readonly<Record<RatePoint["kind"], string>> = {
+    fits: "fits",
+    chosen: "chosen",
+    outside: "does not fit",
+  };
+  const shown = points.map(
+    (point) =>
+      `${point.label} (${formatLineRate(point.lineRateHz)}, ${formatFieldRate(point.fieldRateHz)}) ${kinds[point.kind]}`,
+  );
   return `${screenName} takes ${taken.join(" and ")}. ${shown.join("; ")}`;
 }

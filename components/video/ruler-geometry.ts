@@ -69,7 +69,9 @@ export function tickFractions(range: RulerRange): readonly number[] {
   const every = Math.max(range.step, roundUp(width / MAX_TICKS));
   const first = Math.ceil(range.min / every - 1e-9);
   const last = Math.floor(range.max / every + 1e-9);
-  return Array.from({ length: Math.max(0, last - first + 1) }, (_, index) => fractionOf((first + index) * every, range));
+  return Array.from({ length: Math.max(0, last - first + 1) }, (_, index) =>
+    fractionOf((first + index) * every, range),
+  );
 }
 
 /** The next of 1, 2, 5, 10, … that is not smaller. */

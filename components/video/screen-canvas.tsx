@@ -14,7 +14,11 @@ export function ScreenCanvas({ screen, label }: { readonly screen: SimulatedScre
   return (
     <div className="rounded-set bg-cabinet p-2.5 md:p-3.5">
       <canvas
-        ref={canvas} role="img" aria-label={label} width={screen.widthPx} height={screen.heightPx}
+        ref={canvas}
+        role="img"
+        aria-label={label}
+        width={screen.widthPx}
+        height={screen.heightPx}
         className="block h-auto w-full bg-glass [border-radius:24px/18px]"
       />
     </div>

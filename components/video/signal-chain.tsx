@@ -49,8 +49,21 @@ function ChainWire({ flows, words }: { readonly flows: boolean; readonly words: 
   return (
     <li className="relative my-1 ml-2 h-6 md:my-0 md:ml-0 md:h-3">
       <span className="sr-only">{words}</span>
-      <span aria-hidden className={classNames("absolute top-0 bottom-0 left-0 border-l-2 md:top-1/2 md:right-1 md:bottom-auto md:border-t-2 md:border-l-0", line)} />
-      <svg aria-hidden viewBox="0 0 10 10" className={classNames("absolute -bottom-1 -left-[4px] size-2.5 rotate-90 md:top-1/2 md:right-0 md:bottom-auto md:left-auto md:-translate-y-[calc(50%-1px)] md:rotate-0", flows ? "fill-signal" : "fill-edge")}>
+      <span
+        aria-hidden
+        className={classNames(
+          "absolute bottom-0 left-0 top-0 border-l-2 md:bottom-auto md:right-1 md:top-1/2 md:border-l-0 md:border-t-2",
+          line,
+        )}
+      />
+      <svg
+        aria-hidden
+        viewBox="0 0 10 10"
+        className={classNames(
+          "absolute -bottom-1 -left-[4px] size-2.5 rotate-90 md:bottom-auto md:left-auto md:right-0 md:top-1/2 md:-translate-y-[calc(50%-1px)] md:rotate-0",
+          flows ? "fill-signal" : "fill-edge",
+        )}
+      >
         <path d="M0 0l10 5-10 5z" />
       </svg>
     </li>

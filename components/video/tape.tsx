@@ -15,7 +15,7 @@ export function Tape({ name, number, size = "normal", className }: TapeProps) {
     <span
       className={classNames(
         "inline-block max-w-full truncate align-middle font-heading leading-tight",
-        size === "small" ? "px-2 pt-[3px] pb-1 text-sm" : "px-3 pt-1.5 pb-[7px] text-[15px]",
+        size === "small" ? "px-2 pb-1 pt-[3px] text-sm" : "px-3 pb-[7px] pt-1.5 text-[15px]",
         isEmpty ? "border border-dashed border-edge font-[500] text-muted" : "bg-tape font-strong text-tape-ink",
         className,
       )}

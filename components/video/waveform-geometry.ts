@@ -26,7 +26,11 @@ type WaveformShape = {
   readonly blankingShare: number;
 };
 
-function layOut(lengths: Readonly<Record<(typeof order)[number], number>>, counts: Readonly<Record<(typeof order)[number], number>>, shape: WaveformShape): Waveform {
+function layOut(
+  lengths: Readonly<Record<(typeof order)[number], number>>,
+  counts: Readonly<Record<(typeof order)[number], number>>,
+  shape: WaveformShape,
+): Waveform {
   const blank = lengths.frontPorch + lengths.sync + lengths.backPorch;
   const natural = blank / (blank + lengths.active);
   const share = blank === 0 ? 0 : Math.max(natural, shape.blankingShare);
@@ -87,7 +91,12 @@ const GLYPH_LEVELS: WaveformLevels = { syncPx: 14, blackPx: 9, whitePx: 2 };
 export type ModeGlyphDrawing = {
   readonly linePath: string;
   /** One row for a progressive mode; two that interleave where it is interlaced. */
-  readonly fieldRows: readonly { readonly yPx: number; readonly fromPx: number; readonly toPx: number; readonly dashOffsetPx: number }[];
+  readonly fieldRows: readonly {
+    readonly yPx: number;
+    readonly fromPx: number;
+    readonly toPx: number;
+    readonly dashOffsetPx: number;
+  }[];
   readonly interlaced: boolean;
   /** The mode has more lines in a field than the twin can show: it ends in a gap. */
   readonly isCutShort: boolean;

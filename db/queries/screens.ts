@@ -19,9 +19,10 @@ const columns = {
   notes: screen.notes,
   version: screen.version,
   updatedAt: screen.updatedAt,
+  // A column in a query of one table is written without its table, and would name the inner one's.
   devices: sql<{ id: string; name: string }[]>`coalesce((
     select json_agg(json_build_object('id', d.id, 'name', d.name) order by d.name, d.id) from ${device} d
-    where d.owner_id = ${screen.ownerId} and d.screen_id = ${screen.id} and d.deleted_at is null), '[]')`,
+    where d.owner_id = ${screen}."owner_id" and d.screen_id = ${screen}."id" and d.deleted_at is null), '[]')`,
 };
 
 type Row = {

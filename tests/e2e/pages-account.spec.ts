@@ -29,13 +29,17 @@ test("an address elsewhere is no place to return to", async ({ page }) => {
   await page.waitForURL("**/bench");
 });
 
-test("name, password and sessions can be changed, and another browser is signed out", async ({ page, browser, expectAccessible }) => {
+test("name, password and sessions can be changed, and another browser is signed out", async ({
+  page,
+  browser,
+  expectAccessible,
+}) => {
   await register(page, "/account");
   await expect(page.getByRole("heading", { level: 1, name: "Account" })).toBeVisible();
   const email = await page.getByText(/@example\.org/u).innerText();
   await expectAccessible(page);
 
-  await page.getByLabel("Name", { exact: true }).fill("Tove H.");
+  await page.getByRole("textbox", { name: "Name" }).fill("Tove H.");
   await page.getByRole("button", { name: "Change name" }).click();
   await expect(page.getByRole("banner").getByText("Tove H.")).toBeVisible();
 

@@ -10,14 +10,19 @@ for (const theme of THEMES) {
     await expect(devices.getByText("as known good", { exact: true }).first()).toBeVisible();
     await expect(page.getByRole("table", { name: "What changed between the two backups" })).toBeVisible();
     await expectAccessible(page);
-    await page.getByLabel("To", { exact: true }).selectOption(await page.getByLabel("From", { exact: true }).inputValue());
+    await page
+      .getByLabel("To", { exact: true })
+      .selectOption(await page.getByLabel("From", { exact: true }).inputValue());
     await expect(page.getByText("This is one backup.")).toBeVisible();
   });
 }
 
 test("a backup is renamed, pinned, deleted and taken back", async ({ page }) => {
   await signInAs(page, "imke", "/backups");
-  await page.getByRole("navigation", { name: "Devices" }).getByRole("link", { name: /^Workshop bench/u }).click();
+  await page
+    .getByRole("navigation", { name: "Devices" })
+    .getByRole("link", { name: /^Workshop bench/u })
+    .click();
   const table = page.getByRole("table", { name: "Backups of Workshop bench" });
   await expect(table).toBeVisible();
   const first = table.getByRole("row").nth(1);
@@ -40,18 +45,35 @@ test("a backup is renamed, pinned, deleted and taken back", async ({ page }) => 
   await expect(table.getByRole("link", { name })).toBeVisible();
 });
 
-test("a backup shows all that it holds, and leads to restoring and publishing it", async ({ page, expectAccessible }) => {
+test("a backup shows all that it holds, and leads to restoring and publishing it", async ({
+  page,
+  expectAccessible,
+}) => {
   await signInAs(page, "imke", "/backups");
-  await page.getByRole("table", { name: /^Backups of/u }).getByRole("link").first().click();
+  await page
+    .getByRole("table", { name: /^Backups of/u })
+    .getByRole("link")
+    .first()
+    .click();
   await expect(page.getByRole("heading", { name: "Modes" })).toBeVisible();
-  await expect(page.getByRole("link", { name: "Restore" })).toHaveAttribute("href", /^\/bench\?restore=[0-9a-f-]{36}$/u);
-  await expect(page.getByRole("link", { name: "Publish as a profile" })).toHaveAttribute("href", /^\/library\/publish\?backup=/u);
+  await expect(page.getByRole("link", { name: "Restore" })).toHaveAttribute(
+    "href",
+    /^\/bench\?restore=[0-9a-f-]{36}$/u,
+  );
+  await expect(page.getByRole("link", { name: "Publish as a profile" })).toHaveAttribute(
+    "href",
+    /^\/library\/publish\?backup=/u,
+  );
   await expectAccessible(page);
 });
 
 test("another owner's backup is not there", async ({ page, browser }) => {
   await signInAs(page, "imke", "/backups");
-  const href = await page.getByRole("table", { name: /^Backups of/u }).getByRole("link").first().getAttribute("href");
+  const href = await page
+    .getByRole("table", { name: /^Backups of/u })
+    .getByRole("link")
+    .first()
+    .getAttribute("href");
   const other = await browser.newContext();
   const there = await other.newPage();
   await signInAs(there, "tobin", href ?? "");

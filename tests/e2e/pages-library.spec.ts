@@ -26,7 +26,8 @@ test("columns sort both ways by the keyboard", async ({ page }) => {
   await page.goto("/library");
   const titles = page.getByRole("table", { name: "Profiles" }).getByRole("row").locator("td:first-child a");
   await expect(titles.first()).toBeVisible();
-  const byName = (texts: readonly string[]) => [...texts].sort((a, b) => a.localeCompare(b, "en-GB", { numeric: true, sensitivity: "base" }));
+  const byName = (texts: readonly string[]) =>
+    [...texts].sort((a, b) => a.localeCompare(b, "en-GB", { numeric: true, sensitivity: "base" }));
   await page.getByRole("button", { name: "Profile", exact: true }).press("Enter");
   await expect(page.getByRole("columnheader", { name: "Profile" })).toHaveAttribute("aria-sort", "ascending");
   expect(await titles.allInnerTexts()).toEqual(byName(await titles.allInnerTexts()));
@@ -35,7 +36,10 @@ test("columns sort both ways by the keyboard", async ({ page }) => {
 });
 
 for (const theme of THEMES) {
-  test(`a profile by ${theme}: checked against a screen, two revisions compared, exported`, async ({ page, expectAccessible }) => {
+  test(`a profile by ${theme}: checked against a screen, two revisions compared, exported`, async ({
+    page,
+    expectAccessible,
+  }) => {
     await preferTheme(page, theme);
     await page.goto("/library?q=film+prop");
     await page.getByRole("link", { name: /Film prop/u }).click();
@@ -47,15 +51,25 @@ for (const theme of THEMES) {
     const download = page.waitForEvent("download");
     await page.getByRole("link", { name: "Export .porch.json" }).click();
     expect((await download).suggestedFilename()).toMatch(/\.porch\.json$/u);
-    await expect(page.getByRole("link", { name: "Apply" })).toHaveAttribute("href", /^\/bench\?apply=[0-9a-f-]{36}&revision=\d+$/u);
+    await expect(page.getByRole("link", { name: "Apply" })).toHaveAttribute(
+      "href",
+      /^\/bench\?apply=[0-9a-f-]{36}&revision=\d+$/u,
+    );
   });
 }
 
 test("a file goes in as it came out; a bad one changes nothing and says where", async ({ page }) => {
   await register(page, "/library");
-  const document = { format: "backporch-profile", version: 1, title: "Carried over", slots: [{ number: 1, name: "Corner set" }] };
+  const document = {
+    format: "backporch-profile",
+    version: 1,
+    title: "Carried over",
+    slots: [{ number: 1, name: "Corner set" }],
+  };
   const file = (name: string, text: string) => ({ name, mimeType: "application/json", buffer: Buffer.from(text) });
-  await page.getByLabel("Profile file").setInputFiles(file("bad.porch.json", JSON.stringify({ ...document, slots: [{ number: "one" }] })));
+  await page
+    .getByLabel("Profile file")
+    .setInputFiles(file("bad.porch.json", JSON.stringify({ ...document, slots: [{ number: "one" }] })));
   const dialog = page.getByRole("dialog", { name: "The file was not imported" });
   await expect(dialog.getByText("slots[0].number")).toBeVisible();
   await dialog.getByRole("button", { name: "Close" }).first().click();

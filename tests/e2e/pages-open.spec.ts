@@ -50,7 +50,10 @@ test("the front page shows a slot in lock, and another out of the screen's range
   await expect(page.getByRole("img", { name: /240p60, in lock/u })).toBeVisible();
   await page.getByRole("button", { name: /Monitor 480/u }).click();
   await expect(page.getByRole("img", { name: /480p60, out of this screen/u })).toBeVisible();
-  await expect(page.getByRole("link", { name: "Try a simulated device" })).toHaveAttribute("href", "/bench?simulated=lanternfield-lf8");
+  await expect(page.getByRole("link", { name: "Try a simulated device" })).toHaveAttribute(
+    "href",
+    "/bench?simulated=lanternfield-lf8",
+  );
 });
 
 test("on a phone the pages are in a menu that the keyboard opens", async ({ page }) => {

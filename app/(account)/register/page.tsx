@@ -8,7 +8,11 @@ import { getSessionUser } from "@/lib/server/session";
 
 export const metadata: Metadata = { title: "Register" };
 
-export default async function RegisterPage({ searchParams }: { readonly searchParams: Promise<{ from?: string | string[] }> }) {
+export default async function RegisterPage({
+  searchParams,
+}: {
+  readonly searchParams: Promise<{ from?: string | string[] }>;
+}) {
   const { from } = await searchParams;
   const returnPath = safeReturnPath(typeof from === "string" ? from : null);
   if ((await getSessionUser()) !== null) redirect(returnPath);

@@ -51,6 +51,7 @@ describe("figures on screen", () => {
   });
 
   it("refuses what is no figure", () => {
-    for (const typed of ["", "-", "twelve", "1e9", "1.2.3", "0x10", "NaN"]) expect(figures.parseFigure(typed)).toBeNull();
+    for (const typed of ["", "-", "twelve", "1e9", "1.2.3", "0x10", "NaN"])
+      expect(figures.parseFigure(typed)).toBeNull();
   });
 });

@@ -7,7 +7,9 @@ const root = path.resolve(import.meta.dirname, "../../..");
 
 describe("navigation", () => {
   it.each(navigation.map((item) => item.href))("leads to a page that exists: %s", (href) => {
-    const candidates = ["(site)", "(account)", "(console)"].map((group) => path.join(root, "app", group, href, "page.tsx"));
+    const candidates = ["(site)", "(account)", "(console)"].map((group) =>
+      path.join(root, "app", group, href, "page.tsx"),
+    );
     expect(candidates.filter((candidate) => existsSync(candidate))).toHaveLength(1);
   });
 
@@ -24,8 +26,14 @@ describe("return address after signing in", () => {
     expect(signInPath("/bench?restore=1")).toBe("/sign-in?from=%2Fbench%3Frestore%3D1");
   });
 
-  it.each(["//elsewhere.example", "/\\elsewhere.example", "https://elsewhere.example", "javascript:alert(1)", "", "bench", "/a\nb", null])(
-    "leads to the Bench instead of %j",
-    (wanted) => expect(safeReturnPath(wanted)).toBe("/bench"),
-  );
+  it.each([
+    "//elsewhere.example",
+    "/\\elsewhere.example",
+    "https://elsewhere.example",
+    "javascript:alert(1)",
+    "",
+    "bench",
+    "/a\nb",
+    null,
+  ])("leads to the Bench instead of %j", (wanted) => expect(safeReturnPath(wanted)).toBe("/bench"));
 });

@@ -46,7 +46,9 @@ describe("rate plane", () => {
     labels.forEach((label, index) => {
       expect(label.x - 62).toBeGreaterThanOrEqual(frame.leftPx);
       expect(label.y).toBeGreaterThanOrEqual(frame.topPx);
-      labels.slice(index + 1).forEach((other) => expect(Math.abs(other.x - label.x) >= 62 || Math.abs(other.y - label.y) >= 13).toBe(true));
+      labels
+        .slice(index + 1)
+        .forEach((other) => expect(Math.abs(other.x - label.x) >= 62 || Math.abs(other.y - label.y) >= 13).toBe(true));
     });
     expect(labels.length).toBeGreaterThanOrEqual(4);
     expect(rayLabels(rays, domain, frame).at(-1)).toBeUndefined();

@@ -19,12 +19,21 @@ function Page({ state, text }: { readonly state: LinkState; readonly text: strin
 }
 
 it("is dark, and says so, while no page has a device", () => {
-  render(<LinkStateProvider><Lamp /></LinkStateProvider>);
+  render(
+    <LinkStateProvider>
+      <Lamp />
+    </LinkStateProvider>,
+  );
   expect(screen.getByRole("status").textContent).toBe("No device connected");
 });
 
 it("follows the page that holds the device, and goes dark when that page leaves", () => {
-  const tree = (page: ReactNode) => <LinkStateProvider><Lamp />{page}</LinkStateProvider>;
+  const tree = (page: ReactNode) => (
+    <LinkStateProvider>
+      <Lamp />
+      {page}
+    </LinkStateProvider>
+  );
   const { rerender, container } = render(tree(<Page state="lit" text="Lanternfield LF-8 connected" />));
   expect(screen.getByRole("status").textContent).toBe("Lanternfield LF-8 connected");
   act(() => rerender(tree(<Page state="trouble" text="The cable is out" />)));

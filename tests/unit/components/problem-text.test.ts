@@ -18,15 +18,29 @@ function network(respond: () => Response | Promise<Response>) {
 
 afterEach(() => vi.unstubAllGlobals());
 
-const caught = (act: Promise<unknown>) => act.then(() => null, (error: unknown) => error);
+const caught = (act: Promise<unknown>) =>
+  act.then(
+    () => null,
+    (error: unknown) => error,
+  );
 
 describe("calling a route", () => {
   // RFC 9457, section 3.1: type, title, status, detail; `errors` is an extension.
   it("hands an RFC 9457 problem on, with the paths that were wrong", async () => {
-    network(() => answer(422, { type: "about:blank", title: "Understood, but not acceptable", status: 422, errors: [{ path: "slots[0].name", message: "is too long" }] }));
+    network(() =>
+      answer(422, {
+        type: "about:blank",
+        title: "Understood, but not acceptable",
+        status: 422,
+        errors: [{ path: "slots[0].name", message: "is too long" }],
+      }),
+    );
     const error = await caught(callApi("/api/profiles", { method: "POST", body: {} }));
     expect(error).toBeInstanceOf(ApiProblem);
-    expect(problemText(error)).toMatchObject({ fact: "Understood, but not acceptable.", errors: [{ path: "slots[0].name", message: "is too long" }] });
+    expect(problemText(error)).toMatchObject({
+      fact: "Understood, but not acceptable.",
+      errors: [{ path: "slots[0].name", message: "is too long" }],
+    });
   });
 
   it("says what a stale change means and what to do", async () => {

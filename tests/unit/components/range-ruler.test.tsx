@@ -9,7 +9,17 @@ const range = { min: -64, max: 63, step: 1 };
 
 function open(props: Partial<Parameters<typeof RangeRuler>[0]> = {}) {
   const changes: number[] = [];
-  render(<RangeRuler label="Horizontal position" unit="px" range={range} safe={[-20, 14]} now={12} onChange={(value) => changes.push(value)} {...props} />);
+  render(
+    <RangeRuler
+      label="Horizontal position"
+      unit="px"
+      range={range}
+      safe={[-20, 14]}
+      now={12}
+      onChange={(value) => changes.push(value)}
+      {...props}
+    />,
+  );
   return changes;
 }
 

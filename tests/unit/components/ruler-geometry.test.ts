@@ -1,12 +1,24 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { fractionOf, keyStep, snap, standingOf, stepDecimals, tickFractions, valueAt } from "@/components/video/ruler-geometry";
+import {
+  fractionOf,
+  keyStep,
+  snap,
+  standingOf,
+  stepDecimals,
+  tickFractions,
+  valueAt,
+} from "@/components/video/ruler-geometry";
 
 const range = { min: -64, max: 63, step: 1 };
 const width = { min: 80, max: 120, step: 0.4 };
 
 const anyRange = fc
-  .record({ min: fc.integer({ min: -1000, max: 1000 }), steps: fc.integer({ min: 1, max: 500 }), step: fc.constantFrom(0.1, 0.4, 0.5, 1, 2, 8) })
+  .record({
+    min: fc.integer({ min: -1000, max: 1000 }),
+    steps: fc.integer({ min: 1, max: 500 }),
+    step: fc.constantFrom(0.1, 0.4, 0.5, 1, 2, 8),
+  })
   .map(({ min, steps, step }) => ({ min, max: Number((min + steps * step).toFixed(6)), step }));
 
 describe("range ruler", () => {

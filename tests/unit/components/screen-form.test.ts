@@ -12,8 +12,15 @@ describe("screen form", () => {
   });
 
   it("takes kHz and MHz as Hz, without the dust of the arithmetic", () => {
-    const read = envelopeFromForm({ ...form(), maxPixelClockMhz: "13,513", bands: [{ lineMinKhz: "15.734", lineMaxKhz: "15.89", fieldMinHz: "48", fieldMaxHz: "62" }] });
-    expect(read).toMatchObject({ ok: true, value: { maxPixelClockHz: 13_513_000, bands: [{ lineRateHz: [15_734, 15_890] }] } });
+    const read = envelopeFromForm({
+      ...form(),
+      maxPixelClockMhz: "13,513",
+      bands: [{ lineMinKhz: "15.734", lineMaxKhz: "15.89", fieldMinHz: "48", fieldMaxHz: "62" }],
+    });
+    expect(read).toMatchObject({
+      ok: true,
+      value: { maxPixelClockHz: 13_513_000, bands: [{ lineRateHz: [15_734, 15_890] }] },
+    });
   });
 
   it("leaves out what is not known, its source with it", () => {

@@ -5,7 +5,10 @@ import config from "@/tailwind.config";
 type Rules = Readonly<Record<string, Readonly<Record<string, string>>>>;
 
 /** The variables of both themes, as the plugin puts them into the style sheet. */
-function themes(): { readonly day: Readonly<Record<string, string>>; readonly night: Readonly<Record<string, string>> } {
+function themes(): {
+  readonly day: Readonly<Record<string, string>>;
+  readonly night: Readonly<Record<string, string>>;
+} {
   let rules: Rules = {};
   for (const entry of config.plugins ?? []) {
     if (typeof entry === "object" && "handler" in entry) {
@@ -32,15 +35,29 @@ function contrast(a: string, b: string): number {
 
 describe("colours of both themes", () => {
   const { day, night } = themes();
-  const texts = ["text", "muted", "lamp", "signal", "halt", "ok"].flatMap((ink) => ["bg", "surface"].map((ground) => [ink, ground] as const));
+  const texts = ["text", "muted", "lamp", "signal", "halt", "ok"].flatMap((ink) =>
+    ["bg", "surface"].map((ground) => [ink, ground] as const),
+  );
 
   // WCAG 2.2, 1.4.3: 4.5 : 1 for text; 1.4.11: 3 : 1 for borders of controls.
-  it.each([...texts, ["text", "sunk"], ["muted", "sunk"], ["on-lamp", "lamp"], ["tape-ink", "tape"], ["bg", "text"]] as const)("%s on %s can be read", (ink, ground) => {
-    for (const theme of [day, night]) expect(contrast(theme[`--${ink}`] ?? "", theme[`--${ground}`] ?? "")).toBeGreaterThanOrEqual(4.5);
+  it.each([
+    ...texts,
+    ["text", "sunk"],
+    ["muted", "sunk"],
+    ["on-lamp", "lamp"],
+    ["tape-ink", "tape"],
+    ["bg", "text"],
+  ] as const)("%s on %s can be read", (ink, ground) => {
+    for (const theme of [day, night])
+      expect(contrast(theme[`--${ink}`] ?? "", theme[`--${ground}`] ?? "")).toBeGreaterThanOrEqual(4.5);
   });
 
-  it.each([["edge", "bg"], ["edge", "surface"]] as const)("%s on %s can be seen", (ink, ground) => {
-    for (const theme of [day, night]) expect(contrast(theme[`--${ink}`] ?? "", theme[`--${ground}`] ?? "")).toBeGreaterThanOrEqual(3);
+  it.each([
+    ["edge", "bg"],
+    ["edge", "surface"],
+  ] as const)("%s on %s can be seen", (ink, ground) => {
+    for (const theme of [day, night])
+      expect(contrast(theme[`--${ink}`] ?? "", theme[`--${ground}`] ?? "")).toBeGreaterThanOrEqual(3);
   });
 });
 
@@ -52,7 +69,7 @@ describe("choice of theme", () => {
   });
 
   it("takes nothing else from a cookie, and writes what it reads", () => {
-    expect(readTheme("dusk\" onload=")).toBeUndefined();
+    expect(readTheme('dusk" onload=')).toBeUndefined();
     expect(readTheme(/theme=(\w+)/u.exec(themeCookie("night"))?.[1])).toBe("night");
   });
 });

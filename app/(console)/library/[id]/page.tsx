@@ -11,7 +11,10 @@ const searchSchema = z.object({
   screen: z.string().max(64).nullable().catch(null),
 });
 
-export default async function ProfilePage({ params, searchParams }: {
+export default async function ProfilePage({
+  params,
+  searchParams,
+}: {
   readonly params: Promise<{ id: string }>;
   readonly searchParams: Promise<Readonly<Record<string, string | string[] | undefined>>>;
 }) {

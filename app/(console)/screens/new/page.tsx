@@ -6,9 +6,14 @@ import { getSessionUser } from "@/lib/server/session";
 
 export const metadata: Metadata = { title: "Add a screen" };
 
-export default async function NewScreenPage({ searchParams }: { readonly searchParams: Promise<{ from?: string | string[] }> }) {
+export default async function NewScreenPage({
+  searchParams,
+}: {
+  readonly searchParams: Promise<{ from?: string | string[] }>;
+}) {
   const { from } = await searchParams;
   const presetId = typeof from === "string" ? from : null;
-  if ((await getSessionUser()) === null) redirect(signInPath(presetId === null ? "/screens/new" : `/screens/new?from=${encodeURIComponent(presetId)}`));
+  if ((await getSessionUser()) === null)
+    redirect(signInPath(presetId === null ? "/screens/new" : `/screens/new?from=${encodeURIComponent(presetId)}`));
   return <NewScreenView presetId={presetId} />;
 }
