@@ -46,7 +46,6 @@ async function main(): Promise<void> {
     process.exit(2);
   }
   const served = await serve(makeDevice(wanted.value), wanted.value);
-  console.log(`${wanted.value.definition.slug} listens at ${served.where}`);
   let isStopping = false;
   const stop = (): void => {
     if (isStopping) return;
@@ -55,6 +54,8 @@ async function main(): Promise<void> {
   };
   process.on("SIGINT", stop);
   process.on("SIGTERM", stop);
+  // Said last: whoever waits for it may end this at once.
+  console.log(`${wanted.value.definition.slug} listens at ${served.where}`);
 }
 
 main().catch((error: unknown) => giveUp(error instanceof Error ? error.message : String(error)));
