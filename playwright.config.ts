@@ -27,7 +27,8 @@ export default defineConfig({
   reporter: process.env.E2E_REPORT ? [["json", { outputFile: process.env.E2E_REPORT }], ["line"]] : [["list"]],
   use: {
     baseURL,
-    trace: "retain-on-failure",
+    // A trace holds the page up so long that a device over a slow wire runs into its deadlines.
+    screenshot: "only-on-failure",
     viewport: { width: 1440, height: 900 },
     locale: "en-GB",
     timezoneId: "Europe/London",
