@@ -40,7 +40,7 @@ for (const theme of THEMES) {
   test(`an owner's screens and the form by ${theme}: no axe violation`, async ({ page, expectAccessible }) => {
     await preferTheme(page, theme);
     await signInAs(page, "imke", "/screens");
-    await expect(page.getByText("Before it: Cabinet A, upright")).toBeVisible();
+    await expect(page.getByText("Before it: Cabinet A, upright", { exact: true })).toBeVisible();
     await expect(page.getByRole("article")).toBeVisible();
     await expect(page.getByText("Demo: the Saltmarsh Play Archive")).toBeVisible();
     await expectAccessible(page);
