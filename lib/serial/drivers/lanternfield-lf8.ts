@@ -101,7 +101,8 @@ export const lanternfieldLf8: DriverDefinition = driverDefinitionSchema.parse({
     uncheckedRequests: ["*IDN?", "*OPC?", "SYST:ERR?"],
     refusalReply: "{header:text40}!{code:int} {message:text40}", busyReply: "{header:text40}!BUSY", maxLineBytes: 128,
   },
-  pace: { replyTimeoutMs: 250, retries: 3, gapMs: 0, inFlight: 4, workMs: 2 },
+  // 2 ms of work, and a page that is busy drawing lets bytes wait for some 100 ms.
+  pace: { replyTimeoutMs: 600, retries: 3, gapMs: 0, inFlight: 4, workMs: 2 },
   memory: { volatileWrites: true, commitTakesMs: 180, deviceTimer: { maxSeconds: 900 } },
   slots: { first: 1, count: 8, emptyMode: 0 },
   modes: { first: 1, count: 32 },

@@ -183,7 +183,7 @@ describe("when answers do not come", () => {
     silent(rig);
     const from = lastNumber(rig);
     const result = await rig.clock.run(rig.session.read([HPOS]));
-    expect(result).toEqual({ ok: false, error: { code: "timeout", message: "No answer to “SLOT1:HPOS?” within 250 ms." } });
+    expect(result).toEqual({ ok: false, error: { code: "timeout", message: "No answer to “SLOT1:HPOS?” within 600 ms." } });
     expect(sent(rig, from)).toHaveLength(1 + pace.retries);
     rig.device.setFault(null);
     expect(await rig.clock.run(rig.session.read([HPOS]))).toMatchObject({ ok: true });
@@ -204,7 +204,7 @@ describe("when answers do not come", () => {
     const rig = await connect();
     let held = 0;
     const late: WireFault = {
-      onByte: (_byte, _index, direction) => (direction === "device-to-host" && (held += 1) === 1 ? { kind: "delay", delayMs: 400 } : { kind: "pass" }),
+      onByte: (_byte, _index, direction) => (direction === "device-to-host" && (held += 1) === 1 ? { kind: "delay", delayMs: 800 } : { kind: "pass" }),
     };
     rig.plug.setFault(late);
     const reading = rig.session.read([HPOS]);
