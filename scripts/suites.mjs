@@ -94,15 +94,15 @@ const buildSuite = single("Build", 60, async () => {
  */
 export const stages = [
   [
-    [buildSuite, vitestSuite("Unit", "unit", 40)],
+    [buildSuite, vitestSuite("Unit", "unit", 110)],
     [
-      single("Lint", 40, () => tool("eslint/bin/eslint.js", [".", "--max-warnings", "0"])),
-      single("Types", 25, () => tool("typescript/bin/tsc", ["--noEmit"])),
+      single("Lint", 110, () => tool("eslint/bin/eslint.js", [".", "--max-warnings", "0"])),
+      single("Types", 50, () => tool("typescript/bin/tsc", ["--noEmit"])),
       vitestSuite("Database", "integration", 40),
     ],
   ],
-  [[vitestSuite("Faults", "faults", 20), vitestSuite("Peers", "peers", 30)]],
-  [[browserSuite(150)]],
+  [[vitestSuite("Faults", "faults", 105), vitestSuite("Peers", "peers", 15)]],
+  [[browserSuite(240)]],
 ];
 
 /** Removes the reports of this run. */

@@ -34,7 +34,7 @@ export function Checkbox({ checked, onChange, label, hint, disabled, name }: Che
         </Primitive.Indicator>
       </Primitive.Root>
       <div>
-        <label htmlFor={id} className={disabled === true ? "opacity-60" : undefined}>
+        <label htmlFor={id}>
           {label}
         </label>
         {hint === undefined ? null : (

@@ -64,7 +64,8 @@ export function formatUs(us: number): string {
 
 /** Two ends of a range → "15.45 … 15.89 kHz". */
 export function formatSpan(span: readonly [number, number], unit: string, style: FigureStyle = {}): string {
-  return withUnit(`${formatNumber(span[0], style)} … ${formatNumber(span[1], style)}`, unit);
+  const [low, high] = span.map((end) => formatNumber(end, style));
+  return withUnit(low === high ? String(low) : `${low} … ${high}`, unit);
 }
 
 /** Line rates of a band → "15.45 … 15.89 kHz". */

@@ -29,7 +29,7 @@ export function RangeRuler(props: RangeRulerProps) {
   const figure = value === undefined ? "not known" : withUnit(format(value), unit);
   const outside = value !== undefined && safe !== undefined && standingOf(value, safe) === "outside";
   return (
-    <div role="group" aria-labelledby={labelId} className={classNames("py-2.5", disabled && "opacity-60")}>
+    <div role="group" aria-labelledby={labelId} className="py-2.5">
       <div className="mb-1.5 flex items-baseline justify-between gap-3">
         <span id={labelId} className="font-strong">
           {label}
