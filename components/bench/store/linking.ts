@@ -96,7 +96,8 @@ async function open(core: BenchCore, driver: CompiledDriver, port: SerialPortLik
   store.setState({ link: { name: "opening" } });
   const opened = await openSession({
     port, driver, clock, wireLog,
-    onState: (state) => { if (state.name === "identifying") store.setState({ link: { name: "identifying" } }); },
+    // A run that is taken up identifies the device once more: the link is ready then, and stays so.
+    onState: (state) => { if (state.name === "identifying" && store.getState().link.name === "opening") store.setState({ link: { name: "identifying" } }); },
   });
   if (!opened.ok) {
     // A run that waits for its device keeps its page: only the link failed again.
