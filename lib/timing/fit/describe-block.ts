@@ -46,7 +46,7 @@ function lineRateBlock(request: FitRequest, timing: RasterTiming): Block {
   const extreme = side === "above" ? "fastest" : "slowest";
   const sentence =
     `${lines} ${how} ${figure(totalLines)} in all with ${figure(blankLines)} of blanking; at ${hz(request.wish.fieldRateHz)} ` +
-    `that is ${kHz(neededHz)} and this screen ${end} at ${kHz(limitHz)}. At its ${extreme} they run at ${hz(fieldRateAtLimitHz)}.`;
+    `that is ${kHz(neededHz)} and this screen ${end} at ${kHz(limitHz)}; at its ${extreme} they run at ${hz(fieldRateAtLimitHz)}.`;
   return {
     constraint,
     needed: neededHz,

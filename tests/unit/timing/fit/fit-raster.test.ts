@@ -182,7 +182,7 @@ describe("when nothing fits", () => {
     });
     expect(blockedBy[0]?.fieldRateAtLimitHz).toBeCloseTo(54.8, 2);
     expect(blockedBy[0]?.sentence.replaceAll(/[\u00A0\u2009]/gu, " ")).toBe(
-      "270 lines need 290 in all with 20 of blanking; at 60 Hz that is 17.4 kHz and this screen ends at 15.892 kHz. At its fastest they run at 54.8 Hz.",
+      "270 lines need 290 in all with 20 of blanking; at 60 Hz that is 17.4 kHz and this screen ends at 15.892 kHz; at its fastest they run at 54.8 Hz.",
     );
     const given = nearest.map(({ timing, changed }) => [
       activeFrameLines(timing),
