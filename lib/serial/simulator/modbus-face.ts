@@ -101,6 +101,7 @@ export const createModbusFace: FaceMaker = ({ driver, clock, perform, send }) =>
       if (gap > maxReadGap) return except(code, 0x02);
       if (owner) owners.add(owner);
     }
+    if (owners.size === 0) return except(code, 0x02);
     const values = lookUp(code, [...owners]);
     if (!values) return;
     const data = new Uint8Array(2 * count);

@@ -15,7 +15,7 @@ export function connectTcp(host: string, port: number): Promise<ByteDuplex> {
   });
 }
 
-/** Opens a serial device or a pseudo-terminal through the package `serialport`. */
+/** Opens a serial device or a pseudo-terminal through the package `serialport`. Its `close` comes when the port is let go of. */
 export function connectSerial(path: string, options: SerialOpenOptions): Promise<ByteDuplex> {
   const { baudRate, dataBits, stopBits, parity, flowControl } = options;
   return new Promise((resolve, reject) => {
@@ -28,6 +28,8 @@ export function connectSerial(path: string, options: SerialOpenOptions): Promise
       rtscts: flowControl === "hardware",
       autoOpen: false,
     });
-    serial.open((error) => (error ? reject(error) : resolve(serial)));
+    // Its own `destroy` ends the stream and leaves the port open.
+    const destroy = () => serial.close(() => undefined);
+    serial.open((error) => (error ? reject(error) : resolve(Object.assign(serial, { destroy }))));
   });
 }
