@@ -38,7 +38,7 @@ export default defineConfig({
     { name: "pages", testMatch: /(?:headers|pages-[\w-]+)\.spec\.ts$/u },
     // A device on a wire answers within deadlines of real time, so no other page runs beside it; on a machine that is busy
     // elsewhere one repeat is allowed.
-    { name: "wire", testMatch: /(?:journey-[\w-]+|recover|tour)\.spec\.ts$/u, dependencies: ["pages"], workers: 1, retries: 1 },
+    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|recover|tour)\.spec\.ts$/u, dependencies: ["pages"], workers: 1, retries: 1 },
   ],
   webServer: {
     command: `"${process.execPath}" scripts/serve-test.mjs`,

@@ -1,6 +1,6 @@
 "use client";
 
-import { useState } from "react";
+import { useEffect, useState } from "react";
 import { BackupBar } from "@/components/bench/backup-bar";
 import { BenchChain } from "@/components/bench/bench-chain";
 import { ConnectPanel } from "@/components/bench/connect-panel";
@@ -24,6 +24,11 @@ export function Bench({ incoming }: { readonly incoming: Incoming }) {
   const waiting = useIncoming(incoming);
   // While a run is open the bench itself is in sight: the picture is what the owner looks at.
   const isReviewing = review !== null && runState === null;
+  const view = isReviewing ? "review" : runState === null ? "bench" : "run";
+  // Another view begins at its top: a review with what stops it, a run with the picture.
+  useEffect(() => {
+    if (view !== "bench") window.scrollTo({ top: 0 });
+  }, [view]);
   return (
     <div className="flex flex-1 flex-col">
       {waiting === null ? null : <p role="status" className="gutter border-b border-line bg-sunk py-2.5">{waiting}</p>}

@@ -5,6 +5,10 @@ import { compareDocuments } from "@/lib/profile/compare";
 import { neutralSetting } from "@/lib/profile/neutral-settings";
 import { numberLimit } from "@/lib/profile/round";
 import { findMode, modePath, parsePath, patternOf } from "@/lib/profile/paths";
+import type { DriverDefinition } from "@/lib/serial/driver/definition";
+import type { PlanChange, Planned } from "@/lib/serial/plan/types";
+import { nativeChanges, shownRange, shownValue } from "@/components/bench/native-rows";
+import type { BenchDevice } from "@/components/bench/store/types";
 import { findingsAt } from "@/components/bench/setting-rows";
 
 /** One line of a plan under review. `timing` rows stand for a whole raster. */
@@ -58,18 +62,26 @@ function rowsOf(base: ProfileDocument, merged: ProfileDocument, device: DeviceLi
   });
 }
 
+/** A change that no document has a word for, in the device's own figures. */
+function nativeRowsOf(changes: readonly PlanChange[], driver: DriverDefinition, findings: readonly Finding[]): ReviewRow[] {
+  return nativeChanges(changes, driver).map(({ key, was, planned, setting }) => ({
+    path: key, label: setting.label, unit: shownRange(setting)?.unit ?? "", isTiming: false, range: shownRange(setting),
+    now: shownValue(setting, was), planned: shownValue(setting, planned), findings: findingsAt(findings, key),
+  }));
+}
+
 /**
  * What a plan changes, as the page lists it: by slot, then by mode, then what acts everywhere.
  *
  * @param base the document of the backup that the plan rests on
- * @param merged the document as it would be on the device, overlaid and rounded
+ * @param planned the document as it would be on the device, overlaid and rounded, and the changes that lead there
  */
-export function reviewGroups(base: ProfileDocument, merged: ProfileDocument, device: DeviceLimits, findings: readonly Finding[]): ReviewGroup[] {
+export function reviewGroups(base: ProfileDocument, { merged, changes, findings }: Pick<Planned, "merged" | "changes" | "findings">, { limits, driver }: Pick<BenchDevice, "limits" | "driver">): ReviewGroup[] {
   const slots = new Map<number, ReviewRow[]>();
   const modes = new Map<string, ReviewRow[]>();
   const everywhere: ReviewRow[] = [];
   const into = <K>(map: Map<K, ReviewRow[]>, key: K, row: ReviewRow) => map.set(key, [...(map.get(key) ?? []), row]);
-  for (const row of rowsOf(base, merged, device, findings)) {
+  for (const row of [...rowsOf(base, merged, limits, findings), ...nativeRowsOf(changes, driver, findings)]) {
     const parsed = parsePath(row.path);
     if (parsed?.scope === "slot") into(slots, parsed.number, row);
     else if (parsed?.scope === "mode") into(modes, parsed.key, row);

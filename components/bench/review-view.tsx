@@ -39,12 +39,12 @@ export function ReviewView({ review }: { readonly review: BenchReview }) {
   if (!device || !reading) return null;
   const { planned, target } = review;
   const name = device.stored?.name ?? `${device.identity.maker} ${device.identity.model}`;
-  const groups = reviewGroups(reading.content.document, planned.merged, device.limits, planned.findings);
+  const groups = reviewGroups(reading.content.document, planned, device);
   return (
     <div className="flex flex-1 flex-col">
       <div className="gutter grid gap-x-11 pb-8 lg:grid-cols-[minmax(0,1fr)_392px]">
         <div className="min-w-0">
-          <PageHead above={aboveOf(target, name)} title={titleOf(target)} lead={leadOf(review)} />
+          <PageHead above={aboveOf(target, name)} title={titleOf(target)} lead={leadOf(review, device.driver.memory.volatileWrites)} />
           {groups.length === 0 ? <p className="border-t border-line py-6">Nothing would change: the device holds these values already.</p> : <ReviewTable groups={groups} />}
           <ByHand review={review} />
         </div>
@@ -61,9 +61,12 @@ export function ReviewView({ review }: { readonly review: BenchReview }) {
   );
 }
 
-function leadOf({ planned }: BenchReview): string {
+function leadOf({ planned }: BenchReview, volatileWrites: boolean): string {
   const changes = `${formatCount(planned.changes.length, "value changes", "values change")}; ${formatNumber(planned.unchangedCount)} already match and stay as they are.`;
-  return `${changes} The device is backed up first, and nothing reaches its non-volatile memory until you keep it.`;
+  const memory = volatileWrites
+    ? "nothing reaches its non-volatile memory until you keep it"
+    : "this device stores each write at once: putting back writes the former values again";
+  return `${changes} The device is backed up first, and ${memory}.`;
 }
 
 function ByHand({ review }: { readonly review: BenchReview }) {

@@ -34,7 +34,7 @@ function SlotRow({ line, isChosen, onChoose }: { readonly line: SlotLine; readon
   const { askRecall } = useBenchActions();
   const isFree = useBench((state) => state.activity === "idle" && state.link.name === "ready");
   return (
-    <li className={classNames("grid grid-cols-[18px_minmax(0,1fr)_112px_64px] items-center gap-x-2.5 border-l-3 py-1.5 pl-2", line.active ? "border-lamp" : "border-transparent", isChosen && "bg-surface")}>
+    <li className={classNames("grid grid-cols-[18px_minmax(0,1fr)_64px] items-center gap-x-2.5 sm:grid-cols-[18px_minmax(0,1fr)_112px_64px] border-l-3 py-1.5 pl-2", line.active ? "border-lamp" : "border-transparent", isChosen && "bg-surface")}>
       <span className={classNames("figure", line.active ? "text-lamp" : "text-muted")}>{line.number}</span>
       <button
         type="button" aria-pressed={isChosen} onClick={() => onChoose(line.number)}
@@ -43,7 +43,7 @@ function SlotRow({ line, isChosen, onChoose }: { readonly line: SlotLine; readon
       >
         <Tape name={line.name} className="w-full" />
       </button>
-      <span className="flex items-center gap-1.5">
+      <span className="order-last col-start-2 flex items-center gap-1.5 sm:order-none sm:col-start-auto">
         {line.changed ? <><ChangedRing /><span className="sr-only">changed</span></> : null}
         {line.timing === null ? null : <ModeMark timing={line.timing} stacked />}
       </span>

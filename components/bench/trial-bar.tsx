@@ -61,8 +61,8 @@ function RunActs({ run }: { readonly run: BenchRun }) {
     case "trying":
       return (
         <div className="flex w-full gap-3 sm:w-auto">
-          <Button kind="primary" size="large" className="flex-1" disabled={busy} onClick={actions.keep}>Keep</Button>
-          <Button size="large" className="flex-1" onClick={actions.putBack}>Put back</Button>
+          <Button kind="primary" size="large" className="flex-1 whitespace-nowrap" disabled={busy} onClick={actions.keep}>Keep</Button>
+          <Button size="large" className="flex-1 whitespace-nowrap" onClick={actions.putBack}>Put back</Button>
         </div>
       );
     case "unconfirmed":

@@ -43,7 +43,7 @@ export function WireDrawer() {
 
 function WireTable({ lines, isOpen }: { readonly lines: readonly WireLine[]; readonly isOpen: boolean }) {
   return (
-    <div className={`gutter overflow-auto pb-2 ${isOpen ? "max-h-[40dvh]" : ""}`} tabIndex={isOpen ? 0 : undefined} aria-label={isOpen ? "Exchanges" : undefined} role={isOpen ? "region" : undefined}>
+    <div className={`gutter pb-2 ${isOpen ? "max-h-[40dvh] overflow-auto" : "overflow-hidden"}`} tabIndex={isOpen ? 0 : undefined} aria-label={isOpen ? "Exchanges" : undefined} role={isOpen ? "region" : undefined}>
       <table className="figure w-full text-left whitespace-nowrap text-muted">
         <caption className="sr-only">The last exchanges</caption>
         <thead className="sr-only"><tr><th scope="col">Time</th><th scope="col">Direction</th><th scope="col">Text</th><th scope="col">Hex</th><th scope="col">Took</th></tr></thead>

@@ -13,8 +13,9 @@ export function Tape({ name, number, size = "normal", className }: TapeProps) {
   const isEmpty = name === null || name === "";
   return (
     <span
+      data-tape-name
       className={classNames(
-        "inline-block max-w-full truncate align-middle font-heading leading-tight",
+        "inline-block max-w-full align-middle break-words font-heading leading-tight",
         size === "small" ? "px-2 pb-1 pt-[3px] text-sm" : "px-3 pb-[7px] pt-1.5 text-[15px]",
         isEmpty ? "border border-dashed border-edge font-[500] text-muted" : "bg-tape font-strong text-tape-ink",
         className,

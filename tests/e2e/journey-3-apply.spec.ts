@@ -55,13 +55,19 @@ for (const wire of WIRES) {
     await connect(page, wire);
     await chooseScreen(page, "Any 525-line television");
     await page.getByRole("slider", { name: /Horizontal position/u }).press("ArrowRight");
+    // A setting that no profile has a word for goes the way of every other.
+    await page.getByText("Everywhere", { exact: true }).click();
+    await page.getByRole("slider", { name: /Fan speed/u }).press("ArrowRight");
     await page.getByRole("button", { name: "Review the plan" }).click();
+    await expect(page.getByRole("row", { name: /Fan speed/u })).toContainText("45");
     await readCautions(page);
     await page.getByLabel("Length of the trial").selectOption("10");
     await page.getByRole("button", { name: "Back up and try" }).click();
     await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
     await expect(trial(page, "put-back")).toBeVisible({ timeout: READ_MS + 10_000 });
     await settled(page);
+    await expect(page.getByRole("slider", { name: /Fan speed/u })).toHaveAttribute("aria-valuenow", "40");
+    await page.getByText("This slot", { exact: true }).click();
     await expect(page.getByRole("slider", { name: /Horizontal position/u })).toHaveAttribute("aria-valuenow", "0");
   });
 }

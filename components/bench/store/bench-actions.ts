@@ -1,11 +1,12 @@
 import { getValue } from "@/lib/profile/paths";
 import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
+import type { NativeWrite } from "@/lib/serial/native";
 import type { SourceFormat } from "@/lib/timing/raster";
 import { say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { connectReal, connectSimulated, disconnect, reconnect } from "@/components/bench/store/linking";
 import { backUp, readDevice } from "@/components/bench/store/reading";
 import { askRecall, recallHeld } from "@/components/bench/store/recalling";
-import { acknowledge, leaveOut, openReview, setCountdown, takeRemedy, withEdit } from "@/components/bench/store/review";
+import { acknowledge, leaveOut, openReview, setCountdown, takeRemedy, withEdit, withNativeEdit } from "@/components/bench/store/review";
 import { act, lookAt } from "@/components/bench/store/run-control";
 import { acceptUnknownScreen, chooseScreen, forgetScreen, type ScreenChoice } from "@/components/bench/store/screens";
 import { backUpAndTry } from "@/components/bench/store/try-plan";
@@ -19,6 +20,16 @@ function edit(core: BenchCore, patch: DocumentPatch): void {
     const asRead = state.reading ? getValue(state.reading.content.document, patch.path) : undefined;
     return { edits: withEdit(state.edits, patch, asRead === patch.value) };
   });
+}
+
+function editNative(core: BenchCore, change: NativeWrite): void {
+  core.store.setState((state) => ({ nativeEdits: withNativeEdit(state.nativeEdits, change, state.reading?.content.values[change.key] === change.value) }));
+}
+
+/** Everything changed by hand so far, as one plan. */
+function reviewEdits(core: BenchCore): void {
+  const { edits, nativeEdits } = core.store.getState();
+  openReview(core, { kind: "edits", patches: edits, native: nativeEdits });
 }
 
 async function nameDevice(core: BenchCore, name: string): Promise<void> {
@@ -58,8 +69,9 @@ export function createBenchActions(core: BenchCore) {
     cancel: () => core.abort?.abort(),
     nameDevice: (name: string) => nameDevice(core, name),
     edit: (patch: DocumentPatch) => edit(core, patch),
-    clearEdits: () => store.setState({ edits: [] }),
-    reviewEdits: () => openReview(core, { kind: "edits", patches: store.getState().edits }),
+    editNative: (change: NativeWrite) => editNative(core, change),
+    clearEdits: () => store.setState({ edits: [], nativeEdits: [] }),
+    reviewEdits: () => reviewEdits(core),
     openReview: (target: BenchTarget) => openReview(core, target),
     closeReview: () => store.setState({ review: null }),
     leaveOut: (slot: number, isOut: boolean) => leaveOut(core, slot, isOut),

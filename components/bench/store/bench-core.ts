@@ -48,7 +48,7 @@ export type BenchCore = {
 
 export const EMPTY_BENCH: BenchState = {
   link: { name: "none" }, activity: "idle", device: null, reading: null, progress: null, backup: null,
-  screen: { kind: "none" }, edits: [], review: null, run: null, heldRecall: null, notice: null, nowMs: 0,
+  screen: { kind: "none" }, edits: [], nativeEdits: [], review: null, run: null, heldRecall: null, notice: null, nowMs: 0,
 };
 
 export function createBenchCore(around: BenchSurroundings): BenchCore {

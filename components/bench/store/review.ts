@@ -6,6 +6,7 @@ import { planEdits } from "@/lib/serial/plan/plan-edits";
 import { COUNTDOWN_SECONDS } from "@/lib/serial/run/create-run";
 import type { Planned } from "@/lib/serial/plan/types";
 import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
+import type { NativeWrite } from "@/lib/serial/native";
 import { readBefore, rememberRead } from "@/components/bench/store/read-before";
 import type { BenchCore } from "@/components/bench/store/bench-core";
 import type { BenchReview, BenchTarget } from "@/components/bench/store/types";
@@ -21,7 +22,7 @@ export function planFor(core: BenchCore, { target, leftOut, acknowledged }: Choi
     source: reading.arriving?.format ?? null, activeSlot: reading.activeSlot, rasterOut: reading.rasterOut, acknowledged,
   };
   switch (target.kind) {
-    case "edits": return planEdits({ ...input, edits: target.patches });
+    case "edits": return planEdits({ ...input, edits: target.patches, nativeEdits: target.native });
     case "profile": return planChanges({ ...input, leftOut, target: { kind: "profile", document: applyPatch(target.document, target.patches) } });
     case "restore": return planChanges({ ...input, leftOut, target: { kind: "restore", content: target.content } });
   }
@@ -90,4 +91,10 @@ export function takeRemedy(core: BenchCore, remedy: Remedy): void {
 export function withEdit(edits: readonly DocumentPatch[], patch: DocumentPatch, isAsRead: boolean): readonly DocumentPatch[] {
   const others = edits.filter((one) => one.path !== patch.path);
   return isAsRead ? others : [...others, patch];
+}
+
+/** The same for a native setting. */
+export function withNativeEdit(edits: readonly NativeWrite[], edit: NativeWrite, isAsRead: boolean): readonly NativeWrite[] {
+  const others = edits.filter((one) => one.key !== edit.key);
+  return isAsRead ? others : [...others, edit];
 }

@@ -73,7 +73,7 @@ function showTried(core: BenchCore, plan: CheckedPlan): void {
   const { backup } = plan.input;
   const values = { ...backup.values, ...Object.fromEntries(plan.changes.map(({ key, planned }) => [key, planned])) };
   const content = backupContent(driver, { values, unreadable: backup.unreadable }, device.identity.firmware);
-  core.store.setState({ edits: [], reading: { ...reading, content, activeSlot: plan.activeSlot, rasterOut: plan.rasterAfter } });
+  core.store.setState({ edits: [], nativeEdits: [], reading: { ...reading, content, activeSlot: plan.activeSlot, rasterOut: plan.rasterAfter } });
 }
 
 /** Shows the slot that the trial looks at now. */
@@ -100,7 +100,7 @@ async function afterEnd(core: BenchCore, run: Run, kept: KeptRun, journal: Bench
   core.run = null;
   letGo(core);
   dropKeptRun(core.around.storage, runKey(core));
-  core.store.setState({ edits: [], review: null });
+  core.store.setState({ edits: [], nativeEdits: [], review: null });
   if (run.view.state === "kept") {
     const backup = await backUp(core, "after-run");
     if (backup?.id && kept.runId !== null) {

@@ -9,6 +9,7 @@ import type { CheckedPlan, PlanInput } from "@/lib/serial/plan/types";
 function serverTarget(review: BenchReview, input: PlanInput): NewPlan["target"] | null {
   const { target } = review;
   if (target.kind === "restore") return target.backupId === null ? null : { kind: "restore", backupId: target.backupId };
+  if (target.kind === "edits") return { kind: "edits", edits: [...target.patches], native: [...target.native] };
   if (target.kind === "profile" && target.revisionId !== null && !target.isAltered) return { kind: "revision", revisionId: target.revisionId, patches: [...target.patches] };
   return input.target.kind === "profile" ? { kind: "document", document: input.target.document } : null;
 }

@@ -5,6 +5,7 @@ import type { RasterTiming } from "@/lib/timing/raster";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import type { BackupContent } from "@/lib/serial/backup/types";
 import type { DriverDefinition } from "@/lib/serial/driver/definition";
+import type { NativeWrite } from "@/lib/serial/native";
 import type { Planned } from "@/lib/serial/plan/types";
 import type { Arriving, DeviceIdentity, ReadProgress } from "@/lib/serial/session/types";
 import type { RunView } from "@/lib/serial/run/types";
@@ -59,7 +60,7 @@ export type BenchScreen =
 
 /** What a plan leads to. Patches are the remedies taken by a click. */
 export type BenchTarget =
-  | { readonly kind: "edits"; readonly patches: readonly DocumentPatch[] }
+  | { readonly kind: "edits"; readonly patches: readonly DocumentPatch[]; readonly native: readonly NativeWrite[] }
   | {
       readonly kind: "profile"; readonly title: string; readonly revisionId: string | null; readonly revisionNumber: number | null;
       readonly document: ProfileDocument; readonly patches: readonly DocumentPatch[];
@@ -100,6 +101,8 @@ export type BenchState = {
   readonly screen: BenchScreen;
   /** Changes made by hand on the rulers, not yet planned. */
   readonly edits: readonly DocumentPatch[];
+  /** The same for settings that no document has a word for. */
+  readonly nativeEdits: readonly NativeWrite[];
   readonly review: BenchReview | null;
   readonly run: BenchRun | null;
   /** A recall that a check holds back, or that asks first. */
