@@ -71,7 +71,8 @@ export interface ProtocolCodec {
   planReads(keys: readonly NativeKey[], values?: NativeValues): readonly WireRequest[];
   /** One request for one setting, or for neighbours that one request carries. Fails with a sentence. */
   planWrite(writes: readonly NativeWrite[]): Result<WireRequest, string>;
-  planStatus(name: StatusName): WireRequest | null;
+  /** @param answer what will be answered, where it is known: a text reply is as long as its words */
+  planStatus(name: StatusName, answer?: Fields): WireRequest | null;
   planAction(name: ActionName, fields: Fields): WireRequest | null;
   createDecoder(): FrameDecoder;
   /** The frame repeats a request word for word: a line that echoes. */

@@ -1,6 +1,8 @@
 import { characterMs } from "@/lib/serial/protocols/character-time";
 import type { NativeValues, NativeWrite } from "@/lib/serial/native";
+import type { RasterTiming } from "@/lib/timing/raster";
 import type { CompiledDriver, WireRequest } from "./compiled";
+import { rasterToFields } from "./raster-fields";
 
 /** What something costs on the line: characters both ways, and time. */
 export type WireCost = { readonly bytes: number; readonly seconds: number };
@@ -31,9 +33,20 @@ export function writeCost(driver: CompiledDriver, writes: readonly NativeWrite[]
   return costOf(driver, [request.value, ...driver.codec.planReads(writes.map((write) => write.key), values)]);
 }
 
-/** Making a slot active, and reading which one is. */
-export function recallCost(driver: CompiledDriver, slot: number): WireCost {
-  return costOf(driver, [driver.codec.planAction("recall", { slot }), driver.codec.planStatus("activeSlot")]);
+/**
+ * Making a slot active, and reading which one is and, where timing takes effect on recall, the raster that is out.
+ *
+ * @param rasterAfter what will be out then
+ */
+export function recallCost(driver: CompiledDriver, slot: number, rasterAfter: RasterTiming | null): WireCost {
+  const { codec, definition } = driver;
+  const raster = definition.timingTakesEffect === "recall" ? codec.planStatus("rasterOut", rasterToFields(driver, rasterAfter)) : null;
+  return costOf(driver, [codec.planAction("recall", { slot }), codec.planStatus("activeSlot", { slot }), raster]);
+}
+
+/** Muting the output, or letting it out again. It is not read back. */
+export function muteCost(driver: CompiledDriver, on: boolean): WireCost {
+  return costOf(driver, [driver.codec.planAction(on ? "muteOn" : "muteOff", {})]);
 }
 
 /** Storing working memory. */
@@ -48,9 +61,16 @@ export function wholeReadCost(driver: CompiledDriver, values?: NativeValues): Wi
   return { bytes: costOf(driver, [...reads, ...states]).bytes, seconds: wireLimitMs(driver, values) / 1000 + costOf(driver, states).seconds };
 }
 
+/** A whole read is planned once for each driver: a run makes several. */
+const wholeReads = new WeakMap<CompiledDriver, readonly WireRequest[]>();
+
 /** The cheapest set of requests that reads every setting once. */
 export function readsOfAll(driver: CompiledDriver, values?: NativeValues): readonly WireRequest[] {
-  return driver.codec.planReads(driver.settings.filter((setting) => setting.readable).map((setting) => setting.key), values);
+  const plan = () => driver.codec.planReads(driver.settings.filter((setting) => setting.readable).map((setting) => setting.key), values);
+  if (values !== undefined) return plan();
+  const requests = wholeReads.get(driver) ?? plan();
+  wholeReads.set(driver, requests);
+  return requests;
 }
 
 /**

@@ -1,5 +1,5 @@
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
-import { recallCost, wholeReadCost, writeCost, type WireCost } from "@/lib/serial/driver/costs";
+import { muteCost, recallCost, wholeReadCost, writeCost, type WireCost } from "@/lib/serial/driver/costs";
 import type { PlanStep } from "./types";
 
 const NOTHING: WireCost = { bytes: 0, seconds: 0 };
@@ -9,10 +9,9 @@ function stepCost(driver: CompiledDriver, step: PlanStep): WireCost {
     case "write":
       return writeCost(driver, step.writes);
     case "recall":
-      return recallCost(driver, step.slot);
+      return recallCost(driver, step.slot, step.rasterAfter);
     case "mute":
-      // One order without a read-back; what it costs is lost beside a single write.
-      return NOTHING;
+      return muteCost(driver, step.on);
   }
 }
 

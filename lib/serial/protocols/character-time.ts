@@ -1,6 +1,13 @@
-import type { DriverDefinition } from "@/lib/serial/driver/definition";
+import type { SerialOpenOptions } from "@/lib/serial/port";
 
-/** Time of one character in ms: start bit, data bits, parity bit, stop bits. 115 200 baud 8N1 gives 0.0868. */
-export function characterMs({ baudRate, dataBits, parity, stopBits }: DriverDefinition["transport"]): number {
-  return ((1 + dataBits + (parity === "none" ? 0 : 1) + stopBits) / baudRate) * 1000;
+type Framing = Pick<SerialOpenOptions, "dataBits" | "stopBits" | "parity">;
+
+/** Bits that one character takes: a start bit, the data, parity if any, the stop bits. What is absent is 8N1, as on a port. */
+export function bitsPerCharacter({ dataBits = 8, stopBits = 1, parity = "none" }: Framing): number {
+  return 1 + dataBits + (parity === "none" ? 0 : 1) + stopBits;
+}
+
+/** Time of one character on the line. @returns ms; 115 200 baud 8N1 gives 0.0868 */
+export function characterMs(transport: Framing & Pick<SerialOpenOptions, "baudRate">): number {
+  return (bitsPerCharacter(transport) * 1000) / transport.baudRate;
 }

@@ -6,7 +6,8 @@ import type { SimulatedFarEnd, UnplugOrder } from "./far-end";
 import type { SimulatedSerialPort } from "./simulated-port";
 import { SimulatedMachine } from "./simulated-serial";
 import type { SimulatedSerial } from "./simulated-serial";
-import { characterMs, PacedLine } from "./wire";
+import { characterMs } from "@/lib/serial/protocols/character-time";
+import { PacedLine } from "./wire";
 import type { WireEvent, WireFault } from "./wire-fault";
 
 /** How a device hangs on a simulated port. */
@@ -25,6 +26,8 @@ export type SimulatedDeviceOptions = {
   /** The device restarts when DTR goes on, as boards with a reset circuit do. */
   readonly restartsOnDtr?: boolean;
   readonly fault?: WireFault;
+  /** See `LineOptions`: how long due bytes may wait for those behind them, so that they come together. */
+  readonly grainMs?: number;
 };
 
 /** What a device has said and not yet sent; more is lost, as in any transmitter that nobody holds back. */
@@ -52,6 +55,7 @@ export class SimulatedDevicePort {
     this.machine = new SimulatedMachine(options.clock);
     const shared = {
       clock: options.clock,
+      grainMs: options.grainMs ?? 0,
       fault: () => this.#fault,
       onEvent: (event: WireEvent) => this.#happen(event),
     };
@@ -63,7 +67,7 @@ export class SimulatedDevicePort {
         get available() {
           return outOf()?.available ?? 0;
         },
-        take: (most) => outOf()?.take(most) ?? new Uint8Array(0),
+        takeByte: () => outOf()?.takeByte(),
       },
       deliver: (bytes) => options.model.receive(this.#throughSettings(bytes)),
     });
@@ -74,7 +78,7 @@ export class SimulatedDevicePort {
         get available() {
           return queue.length;
         },
-        take: (most) => queue.take(most),
+        takeByte: () => queue.takeByte(),
       },
       deliver: (bytes) => this.#far?.blast(this.#throughSettings(bytes)),
     });

@@ -1,9 +1,8 @@
 import type { Clock } from "@/lib/serial/clock";
-import type { SerialOpenOptions } from "@/lib/serial/port";
 import type { ByteFate, WireDirection, WireEvent, WireFault } from "./wire-fault";
 
 /** Where a line takes its bytes from: the sender's buffer. */
-export type ByteSource = { readonly available: number; take(most: number): Uint8Array };
+export type ByteSource = { readonly available: number; takeByte(): number | undefined };
 
 export type LineOptions = {
   readonly clock: Clock;
@@ -24,21 +23,6 @@ const PASS: ByteFate = { kind: "pass" };
 
 /** Rounding of sums of byte times, in ms: far below any byte time. */
 const ROUNDING_MS = 1e-6;
-
-/** Bits that one character takes: a start bit, the data, parity if any, the stop bits. */
-export function bitsPerCharacter(transport: Pick<SerialOpenOptions, "dataBits" | "stopBits" | "parity">): number {
-  return (
-    1 +
-    (transport.dataBits ?? 8) +
-    (transport.parity === undefined || transport.parity === "none" ? 0 : 1) +
-    (transport.stopBits ?? 1)
-  );
-}
-
-/** Time of one character on the line. @returns ms; 115 200 baud 8N1 gives 0.0868 */
-export function characterMs(transport: SerialOpenOptions): number {
-  return (bitsPerCharacter(transport) * 1000) / transport.baudRate;
-}
 
 /**
  * One direction of a serial line: each byte is due one character's time after the one before it.
@@ -137,7 +121,7 @@ export class PacedLine {
     const { source, direction, fault } = this.#options;
     const held = this.#held;
     this.#held = null;
-    const byte = held ?? source.take(1)[0];
+    const byte = held ?? source.takeByte();
     if (byte === undefined) {
       this.#dueMs = null;
       return null;

@@ -2,7 +2,8 @@ import type { Clock } from "@/lib/serial/clock";
 import type { SerialOpenOptions } from "@/lib/serial/port";
 import { ByteQueue } from "./byte-queue";
 import type { DeviceModel } from "./device-model-interface";
-import { characterMs, PacedLine } from "./wire";
+import { characterMs } from "@/lib/serial/protocols/character-time";
+import { PacedLine } from "./wire";
 import type { WireEvent, WireFault } from "./wire-fault";
 
 /** What a host may have sent ahead of the line's speed: past that the stream it comes from has to wait. */
@@ -56,7 +57,7 @@ export function createWiredDevice({
     get available() {
       return queue.length;
     },
-    take: (most: number) => queue.take(most),
+    takeByte: () => queue.takeByte(),
   });
   const lineOut = new PacedLine({ ...shared, direction: "device-to-host", source: sourceOf(toHost), deliver: onBytes });
   const lineIn = new PacedLine({

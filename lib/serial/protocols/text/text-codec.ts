@@ -99,9 +99,9 @@ function textCodec(
     return ok(valueRequest(write.key, exchange, body, lengthOf(exchange.reply, { [exchange.replyHole]: write.value }), false));
   }
 
-  function plainRequest(exchange: BoundExchange, fields: Fields, extraMs: number, idempotent: boolean, named: boolean): WireRequest {
-    // A reply's length is only known where it repeats what was asked; else its text with empty holes stands for it.
-    const known = Object.fromEntries(exchange.reply.holes.map((hole) => [hole.name, fields[hole.name] ?? ""]));
+  function plainRequest(exchange: BoundExchange, fields: Fields, extraMs: number, idempotent: boolean, named: boolean, answer = fields): WireRequest {
+    // A reply's length is known where it repeats what was asked, or is foreseen; else its text with empty holes stands for it.
+    const known = Object.fromEntries(exchange.reply.holes.map((hole) => [hole.name, answer[hole.name] ?? ""]));
     const about = { replyBytes: lengthOf(exchange.reply, known), extraMs, idempotent, keys: [] };
     return request(fillTemplate(exchange.request, fields), exchange, about, (found) => ({ kind: "reply", values: {}, fields: found }), named);
   }
@@ -111,9 +111,9 @@ function textCodec(
     silenceMs: 0,
     planReads,
     planWrite,
-    planStatus(name) {
+    planStatus(name, answer) {
       const exchange = exchanges.statuses.get(name);
-      return exchange ? plainRequest(exchange, {}, 0, true, true) : null;
+      return exchange ? plainRequest(exchange, {}, 0, true, true, answer) : null;
     },
     planAction(name, fields) {
       const exchange = exchanges.actions.get(name);

@@ -2,7 +2,8 @@ import { describe, expect, test } from "vitest";
 import type { Clock } from "@/lib/serial/clock";
 import { createVirtualClock } from "@/lib/serial/clock/virtual-clock";
 import { ByteQueue } from "@/lib/serial/simulator/byte-queue";
-import { bitsPerCharacter, characterMs, PacedLine } from "@/lib/serial/simulator/wire";
+import { bitsPerCharacter, characterMs } from "@/lib/serial/protocols/character-time";
+import { PacedLine } from "@/lib/serial/simulator/wire";
 import { anyOf, faultAtByte } from "@/lib/serial/simulator/wire-fault";
 import type { ByteFault, WireEvent, WireFault } from "@/lib/serial/simulator/wire-fault";
 
