@@ -53,6 +53,12 @@ export class BytePipe {
     return taken;
   }
 
+  takeByte(): number | undefined {
+    const byte = this.#bytes.takeByte();
+    if (byte !== undefined) this.onRoom?.();
+    return byte;
+  }
+
   /** Closes the writing end. */
   end(): void {
     if (this.#ended) return;

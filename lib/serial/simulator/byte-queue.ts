@@ -2,6 +2,8 @@
 export class ByteQueue {
   #chunks: Uint8Array[] = [];
   #length = 0;
+  /** Bytes of the first chunk that are gone. */
+  #gone = 0;
 
   get length(): number {
     return this.#length;
@@ -21,18 +23,34 @@ export class ByteQueue {
     while (filled < taken.length) {
       const head = this.#chunks[0];
       if (!head) break;
-      const part = head.subarray(0, taken.length - filled);
+      const part = head.subarray(this.#gone, this.#gone + taken.length - filled);
       taken.set(part, filled);
       filled += part.length;
-      if (part.length === head.length) this.#chunks.shift();
-      else this.#chunks[0] = head.subarray(part.length);
+      this.#pass(head, part.length);
     }
-    this.#length -= taken.length;
     return taken;
+  }
+
+  /** Takes one byte from the front; undefined where there is none. */
+  takeByte(): number | undefined {
+    const head = this.#chunks[0];
+    if (!head) return undefined;
+    const byte = head[this.#gone];
+    this.#pass(head, 1);
+    return byte;
+  }
+
+  #pass(head: Uint8Array, count: number): void {
+    this.#length -= count;
+    this.#gone += count;
+    if (this.#gone < head.length) return;
+    this.#chunks.shift();
+    this.#gone = 0;
   }
 
   clear(): void {
     this.#chunks = [];
     this.#length = 0;
+    this.#gone = 0;
   }
 }

@@ -1,4 +1,4 @@
-import type { Fields } from "@/lib/serial/driver/compiled";
+import type { CompiledDriver, Fields } from "@/lib/serial/driver/compiled";
 import type { NativeValue } from "@/lib/serial/native";
 import { compileExchanges, type BoundExchange, type TextExchanges } from "@/lib/serial/protocols/text/exchanges";
 import { createLineSplitter, encodeLine, openLine, readLine, type TextProtocol } from "@/lib/serial/protocols/text/line";
@@ -32,6 +32,19 @@ function commandsOf({ reads, writes, statuses, actions }: TextExchanges): Readon
   return commands;
 }
 
+const commandsByDriver = new WeakMap<CompiledDriver, ReadonlyMap<string, Command>>();
+
+/** The commands of a driver, worked out once. */
+function commandsFor(driver: CompiledDriver): ReadonlyMap<string, Command> {
+  const known = commandsByDriver.get(driver);
+  if (known) return known;
+  const compiled = compileExchanges(driver.definition, driver.settings);
+  if (!compiled.ok) throw new Error("A compiled driver has exchanges that compile");
+  const commands = commandsOf(compiled.value);
+  commandsByDriver.set(driver, commands);
+  return commands;
+}
+
 /** The command whose request begins the line; the longest beginning wins. At most one look-up a character. */
 function findCommand(commands: ReadonlyMap<string, Command>, body: string): Command | undefined {
   for (let length = body.length; length > 0; length -= 1) {
@@ -44,6 +57,12 @@ function findCommand(commands: ReadonlyMap<string, Command>, body: string): Comm
 function complaintTemplate(source: string | undefined): Template | null {
   const compiled = source === undefined ? null : compileTemplate(source);
   return compiled?.ok ? compiled.value : null;
+}
+
+/** Fills a reply; a hole that a device made from a driver knows nothing of is blank. */
+function answerText(template: Template, fields: Fields): string {
+  const blank = Object.fromEntries(template.holes.map((hole) => [hole.name, hole.type === "number" ? 0 : hole.type === "word" ? "-" : ""]));
+  return fillTemplate(template, { ...blank, ...fields });
 }
 
 /** SCPI's error queue: first in, first out, "No error" when empty. */
@@ -63,10 +82,8 @@ function createErrorQueue() {
 export const createTextFace: FaceMaker = ({ driver, clock, perform, send }) => {
   const { protocol, pace, memory } = driver.definition;
   if (protocol.kind !== "text") throw new Error("A text face needs a text driver");
-  const compiled = compileExchanges(driver.definition, driver.settings);
-  if (!compiled.ok) throw new Error("A compiled driver has exchanges that compile");
   const text: TextProtocol = protocol;
-  const commands = commandsOf(compiled.value);
+  const commands = commandsFor(driver);
   const refusal = complaintTemplate(text.refusalReply);
   const busy = complaintTemplate(text.busyReply);
   const splitter = createLineSplitter(text);
@@ -82,11 +99,11 @@ export const createTextFace: FaceMaker = ({ driver, clock, perform, send }) => {
 
   function serve({ exchange, operationOf, replyOf }: Command, asked: Fields, checked: boolean): void {
     const answer = answerOf(operationOf(asked));
-    if (answer.kind === "values") say(fillTemplate(exchange.reply, replyOf(answer.fields, asked, answer.values)), checked);
-    else if (answer.kind === "busy" && busy) say(fillTemplate(busy, { header: exchange.header }), checked);
+    if (answer.kind === "values") say(answerText(exchange.reply, replyOf(answer.fields, asked, answer.values)), checked);
+    else if (answer.kind === "busy" && busy) say(answerText(busy, { header: exchange.header }), checked);
     else if (answer.kind === "refused") {
       errors.add(answer.code, answer.message);
-      if (refusal) say(fillTemplate(refusal, { header: exchange.header, code: answer.code, message: answer.message }), checked);
+      if (refusal) say(answerText(refusal, { header: exchange.header, code: answer.code, message: answer.message }), checked);
     }
   }
 

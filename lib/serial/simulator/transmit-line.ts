@@ -49,6 +49,15 @@ export class TransmitLine {
     return taken;
   }
 
+  /** Takes one byte for the wire. */
+  takeByte(): number | undefined {
+    if (this.#options.isHeld()) return undefined;
+    const byte = this.#options.osBufferBytes === 0 ? this.#pipe?.takeByte() : this.#osBuffer.takeByte();
+    this.#fillOsBuffer();
+    this.#noticeEmpty();
+    return byte;
+  }
+
   receive(): Promise<Received> {
     return new Promise((resolve) => {
       this.#receivers.push(resolve);

@@ -5,6 +5,7 @@ import { checkBits, checkOf } from "@/lib/serial/protocols/checksum";
 export type TextProtocol = Extract<DriverDefinition["protocol"], { kind: "text" }>;
 
 const encoder = new TextEncoder();
+const decoder = new TextDecoder("utf-8", { fatal: true, ignoreBOM: true });
 
 /** The check field of a line, with its asterisk: `*713F`; empty where the protocol has none. Form: IEC 61162-1. */
 export function checkField(protocol: TextProtocol, body: string): string {
@@ -53,7 +54,8 @@ export function createLineSplitter({ lineEnd, maxLineBytes }: Pick<TextProtocol,
     length = 0;
     return taken;
   };
-  const atEnd = () => length >= end.length && end.every((byte, index) => held[length - end.length + index] === byte);
+  const last = end[end.length - 1];
+  const atEnd = (byte: number) => byte === last && length >= end.length && end.every((one, index) => held[length - end.length + index] === one);
 
   return {
     push(bytes) {
@@ -61,7 +63,7 @@ export function createLineSplitter({ lineEnd, maxLineBytes }: Pick<TextProtocol,
       for (const byte of bytes) {
         held[length] = byte;
         length += 1;
-        if (atEnd()) {
+        if (atEnd(byte)) {
           pieces.push({ bytes: take(), whole: !overlong });
           overlong = false;
         } else if (length === held.length) {
@@ -84,7 +86,7 @@ export function createLineSplitter({ lineEnd, maxLineBytes }: Pick<TextProtocol,
 /** Reads the text of a line's bytes (line end included). Null: not UTF-8. */
 export function readLine(protocol: TextProtocol, bytes: Uint8Array): string | null {
   try {
-    return new TextDecoder("utf-8", { fatal: true, ignoreBOM: true }).decode(bytes.subarray(0, bytes.length - encoder.encode(protocol.lineEnd).length));
+    return decoder.decode(bytes.subarray(0, bytes.length - protocol.lineEnd.length));
   } catch {
     return null;
   }

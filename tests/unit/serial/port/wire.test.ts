@@ -20,7 +20,7 @@ function line(clock: Clock, fault: WireFault | null = null, grainMs = 0) {
       get available() {
         return source.length;
       },
-      take: (most) => source.take(most),
+      takeByte: () => source.takeByte(),
     },
     deliver: (bytes) => bytes.forEach((byte) => arrivals.push({ byte, atMs: clock.nowMs() })),
     fault: () => fault,
