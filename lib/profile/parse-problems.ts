@@ -33,6 +33,8 @@ function message(issue: z.core.$ZodIssue): string {
   if (issue.code === "invalid_type") return `Must be ${kinds[issue.expected] ?? issue.expected}.`;
   if (issue.code === "too_big" || issue.code === "too_small") return sizeMessage(issue);
   if (issue.code === "invalid_value") return `Must be one of: ${issue.values.map(String).join(", ")}.`;
+  if (issue.code === "unrecognized_keys") return `The format has no such field: ${issue.keys.slice(0, 5).join(", ")}.`;
+  if (issue.code === "custom") return `It ${issue.message}.`;
   if (issue.code === "invalid_format" && issue.message.includes("control")) return "Must have no control characters.";
   return "Is not of the form that the document wants.";
 }

@@ -32,6 +32,15 @@ export type Recording = { readonly head: RecordingHead; readonly lines: readonly
 
 const rounded = (ms: number) => Math.round(ms * 1000) / 1000;
 
+/** What an event's sentence says between quotes may be a name. */
+export const strikeOutEvent = (text: string): string => text.replace(/“[^”]*”/gu, "“…”");
+
+/** The text of a recording, as `parseRecording` reads it. */
+export function recordingText({ head, lines }: Recording): string {
+  const shown = lines.map((line) => (line.direction === "event" ? line : { atMs: line.atMs, direction: line.direction, hex: hexOf(line.bytes) }));
+  return [head, ...shown].map((line) => `${JSON.stringify(line)}\n`).join("");
+}
+
 /**
  * Text of a recording made from the wire log.
  * @param options.strikeOut takes names and serial numbers out, of events altogether what is between quotes
@@ -41,13 +50,13 @@ export function saveRecording(driver: CompiledDriver, entries: readonly WireEntr
   const [first] = entries;
   const head: RecordingHead = { format: RECORDING_FORMAT, version: 1, driver: { slug, version }, startedAt: new Date(first?.wallMs ?? 0).toISOString(), struckOut: options.strikeOut };
   const requests = new Map(entries.filter((entry) => entry.direction === "out").map((entry) => [entry.number, entry.bytes]));
-  const lines = entries.map((entry) => {
+  const lines = entries.map((entry): RecordingLine => {
     const atMs = rounded(entry.atMs - (first?.atMs ?? 0));
-    if (entry.direction === "event") return { atMs, direction: entry.direction, text: options.strikeOut ? entry.text.replace(/“[^”]*”/gu, "“…”") : entry.text };
+    if (entry.direction === "event") return { atMs, direction: entry.direction, text: options.strikeOut ? strikeOutEvent(entry.text) : entry.text };
     const request = entry.exchange === undefined ? undefined : requests.get(entry.exchange);
-    return { atMs, direction: entry.direction, hex: hexOf(options.strikeOut ? driver.codec.strikeOut(entry.bytes, request) : entry.bytes) };
+    return { atMs, direction: entry.direction, bytes: options.strikeOut ? driver.codec.strikeOut(entry.bytes, request) : entry.bytes };
   });
-  return [head, ...lines].map((line) => `${JSON.stringify(line)}\n`).join("");
+  return recordingText({ head, lines });
 }
 
 const bytesOf = (hex: string) => Uint8Array.from(hex === "" ? [] : hex.split(" "), (pair) => Number.parseInt(pair, 16));

@@ -6,6 +6,7 @@ import type { NativeValue } from "@/lib/serial/native";
 import type { CompiledDriver, CompiledSetting, ProtocolCodec } from "./compiled";
 import { MAX_SETTINGS, type DriverDefinition, type DriverSetting } from "./definition";
 import { NEUTRAL_PATHS } from "./neutral";
+import { operationProblems } from "./operation-fields";
 
 type Scope = { readonly scope: CompiledSetting["scope"]; readonly numbers: readonly (number | undefined)[] };
 
@@ -101,7 +102,7 @@ export function compileDriver(definition: DriverDefinition): Result<CompiledDriv
   if (!expanded.ok) return expanded;
   const settings = expanded.value;
   const byKey = new Map(settings.map((setting) => [setting.key, setting]));
-  const problems = factoryProblems(definition, byKey);
+  const problems = [...factoryProblems(definition, byKey), ...operationProblems(definition)];
   if (problems.length > 0) return fail(problems);
   const codec = createCodec(definition, settings);
   return codec.ok ? ok({ definition, settings, byKey, codec: codec.value }) : codec;

@@ -40,14 +40,16 @@ export function placesOf(definition: DriverDefinition, settings: readonly Compil
 
   const places = new Map<NativeKey, PlacedField>();
   const owners = new Map<string, NativeKey>();
-  for (const { key, scope, number, source } of settings) {
+  const pathOf = new Map(definition.settings.map(({ key }, index) => [key, `settings[${index}].wire.field.register`]));
+  for (const { key, pattern, scope, number, source } of settings) {
     if (source.wire.kind !== "modbus") continue;
+    const path = pathOf.get(pattern) ?? key;
     const first = scope === "slot" ? definition.slots.first : definition.modes.first;
     const placed = placeField(source.wire.field, number === undefined ? 0 : number - first);
-    if (endOf(placed) > REGISTERS) problems.push({ path: key, message: "lies beyond the last register" });
+    if (endOf(placed) > REGISTERS) problems.push({ path, message: `lies beyond the last register, for ${key}` });
     for (let register = placed.first; register < endOf(placed); register += 1) {
       const owner = owners.get(`${placed.field.table} ${register}`);
-      if (owner !== undefined) problems.push({ path: key, message: `shares register ${register} with ${owner}` });
+      if (owner !== undefined) problems.push({ path, message: `shares register ${register} with ${owner}, for ${key}` });
       owners.set(`${placed.field.table} ${register}`, key);
     }
     places.set(key, placed);

@@ -111,15 +111,17 @@ function compileOperations<Name extends string>(
 }
 
 /** Two requests that begin alike, or two replies that name the same thing, could not be told apart. */
-function ambiguities({ reads, writes, statuses, actions }: TextExchanges): PathMessage[] {
+function ambiguities({ reads, writes, statuses, actions }: TextExchanges, pathOf: (key: string) => string): PathMessage[] {
   const problems: PathMessage[] = [];
   const seen = new Map<string, string>();
+  const places: Readonly<Record<string, (name: string) => string>> = { read: (key) => `${pathOf(key)}.read`, write: (key) => `${pathOf(key)}.write`, status: (name) => `status.${name}`, action: (name) => `actions.${name}` };
   for (const [kind, group] of Object.entries({ read: reads, write: writes, status: statuses, action: actions })) {
     for (const [name, exchange] of group as ReadonlyMap<string, BoundExchange>) {
       const lead = leadOf(exchange.request);
       const other = seen.get(lead);
-      if (lead === "") problems.push({ path: name, message: `its ${kind} request has to begin with text` });
-      else if (other !== undefined) problems.push({ path: name, message: `its ${kind} request begins like the one of ${other}` });
+      const path = `${places[kind]?.(name) ?? name}.request`;
+      if (lead === "") problems.push({ path, message: "has to begin with text" });
+      else if (other !== undefined) problems.push({ path, message: `begins like the one of ${other}, for ${name}` });
       seen.set(lead, name);
     }
   }
@@ -147,6 +149,8 @@ export function compileExchanges(definition: DriverDefinition, settings: readonl
     if (write) writes.set(key, { ...bind(write, fields), requestHole: ownHoles(write.request)[0]?.name ?? "", replyHole: ownHoles(write.reply)[0]?.name ?? "" });
   }
   const exchanges = { reads, writes, statuses, actions };
-  const twins = ambiguities(exchanges);
+  const patternOf = new Map(settings.map(({ key, pattern }) => [key, pattern]));
+  const indexOf = new Map(definition.settings.map(({ key }, index) => [key, index]));
+  const twins = ambiguities(exchanges, (key) => `settings[${indexOf.get(patternOf.get(key) ?? "") ?? 0}].wire`);
   return twins.length > 0 ? fail(twins) : ok(exchanges);
 }
