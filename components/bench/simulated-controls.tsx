@@ -3,6 +3,7 @@
 import { SelectField } from "@/components/ui/field";
 import { Button } from "@/components/ui/button";
 import type { SourceFormat } from "@/lib/timing/raster";
+import { FaultPanel } from "@/components/bench/fault-panel";
 import { useBench, useBenchActions } from "@/components/bench/bench-provider";
 
 const FORMATS: readonly { readonly label: string; readonly format: SourceFormat }[] = [
@@ -36,6 +37,7 @@ export function SimulatedControls() {
         <Button size="small" onClick={switchOffAndOn}>Switch it off and on</Button>
         <Button size="small" onClick={pullCable}>Pull the cable</Button>
       </div>
+      <FaultPanel />
     </section>
   );
 }

@@ -4,6 +4,7 @@ import { Button } from "@/components/ui/button";
 import { StopIcon } from "@/components/ui/finding-icon";
 import { formatCount, formatCountdown } from "@/components/ui/figures";
 import { useBench, useBenchActions } from "@/components/bench/bench-provider";
+import { RunStepList } from "@/components/bench/run-step-list";
 import { runWords } from "@/components/bench/run-words";
 import { StandingTable } from "@/components/bench/standing-table";
 import { formatMoment } from "@/components/ui/moments";
@@ -29,6 +30,7 @@ export function TrialBar() {
         <RunActs run={run} />
       </div>
       {view.state === "trying" && view.link === "up" ? <LookList run={run} /> : null}
+      <RunStepList run={run} />
       {view.standings.length > 0 ? <StandingTable standings={view.standings} /> : null}
     </section>
   );

@@ -93,5 +93,5 @@ export async function wireText(page: Page, filter: string): Promise<string[]> {
   if ((await log.getByRole("button", { name: "Open" }).count()) > 0) await log.getByRole("button", { name: "Open" }).click();
   await log.getByLabel("Filter").fill(filter);
   await expect(log.getByRole("region", { name: "Exchanges" })).toBeVisible();
-  return log.locator("tbody tr td:nth-child(3)").allInnerTexts();
+  return log.locator("tbody[data-lines] tr td:nth-child(3)").allInnerTexts();
 }

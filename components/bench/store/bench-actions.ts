@@ -2,6 +2,8 @@ import { getValue } from "@/lib/profile/paths";
 import type { DocumentPatch, Remedy } from "@/lib/profile/finding";
 import type { NativeWrite } from "@/lib/serial/native";
 import type { SourceFormat } from "@/lib/timing/raster";
+import { faultScript } from "@/lib/serial/simulator/fault-script";
+import { ruleOf, type FaultChoice } from "@/components/bench/fault-choices";
 import { say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { connectReal, connectSimulated, disconnect, reconnect } from "@/components/bench/store/linking";
 import { backUp, readDevice } from "@/components/bench/store/reading";
@@ -52,6 +54,13 @@ function simulatedActions(core: BenchCore) {
   return {
     setSource: (source: SourceFormat | null) => { withSimulated(({ model }) => model.setSource(source)); void readDevice(core); },
     switchOffAndOn: () => withSimulated(({ model }) => model.powerCycle()),
+    setFaults: (faults: readonly FaultChoice[]) => withSimulated((simulated) => {
+      const script = faultScript(faults.flatMap((choice) => ruleOf(choice) ?? []));
+      simulated.plug.setFault(script.wire);
+      simulated.plug.release();
+      simulated.model.setFault(script.device);
+      core.store.setState({ faults });
+    }),
     pullCable: () => withSimulated(({ plug }) => plug.unplug()),
   };
 }

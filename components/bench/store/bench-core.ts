@@ -7,6 +7,7 @@ import type { DeviceSession } from "@/lib/serial/session/types";
 import type { SimulatedDevice } from "@/components/bench/store/simulated-device";
 import type { BenchServer } from "@/components/bench/store/bench-server";
 import { createWireLog, type WireLog } from "@/lib/serial/wire-log";
+import { createWireView, type WireView } from "@/components/bench/wire-view";
 import type { BenchState } from "@/components/bench/store/types";
 
 export type BenchAccount = { readonly id: string; readonly name: string; readonly role: string };
@@ -38,6 +39,8 @@ export type BenchCore = {
   readonly around: BenchSurroundings;
   /** What went over the wire, over all sessions of this bench. */
   readonly wireLog: WireLog;
+  /** What the drawer shows of it. */
+  readonly wireView: WireView;
   line: BenchLine | null;
   /** Stops what reads or recalls now. */
   abort: AbortController | null;
@@ -48,13 +51,14 @@ export type BenchCore = {
 
 export const EMPTY_BENCH: BenchState = {
   link: { name: "none" }, activity: "idle", device: null, reading: null, progress: null, backup: null,
-  screen: { kind: "none" }, edits: [], nativeEdits: [], review: null, run: null, heldRecall: null, notice: null, nowMs: 0,
+  screen: { kind: "none" }, edits: [], nativeEdits: [], review: null, run: null, faults: [], heldRecall: null, notice: null, nowMs: 0,
 };
 
 export function createBenchCore(around: BenchSurroundings): BenchCore {
+  const wireLog = createWireLog({ clock: around.clock });
   return {
     store: createStore<BenchState>(() => ({ ...EMPTY_BENCH, nowMs: around.clock.wallMs() })),
-    around, wireLog: createWireLog({ clock: around.clock }), line: null, abort: null, run: null, releaseHold: null,
+    around, wireLog, wireView: createWireView(wireLog, around.clock), line: null, abort: null, run: null, releaseHold: null,
   };
 }
 

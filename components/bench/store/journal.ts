@@ -18,6 +18,8 @@ export type JournalParts = {
 
 /** A journal in browser storage that is delivered to the server when it can be: the run never waits for the server. */
 export type BenchJournal = JournalStore & {
+  /** Every entry so far, as it was written. */
+  readonly entries: readonly JournalEntry[];
   /** Entries that the server has not got yet. */
   readonly undelivered: number;
   /** Resolves once all is delivered; at once where there is no server. */
@@ -51,6 +53,7 @@ export function createJournal({ keep, deliver, clock, entries }: JournalParts): 
   }
 
   return {
+    get entries() { return all; },
     get undelivered() { return waiting.length; },
     append(entry) {
       const next = [...all, entry];

@@ -85,11 +85,11 @@ export async function lookAt(core: BenchCore, slot: number): Promise<void> {
   core.store.setState({ reading: { ...reading, activeSlot: slot, rasterOut: rasterOfSlot(driver, new Map(Object.entries(reading.content.values)), slot) } });
 }
 
-function show(core: BenchCore, run: Run, plan: CheckedPlan, notice: string | null = null): void {
+function show(core: BenchCore, run: Run, plan: CheckedPlan, journal: BenchJournal): void {
   core.store.setState((state) => ({
     activity: FINAL_RUN_STATES.includes(run.view.state) ? (state.activity === "running" ? "idle" : state.activity) : "running",
     run: {
-      view: run.view, changeCount: plan.changes.length, changedSlots: plan.changedSlots, notice,
+      view: run.view, journal: journal.entries, changeCount: plan.changes.length, changedSlots: plan.changedSlots, notice: null,
       storesAtOnce: !plan.input.driver.memory.volatileWrites,
     },
   }));
@@ -114,11 +114,11 @@ async function afterEnd(core: BenchCore, run: Run, kept: KeptRun, journal: Bench
 
 function follow(core: BenchCore, run: Run, plan: CheckedPlan, kept: KeptRun, journal: BenchJournal): void {
   core.run = run;
-  show(core, run, plan);
+  show(core, run, plan, journal);
   let hasEnded = false;
   let isTried = false;
   run.onView((view) => {
-    show(core, run, plan);
+    show(core, run, plan, journal);
     if (view.state === "trying" && !isTried) showTried(core, plan);
     isTried = view.state === "trying";
     if (!hasEnded && FINAL_RUN_STATES.includes(view.state) && !view.busy) {

@@ -8,7 +8,8 @@ import type { DriverDefinition } from "@/lib/serial/driver/definition";
 import type { NativeWrite } from "@/lib/serial/native";
 import type { Planned } from "@/lib/serial/plan/types";
 import type { Arriving, DeviceIdentity, ReadProgress } from "@/lib/serial/session/types";
-import type { RunView } from "@/lib/serial/run/types";
+import type { JournalEntry, RunView } from "@/lib/serial/run/types";
+import type { FaultChoice } from "@/components/bench/fault-choices";
 import type { PortFailure } from "@/components/bench/port-help";
 
 /** A connection as a closed union of states. */
@@ -81,6 +82,7 @@ export type BenchReview = {
 /** A run as the page shows it, with what its plan says beside it. */
 export type BenchRun = {
   readonly view: RunView;
+  readonly journal: readonly JournalEntry[];
   readonly changeCount: number;
   readonly changedSlots: readonly number[];
   /** Every write is stored at once: there is no trial memory. */
@@ -105,6 +107,8 @@ export type BenchState = {
   readonly nativeEdits: readonly NativeWrite[];
   readonly review: BenchReview | null;
   readonly run: BenchRun | null;
+  /** What goes wrong with a simulated device, as a maintainer chose. */
+  readonly faults: readonly FaultChoice[];
   /** A recall that a check holds back, or that asks first. */
   readonly heldRecall: { readonly slot: number; readonly findings: readonly Finding[] } | null;
   readonly notice: Notice | null;
