@@ -1,8 +1,7 @@
 "use client";
 
-import { memo, useEffect, useEffectEvent, useRef } from "react";
+import { memo, useEffect, useRef, useState } from "react";
 import { useStore } from "zustand";
-import { useVirtualizer } from "@tanstack/react-virtual";
 import { formatFigure } from "@/components/ui/figures";
 import { classNames } from "@/components/ui/class-names";
 import { hexOf, type WireEntry } from "@/lib/serial/wire-log";
@@ -13,6 +12,8 @@ import { isInStretch } from "@/components/bench/wire-view";
 const ROW_PX = 20;
 /** Rows drawn above and below what is in sight, so that a page read aloud or searched by the browser has some. */
 const ROWS_AROUND = 60;
+/** More than 40 % of any screen is high. */
+const ROWS_IN_SIGHT = 60;
 /** Lines that stand under a closed drawer's head. */
 const LINES_CLOSED = 3;
 
@@ -44,20 +45,19 @@ function OpenTable() {
   const isPaused = useStore(store, (state) => state.isPaused);
   const sight = useStore(store, (state) => state.sight);
   const box = useRef<HTMLDivElement>(null);
-  const rows = useVirtualizer({ count: entries.length, getScrollElement: () => box.current, estimateSize: () => ROW_PX, overscan: ROWS_AROUND });
+  // Rows are of one height, so which ones are in sight is a division.
+  const [topRow, setTopRow] = useState(0);
   const follows = !isPaused && sight === null;
   useEffect(() => {
     if (follows) box.current?.scrollTo({ top: box.current.scrollHeight });
   }, [follows, entries]);
-  const bringIntoSight = useEffectEvent((index: number) => rows.scrollToIndex(index, { align: "center" }));
   useEffect(() => {
-    if (sight !== null) bringIntoSight(sight.index);
+    if (sight !== null) box.current?.scrollTo({ top: sight.index * ROW_PX - box.current.clientHeight / 2 });
   }, [sight]);
-  const drawn = rows.getVirtualItems();
-  const first = drawn[0]?.index ?? 0;
-  const last = drawn.at(-1)?.index ?? -1;
+  const first = Math.max(0, Math.min(topRow, entries.length - ROWS_IN_SIGHT) - ROWS_AROUND);
+  const last = Math.min(entries.length, first + ROWS_IN_SIGHT + 2 * ROWS_AROUND) - 1;
   return (
-    <div ref={box} className="gutter max-h-[40dvh] overflow-auto pb-2" tabIndex={0} role="region" aria-label="Exchanges">
+    <div ref={box} onScroll={(event) => setTopRow(Math.floor(event.currentTarget.scrollTop / ROW_PX))} className="gutter max-h-[40dvh] overflow-auto pb-2" tabIndex={0} role="region" aria-label="Exchanges">
       <Lines entries={entries.slice(first, last + 1)} from={first} above={first * ROW_PX} below={(entries.length - 1 - last) * ROW_PX} />
     </div>
   );
