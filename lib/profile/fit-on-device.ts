@@ -28,16 +28,21 @@ function isHeld(timing: RasterTiming, { screen, device }: DeviceFitRequest): boo
   return sameCounts(stored, timing) && fitsEnvelope(stored, screen);
 }
 
+function finding(rule: string, path: string, sentence: string, limitSource: string): Finding {
+  return { rule, path, severity: "stop", sentence, limitSource, slots: [], remedies: [] };
+}
+
+/** Nothing was found to be in the way, and nothing fits: no single limit, nor all of them, can be named. */
+const nothingFinding = finding(
+  "wish.impossible",
+  "activeLines",
+  "No raster was found for this, whatever the screen and the device would take: ask for fewer px or lines, or another rate.",
+  "search",
+);
+
 function noStepFinding(device: DeviceLimits): Finding {
-  return {
-    rule: "device.step",
-    path: "device.numbers",
-    severity: "stop",
-    sentence: `${device.name} has no step for any of the rasters that fit; those of another width or count of lines may have one.`,
-    limitSource: "driver",
-    slots: [],
-    remedies: [],
-  };
+  const sentence = `${device.name} has no step for any of the rasters that fit; those of another width or count of lines may have one.`;
+  return finding("device.step", "device.numbers", sentence, "driver");
 }
 
 /**
@@ -57,13 +62,13 @@ export function fitOnDevice(request: DeviceFitRequest): Result<DeviceFitOutcome,
     const asked: FitRequest = { ...request, device: limits && { ...limits, outputClock } };
     const result = fitRaster(asked);
     if (!result.ok) return result;
-    const held = ({ timing }: FittedRaster) => isHeld(timing, request);
-    const fits = result.value.fits.filter(held);
-    nearest = result.value.nearest.filter(held);
-    if (fits.length > 0) return ok({ fits, blockedBy: [], nearest: [] });
-    if (result.value.blockedBy.length > 0) {
-      const blockedBy = fitFindings(asked, { ...result.value, nearest });
-      return ok({ fits, blockedBy, nearest });
+    const { fits, ...why } = result.value;
+    const held = fits.filter(({ timing }) => isHeld(timing, request));
+    nearest = why.nearest.filter(({ timing }) => isHeld(timing, request));
+    if (held.length > 0) return ok({ fits: held, blockedBy: [], nearest: [] });
+    if (fits.length === 0) {
+      const blockedBy = fitFindings(asked, { fits, ...why, nearest });
+      return ok({ fits: [], blockedBy: blockedBy.length > 0 ? blockedBy : [nothingFinding], nearest });
     }
   }
   return ok({ fits: [], blockedBy: device === undefined ? [] : [noStepFinding(device)], nearest });

@@ -1,7 +1,7 @@
-import { REASON_TRIES, type Budget } from "@/lib/timing/fit/budget";
+import { EXAMPLE_TRIES, REASON_TRIES, type Budget } from "@/lib/timing/fit/budget";
 import { describeBlock } from "@/lib/timing/fit/describe-block";
 import type { FitBlock, FitConstraint, FitRequest } from "@/lib/timing/fit/fit-types";
-import { holdsRaster, search } from "@/lib/timing/fit/search";
+import { firstRaster, holdsRaster, search, type Found } from "@/lib/timing/fit/search";
 import { searchSpace } from "@/lib/timing/fit/search-space";
 
 /**
@@ -53,6 +53,13 @@ function together(request: FitRequest, budget: Budget): FitConstraint[] {
   return gone;
 }
 
+/** The best raster without some constraints; where the tries do not last for that, the first that is found. */
+function exampleWithout(request: FitRequest, without: readonly FitConstraint[], budget: Budget): Found | undefined {
+  const space = searchSpace(request, new Set(without));
+  const [best] = search(space, budget);
+  return best ?? firstRaster(space, { left: EXAMPLE_TRIES });
+}
+
 /**
  * What keeps everything from fitting, with the figures of the best raster that would fit without it.
  *
@@ -62,10 +69,15 @@ function together(request: FitRequest, budget: Budget): FitConstraint[] {
  */
 export function blockedBy(request: FitRequest): FitBlock[] {
   const alone = singles(request, { left: REASON_TRIES });
-  const names = alone.length > 0 ? alone : together(request, { left: REASON_TRIES });
-  return names.flatMap((constraint) => {
-    const without = new Set(alone.length > 0 ? [constraint] : names);
-    const [best] = search(searchSpace(request, without));
-    return best === undefined ? [] : [{ ...describeBlock(request, constraint, best.timing), alone: alone.length > 0 }];
-  });
+  const budget = { left: EXAMPLE_TRIES };
+  if (alone.length > 0) {
+    return alone.flatMap((constraint) => {
+      const example = exampleWithout(request, [constraint], budget);
+      return example === undefined ? [] : [{ ...describeBlock(request, constraint, example.timing), alone: true }];
+    });
+  }
+  const names = together(request, { left: REASON_TRIES });
+  const example = names.length === 0 ? undefined : exampleWithout(request, names, budget);
+  if (example === undefined) return [];
+  return names.map((constraint) => ({ ...describeBlock(request, constraint, example.timing), alone: false }));
 }

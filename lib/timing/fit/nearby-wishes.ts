@@ -6,12 +6,23 @@ import { FIELD_RATE_TOLERANCE, MAX_FIELD_LINES } from "@/lib/timing/fit/search-s
 /** Wishes tried on each side before we stop looking there. */
 const MAX_TRIES = 24;
 
-/** Counts of field lines that are looked at for other counts of picture lines: more than any blanking is long. */
+/**
+ * Counts of field lines that are looked at in all, and on each side of the picture's in each band: more than any
+ * blanking is long.
+ */
 const MAX_FIELDS_LOOKED_AT = 256;
+
+/** The counts from `first` to `last` that lie nearest to `active`: where there are many, not all of them. */
+function nearestCounts(active: number, first: number, last: number): number[] {
+  const from = Math.max(first, Math.min(Math.floor(active) - MAX_FIELDS_LOOKED_AT, last - MAX_FIELDS_LOOKED_AT));
+  const to = Math.min(last, Math.max(Math.ceil(active) + MAX_FIELDS_LOOKED_AT, first + MAX_FIELDS_LOOKED_AT));
+  return Array.from({ length: to - from + 1 }, (_, index) => from + index);
+}
 
 /** Line rates and counts of field lines at which some band holds the wished field rate, or one within the tolerance of it. */
 function fieldsAtRate({ wish, screen }: FitRequest, tolerance: number): { fieldLines: number; lineRateHz: number }[] {
   const half = wish.interlaced ? 0.5 : 0;
+  const active = wish.interlaced ? wish.activeLines / 2 : wish.activeLines;
   return screen.bands.flatMap((band) => {
     const [slow, fast]: Span = [
       Math.max(wish.fieldRateHz * (1 - tolerance), band.fieldRateHz[0]),
@@ -21,8 +32,7 @@ function fieldsAtRate({ wish, screen }: FitRequest, tolerance: number): { fieldL
     const first = Math.max(1, Math.ceil(band.lineRateHz[0] / fast - half));
     const last = Math.min(MAX_FIELD_LINES, Math.floor(band.lineRateHz[1] / slow - half));
     if (!(first <= last)) return [];
-    return Array.from({ length: last - first + 1 }, (_, index) => {
-      const fieldLines = first + index;
+    return nearestCounts(active, first, last).map((fieldLines) => {
       const lineRateHz = Math.min(
         Math.max(wish.fieldRateHz * (fieldLines + half), band.lineRateHz[0]),
         band.lineRateHz[1],
@@ -66,6 +76,8 @@ export function nearbyWidths(request: FitRequest): FitWish[] {
   const near = [0, 1, -1, 2, -2].map((step) => (Math.round(wish.activePx / multiple) + step) * multiple);
   const byClock = fieldsAtRate(request, FIELD_RATE_TOLERANCE)
     .filter(({ fieldLines }) => fieldLines > active)
+    .sort((a, b) => a.fieldLines - b.fieldLines)
+    .slice(0, MAX_FIELDS_LOOKED_AT)
     .flatMap(({ fieldLines, lineRateHz }) => {
       const rate = wish.fieldRateHz * (fieldLines + half);
       const [shortest, longest] = blankingGuide(lineRateHz, wish.fieldRateHz).spanUs.blank;

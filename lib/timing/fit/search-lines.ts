@@ -66,21 +66,15 @@ export function leastAcrossCost(space: SearchSpace, field: FieldChoice, lineTota
   return rest ** 2 / give / sum;
 }
 
-/** Splits the clocks of the line blanking at one clock; the cost depends on the clock through its bounds alone. */
-export function splitAcross(
-  space: SearchSpace,
-  field: FieldChoice,
-  lineTotal: number,
-  clockHz: number,
-): BlankingSplit | undefined {
+/** What one clock leaves of a line: whether its blanking is too short or too long, and what each part may be. */
+type AcrossChoice = { readonly tooShort: boolean; readonly tooLong: boolean; readonly shares: readonly Share[] };
+
+function acrossChoice(space: SearchSpace, field: FieldChoice, lineTotal: number, clockHz: number): AcrossChoice {
   const { multiple, standardAcross: hold } = space;
   const { spanUs } = field.guide;
   const blank = lineTotal - space.activePx;
   const perUs = clockHz / 1e6;
-  if (hold === "all") {
-    const [least, most] = slackened([spanUs.blank[0] * perUs, spanUs.blank[1] * perUs]);
-    if (blank < least || blank > most) return undefined;
-  }
+  const [least, most] = hold === "all" ? slackened([spanUs.blank[0] * perUs, spanUs.blank[1] * perUs]) : [0, Infinity];
   const aims = aimsAcross(space, field, lineTotal);
   const leastUs = { frontPorch: 0, sync: space.minSyncUs, backPorch: space.minBackPorchUs };
   const shares = blankingOrder.map((part, index): Share => {
@@ -96,11 +90,31 @@ export function splitAcross(
       stiffness: stiffnessOf(part),
     };
   });
-  const split = splitBlanking(shares, blank / multiple);
+  return { tooShort: blank < least, tooLong: blank > most, shares };
+}
+
+/** Splits the clocks of the line blanking at one clock; the cost depends on the clock through its bounds alone. */
+export function splitAcross(
+  space: SearchSpace,
+  field: FieldChoice,
+  lineTotal: number,
+  clockHz: number,
+): BlankingSplit | undefined {
+  const { multiple } = space;
+  const { tooShort, tooLong, shares } = acrossChoice(space, field, lineTotal, clockHz);
+  if (tooShort || tooLong) return undefined;
+  const split = splitBlanking(shares, (lineTotal - space.activePx) / multiple);
   if (split === undefined || multiple === 1) return split;
   const { frontPorch, sync, backPorch } = split.blanking;
   const blanking = { frontPorch: frontPorch * multiple, sync: sync * multiple, backPorch: backPorch * multiple };
-  return { blanking, cost: split.cost };
+  return { ...split, blanking };
+}
+
+/** Whether all clocks between two split a line alike: each of its bounds only rises with the clock. */
+function splitsAlike(space: SearchSpace, field: FieldChoice, lineTotal: number, [low, high]: Span): boolean {
+  const [a, b] = [acrossChoice(space, field, lineTotal, low), acrossChoice(space, field, lineTotal, high)];
+  if (a.tooShort !== b.tooShort || a.tooLong !== b.tooLong) return false;
+  return a.shares.every((share, index) => share.min === b.shares[index]?.min && share.max === b.shares[index].max);
 }
 
 /** Whether some whole sync lies within its limits at some clock of the span: at a coarse clock there may be none. */
@@ -110,7 +124,10 @@ function holdsSync(space: SearchSpace, field: FieldChoice, [minHz, maxHz]: Span)
   return shortest <= atMostWhole((most * maxHz) / 1e6 / space.multiple);
 }
 
-/** Clocks of the grid for a line total that its field allows, nearest to the wished rate first, at most 64. */
+/**
+ * Clocks of the grid for a line total that its field allows, nearest to the wished rate first, at most 64; the nearest
+ * alone where all of them split the line alike.
+ */
 export function* clocksFor(space: SearchSpace, field: FieldChoice, lineTotal: number): Generator<number> {
   const { stepHz, anchorHz } = space.clock;
   const allowed = slackened([space.clock.minHz, space.clock.maxHz]);
@@ -128,7 +145,10 @@ export function* clocksFor(space: SearchSpace, field: FieldChoice, lineTotal: nu
   const aim = steps(clamp(space.fieldRateHz * field.linesPerField * lineTotal, span));
   let down = Math.min(Math.floor(aim), high);
   let up = Math.max(down + 1, low);
-  for (let tried = 0; tried < MAX_CLOCKS_TRIED && (down >= low || up <= high); tried += 1) {
+  const ends: Span = [Math.max(low, down - MAX_CLOCKS_TRIED), Math.min(high, up + MAX_CLOCKS_TRIED)];
+  const alike = splitsAlike(space, field, lineTotal, [anchorHz + ends[0] * stepHz, anchorHz + ends[1] * stepHz]);
+  const most = alike ? 1 : MAX_CLOCKS_TRIED;
+  for (let tried = 0; tried < most && (down >= low || up <= high); tried += 1) {
     const takeDown = down >= low && (up > high || aim - down <= up - aim);
     yield anchorHz + (takeDown ? down : up) * stepHz;
     if (takeDown) down -= 1;

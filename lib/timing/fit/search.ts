@@ -71,6 +71,8 @@ function bestOfLine(
     const timing = rasterOf(space, field, pixelClockHz, across.blanking);
     const found: Found = { timing, fieldRateHz, rateErrorHz, porchCost: across.cost + field.down.cost };
     if (best === undefined || compareFound(found, best) < 0) best = found;
+    // Clocks come nearest first and change a split through its ends alone, so no later one is better.
+    if (across.unbound) break;
   }
   return best;
 }
@@ -113,14 +115,20 @@ export function search(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES
   return [...byFieldLines.values()].sort(compareFound);
 }
 
-/** Whether a space holds any raster: ends at the first. */
-export function holdsRaster(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES }): boolean {
-  if (!usable(space)) return false;
+/** The first raster that a space is found to hold, not the best; undefined where there is none or the budget ends. */
+export function firstRaster(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES }): Found | undefined {
+  if (!usable(space)) return undefined;
   for (const field of fieldChoices(space, budget)) {
     for (const lineTotal of lineTotals(space, field)) {
-      if (!spend(budget)) return false;
-      if (bestOfLine(space, field, lineTotal, { toBeat: undefined, budget }) !== undefined) return true;
+      if (!spend(budget)) return undefined;
+      const found = bestOfLine(space, field, lineTotal, { toBeat: undefined, budget });
+      if (found !== undefined) return found;
     }
   }
-  return false;
+  return undefined;
+}
+
+/** Whether a space holds any raster: ends at the first. */
+export function holdsRaster(space: SearchSpace, budget: Budget = { left: SEARCH_TRIES }): boolean {
+  return firstRaster(space, budget) !== undefined;
 }

@@ -5,7 +5,12 @@ export const blankingOrder = ["frontPorch", "sync", "backPorch"] as const;
 /** Whole counts of the three parts of blanking. */
 export type Blanking = Readonly<Record<(typeof blankingOrder)[number], number>>;
 
-export type BlankingSplit = { readonly blanking: Blanking; readonly cost: number };
+export type BlankingSplit = {
+  readonly blanking: Blanking;
+  readonly cost: number;
+  /** No part stands at an end of what it may be: as the cost is convex, no other ends would give a cheaper split. */
+  readonly unbound: boolean;
+};
 
 /** The sync is kept nearer to the standard's than the porches: sets are made for one sync and centred by porches. */
 const SYNC_STIFFNESS = 8;
@@ -21,5 +26,9 @@ export function splitBlanking(shares: readonly Share[], total: number): Blanking
   if (allocation === undefined) return undefined;
   const [frontPorch = 0, sync = 0, backPorch = 0] = allocation.counts;
   const weight = shares.reduce((sum, { aim }) => sum + aim, 0);
-  return { blanking: { frontPorch, sync, backPorch }, cost: allocation.cost / weight };
+  const unbound = shares.every(({ min, max }, index) => {
+    const count = allocation.counts[index] ?? 0;
+    return count > min && count < max;
+  });
+  return { blanking: { frontPorch, sync, backPorch }, cost: allocation.cost / weight, unbound };
 }
