@@ -4,6 +4,7 @@ import type { CompiledDriver, Fields, Frame, Match, WireRequest } from "@/lib/se
 import type { NativeValues } from "@/lib/serial/native";
 import { characterMs } from "@/lib/serial/protocols/character-time";
 import type { WireLog } from "@/lib/serial/wire-log";
+import { afterPatiently } from "./patient-timer";
 import { createQuarantine } from "./quarantine";
 import type { RequestError } from "./types";
 
@@ -13,9 +14,6 @@ export const MAX_QUEUED = 256;
 const MAX_DRAINS = 40;
 /** First pause after a busy answer; it doubles with each. */
 const BUSY_PAUSE_MS = 20;
-/** A timer this late was held back (a hidden tab, a busy page): bytes that wait to be read get their turn first. */
-const LATE_TIMER_MS = 50;
-const GRACE_MS = 20;
 
 export type Reply = { readonly values: NativeValues; readonly fields: Fields };
 export type ExchangeResult = Result<Reply, RequestError>;
@@ -117,11 +115,7 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
   /** Nothing is sent until the line was silent as long as a reply may take. */
   const clearLine = () => quarantine.start(pace.replyTimeoutMs, pace.replyTimeoutMs * MAX_DRAINS, true);
 
-  function timedOut(job: Job, dueMs: number, graceLeft: boolean): void {
-    if (graceLeft && clock.nowMs() - dueMs > LATE_TIMER_MS) {
-      job.cancelDeadline = clock.after(GRACE_MS, () => timedOut(job, dueMs, false));
-      return;
-    }
+  function timedOut(job: Job): void {
     const message = `No answer to “${job.request.label}” within ${Math.round(pace.replyTimeoutMs + job.request.extraMs)} ms.`;
     wireLog.event(message);
     recallInFlight({ code: "timeout", message }, job);
@@ -131,8 +125,7 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
   function transmit(job: Job): void {
     inFlight.push(job);
     const waitMs = pace.replyTimeoutMs + inFlight.reduce((sum, { request }) => sum + wireMs(request), 0);
-    const dueMs = clock.nowMs() + waitMs;
-    job.cancelDeadline = clock.after(waitMs, () => timedOut(job, dueMs, true));
+    job.cancelDeadline = afterPatiently(clock, waitMs, () => timedOut(job));
     job.logged = wireLog.out(job.request.bytes);
     send(job.request.bytes);
   }
