@@ -36,9 +36,8 @@ export default defineConfig({
   },
   projects: [
     { name: "pages", testMatch: /(?:headers|pages-[\w-]+)\.spec\.ts$/u },
-    // A device on a wire answers within deadlines of real time, so no other page runs beside it; on a machine that is busy
-    // elsewhere one repeat is allowed.
-    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|recover|tour)\.spec\.ts$/u, dependencies: ["pages"], workers: 1, retries: 1 },
+    // Tests with a device mostly wait for its wire, those of pages keep a core busy: apart, each sort takes less.
+    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|tour)\.spec\.ts$/u, dependencies: ["pages"] },
   ],
   webServer: {
     command: `"${process.execPath}" scripts/serve-test.mjs`,

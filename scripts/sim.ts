@@ -13,13 +13,13 @@ import { serveTcp } from "./sim/serve-tcp";
 /** Some six bytes at 115 200 baud: fewer writes to the stream, for a reply that is half a ms late at most. */
 const GRAIN_MS = 0.5;
 
-function makeDevice({ definition, pacing }: Wanted): ServedDevice {
+function makeDevice({ definition, pacing, serialNumber }: Wanted): ServedDevice {
   const compiled = compileDriver(definition);
   if (!compiled.ok)
     throw new Error(`The driver ${definition.slug} does not compile: ${JSON.stringify(compiled.error)}`);
   const clock = createPreciseClock();
   const wire = createWiredDevice({
-    model: createDeviceModel(compiled.value, { clock }),
+    model: createDeviceModel(compiled.value, { clock, serialNumber }),
     transport: definition.transport,
     clock,
     pacing,

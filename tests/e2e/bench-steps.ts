@@ -15,19 +15,23 @@ export const WIRES: readonly Wire[] = ["simulated", "sim over TCP"];
 type Fixtures = {
   /** Makes the page ready for a wire, before it is opened. The device outside ends with the test. */
   readonly prepareWire: (page: Page, wire: Wire) => Promise<SerialBridge | null>;
+  /** Starts a device outside the browser, and says where it listens. It ends with the test. */
+  readonly startDevice: (serialNumber?: string) => Promise<{ readonly host: string; readonly port: number }>;
 };
 
 export const test = base.extend<Fixtures>({
-  prepareWire: async ({}, provide) => {
+  startDevice: async ({}, provide) => {
     const started: SimProcess[] = [];
-    await provide(async (page, wire) => {
-      if (wire === "simulated") return null;
-      const sim = await startSim(["--driver", "lanternfield-lf8", "--tcp", "127.0.0.1:0", "--baud", "none"]);
+    await provide(async (serialNumber) => {
+      const named = serialNumber === undefined ? [] : ["--serial", serialNumber];
+      const sim = await startSim(["--driver", "lanternfield-lf8", "--tcp", "127.0.0.1:0", "--baud", "none", ...named]);
       started.push(sim);
-      const port = Number(sim.line.split(":").at(-1));
-      return bridgeSerial(page, { host: "127.0.0.1", port });
+      return { host: "127.0.0.1", port: Number(sim.line.split(":").at(-1)) };
     });
     await Promise.all(started.map((sim) => sim.stop()));
+  },
+  prepareWire: async ({ startDevice }, provide) => {
+    await provide(async (page, wire) => (wire === "simulated" ? null : bridgeSerial(page, await startDevice())));
   },
 });
 

@@ -8,18 +8,26 @@ export class BridgeLine {
   refuses = false;
   bytesToDevice = 0;
   #isGranted: boolean;
-  readonly #target: { readonly host: string; readonly port: number };
+  /** Where the adapter leads; another device may be put at its end. */
+  target: { readonly host: string; readonly port: number };
+  #awaited: { readonly text: string; readonly sent: () => void } | null = null;
   #socket: Socket | null = null;
   #unread: Buffer[] = [];
   #wakeReader: (() => void) | null = null;
 
   constructor(target: { readonly host: string; readonly port: number }, isGranted: boolean) {
-    this.#target = target;
+    this.target = target;
     this.#isGranted = isGranted;
   }
 
   get isOpen(): boolean {
     return this.#socket !== null;
+  }
+
+  /** Resolves when the page sends bytes that have this text in them. */
+  async whenSent(text: string): Promise<void> {
+    await new Promise<void>((sent) => (this.#awaited = { text, sent }));
+    this.#awaited = null;
   }
 
   /** Ends the connection. A page that reads is told so. */
@@ -52,7 +60,7 @@ export class BridgeLine {
 
   #open(): Promise<boolean> {
     this.cut();
-    const socket = connect({ ...this.#target, noDelay: true });
+    const socket = connect({ ...this.target, noDelay: true });
     return new Promise((resolve) => {
       socket.once("connect", () => {
         this.#socket = socket;
@@ -82,6 +90,7 @@ export class BridgeLine {
     const socket = this.#socket;
     if (!socket) return Promise.resolve(false);
     this.bytesToDevice += bytes.length;
+    if (this.#awaited && bytes.includes(this.#awaited.text)) this.#awaited.sent();
     return new Promise((resolve) => socket.write(bytes, (error) => resolve(!error)));
   }
 

@@ -15,6 +15,10 @@ export type SerialBridge = {
   readonly refuseOpen: (refuses: boolean) => void;
   /** Ends the byte stream, as a pulled plug at the device's end does. */
   readonly cut: () => void;
+  /** Puts another device at the end of the adapter. */
+  readonly leadTo: (target: { readonly host: string; readonly port: number }) => void;
+  /** Resolves when the page sends bytes that have this text in them. */
+  readonly whenSent: (text: string) => Promise<void>;
   readonly isOpen: () => boolean;
   /** Bytes that the page has sent to the device. */
   readonly bytesToDevice: () => number;
@@ -74,6 +78,10 @@ export async function bridgeSerial(
       line.refuses = refuses;
     },
     cut: () => line.cut(),
+    leadTo: (other) => {
+      line.target = other;
+    },
+    whenSent: (text) => line.whenSent(text),
     isOpen: () => line.isOpen,
     bytesToDevice: () => line.bytesToDevice,
   };

@@ -5,13 +5,15 @@ import { shippedDriver } from "@/lib/serial/drivers/shipped";
 import type { SerialPortLike } from "@/lib/serial/port";
 import { openSession } from "@/lib/serial/session/open-session";
 import type { DeviceIdentity } from "@/lib/serial/session/types";
+import { ApiProblem } from "@/components/ui/api";
 import { portFailureOf, portHelp } from "@/components/bench/port-help";
 import { EMPTY_BENCH, say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { keptRunKey, loadKeptRun, type KeptRun } from "@/components/bench/store/kept-run";
 import { readDevice } from "@/components/bench/store/reading";
-import { act, takeUpRun } from "@/components/bench/store/run-control";
+import { resumeRun, takeUpRun } from "@/components/bench/store/run-control";
 import { plugInSimulated, type SimulatedDevice } from "@/components/bench/store/simulated-device";
 import type { PlanInput } from "@/lib/serial/plan/types";
+import type { JournalEntry } from "@/lib/serial/run/types";
 
 function compiled(slug: string): CompiledDriver {
   const driver = compileDriver(shippedDriver(slug));
@@ -48,17 +50,35 @@ async function keptOnServer(core: BenchCore, deviceId: string): Promise<KeptRun 
   return identity ? { runId: row.id, hash: plan.hash, countdownSeconds: row.countdownSeconds, identity, input: plan.input as PlanInput, entries: [] } : null;
 }
 
+/** With a journal of its own this browser goes on while the server is away, and delivers later; without one it cannot. */
+function whenAway(here: KeptRun | null): (error: unknown) => null {
+  return (error) => {
+    const isAway = error instanceof ApiProblem && (error.problem.status === 0 || error.problem.status >= 500);
+    if (here !== null && isAway) return null;
+    throw error;
+  };
+}
+
+/** Makes this tab the run's holder, and gets its journal. A run that another browser holds now is refused with who has it. */
+async function stepsOnServer(core: BenchCore, runId: string, isOurs: boolean): Promise<readonly JournalEntry[]> {
+  // A journal in this browser, whose lock no other tab has: the holder before was a tab that is gone.
+  await core.around.server.takeHold(runId, core.around.tabId, isOurs).catch((error: unknown) => {
+    if (error instanceof ApiProblem && error.problem.code === "held") throw new Error("A run on this device is open in another browser. Go on there, or connect again here once it has been silent for 30 s.", { cause: error });
+    throw error;
+  });
+  return (await core.around.server.steps(runId, -1)).items;
+}
+
 /** Looks for a run that was left open, here and at the server, and takes it up. False: there is none. */
 async function takeUpOpenRun(core: BenchCore): Promise<boolean> {
   const { device } = core.store.getState();
   if (!device) return false;
   const here = loadKeptRun(core.around.storage, keptRunKey(device.driver.slug, device.identity.serialNumber));
-  const there = device.stored ? await keptOnServer(core, device.stored.id) : null;
+  const there = device.stored ? await keptOnServer(core, device.stored.id).catch(whenAway(here)) : null;
   const kept = here ?? there;
   if (!kept) return false;
-  const steps = kept.runId === null || !there ? [] : (await core.around.server.steps(kept.runId, -1)).items;
-  if (kept.runId !== null && there) await core.around.server.takeHold(kept.runId, core.around.tabId, true);
-  await takeUpRun(core, kept, steps);
+  const fromServer = kept.runId !== null && there ? await stepsOnServer(core, kept.runId, here !== null).catch(whenAway(here)) : null;
+  await takeUpRun(core, kept, fromServer ?? [], fromServer !== null);
   return core.run !== null;
 }
 
@@ -112,7 +132,7 @@ async function open(core: BenchCore, driver: CompiledDriver, port: SerialPortLik
   });
   if (core.run) {
     store.setState({ link: { name: "ready" }, notice: null });
-    await act(core, (run) => run.resume(session));
+    await resumeRun(core);
   } else {
     await settle(core, identity, simulated !== null);
   }

@@ -44,9 +44,13 @@ function runKey(core: BenchCore): string {
 }
 
 /** A browser tab's delivery of the journal. What the server will never take is not sent again. */
-function delivery(core: BenchCore, runId: string): (entries: readonly JournalEntry[]) => Promise<void> {
+function delivery(core: BenchCore, runId: string, hasHold: boolean): (entries: readonly JournalEntry[]) => Promise<void> {
+  let isHeld = hasHold;
   return async (entries) => {
     try {
+      // The server was away when this run was taken up: this browser has its lock and its journal, so it is ours.
+      if (!isHeld) await core.around.server.takeHold(runId, core.around.tabId, true);
+      isHeld = true;
       await core.around.server.appendSteps(runId, { holder: core.around.tabId, entries: [...entries] as never });
     } catch (error) {
       const status = error instanceof ApiProblem ? error.problem.status : 0;
@@ -56,12 +60,12 @@ function delivery(core: BenchCore, runId: string): (entries: readonly JournalEnt
   };
 }
 
-function journalOf(core: BenchCore, kept: KeptRun): BenchJournal {
+function journalOf(core: BenchCore, kept: KeptRun, hasHold = true): BenchJournal {
   const key = runKey(core);
   return createJournal({
     clock: core.around.clock, entries: kept.entries,
     keep: (entries) => saveKeptRun(core.around.storage, key, { ...kept, entries }),
-    deliver: kept.runId === null ? undefined : delivery(core, kept.runId),
+    deliver: kept.runId === null ? undefined : delivery(core, kept.runId, hasHold),
   });
 }
 
@@ -112,8 +116,34 @@ async function afterEnd(core: BenchCore, run: Run, kept: KeptRun, journal: Bench
   }
 }
 
+/** The server takes a holder that is silent for 30 s for gone. */
+const HEARTBEAT_MS = 10_000;
+
+/** Tells the server that this tab still holds the run, while it does; gives the run up where another browser took it over. */
+function keepHold(core: BenchCore, run: Run, runId: string): void {
+  const beat = async () => {
+    if (core.run !== run) return;
+    try {
+      await core.around.server.takeHold(runId, core.around.tabId, false);
+    } catch (error) {
+      if (error instanceof ApiProblem && error.problem.code === "held" && core.run === run) return giveUp(core, run);
+    }
+    core.around.clock.after(HEARTBEAT_MS, () => void beat());
+  };
+  core.around.clock.after(HEARTBEAT_MS, () => void beat());
+}
+
+function giveUp(core: BenchCore, run: Run): void {
+  core.run = null;
+  run.release();
+  letGo(core);
+  core.store.setState({ run: null, activity: "idle" });
+  say(core, "halt", "Another browser has taken this run over. Go on there: nothing more is sent from here.");
+}
+
 function follow(core: BenchCore, run: Run, plan: CheckedPlan, kept: KeptRun, journal: BenchJournal): void {
   core.run = run;
+  if (kept.runId !== null) keepHold(core, run, kept.runId);
   show(core, run, plan, journal);
   let hasEnded = false;
   let isTried = false;
@@ -145,8 +175,12 @@ export async function startRun(core: BenchCore, { plan, runId, countdownSeconds 
   await act(core, (one) => one.start());
 }
 
-/** Takes up a run that a closed tab, a reload or another browser left open. */
-export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: readonly JournalEntry[]): Promise<void> {
+/**
+ * Takes up a run that a closed tab, a reload or another browser left open.
+ *
+ * @param hasHold whether the server knows this tab as the holder; else it is told when it is there again
+ */
+export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: readonly JournalEntry[], hasHold: boolean): Promise<void> {
   if (!core.line) return;
   if (!(await takeHold(core, runKey(core)))) {
     say(core, "halt", "Another tab of this browser has a run open on this device. Go on there.");
@@ -159,15 +193,26 @@ export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: read
   }
   const entries = reconcileJournals(kept.entries, fromServer);
   const whole = { ...kept, entries };
-  const journal = journalOf(core, whole);
+  const journal = journalOf(core, whole, hasHold);
   const run = restoreRun({ plan, journal, clock: core.around.clock, countdownSeconds: kept.countdownSeconds, identity: kept.identity, entries });
   follow(core, run, plan, whole, journal);
-  await act(core, (one) => one.resume(requireSession(core)));
+  await resumeRun(core);
 }
 
-function requireSession(core: BenchCore) {
-  if (!core.line) throw new Error("A run is taken up over a live session only");
-  return core.line.session;
+/** Goes on with the open run over the session that stands now. Where another device answers, the line is given up. */
+export async function resumeRun(core: BenchCore): Promise<void> {
+  const { run, line } = core;
+  if (!run || !line) return;
+  const resumed = await run.resume(line.session);
+  if (resumed.ok) return;
+  refuse(core, resumed.error);
+  if (resumed.error !== "other-device") return;
+  await line.session.close();
+  core.store.setState({ link: { name: "lost", cause: REFUSALS["other-device"] } });
+}
+
+function refuse(core: BenchCore, refusal: RunActRefusal): void {
+  core.store.setState((state) => ({ run: state.run && { ...state.run, notice: REFUSALS[refusal] } }));
 }
 
 /** One act of the owner; a refusal becomes a sentence beside the run. */
@@ -175,5 +220,5 @@ export async function act(core: BenchCore, what: (run: Run) => Promise<Result<vo
   const { run } = core;
   if (!run) return;
   const done = await what(run);
-  if (!done.ok) core.store.setState((state) => ({ run: state.run && { ...state.run, notice: REFUSALS[done.error] } }));
+  if (!done.ok) refuse(core, done.error);
 }
