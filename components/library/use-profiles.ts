@@ -3,7 +3,7 @@
 import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { callApi } from "@/components/ui/api";
 import { importAnswer, profileDetail, profilePage, revisionDetail, revisionPage } from "@/lib/contracts/profile";
-import type { NewProfile } from "@/lib/contracts/profile";
+import type { NewProfile, NewRevision } from "@/lib/contracts/profile";
 
 const profilesKey = ["profiles"] as const;
 const PAGE = 25;
@@ -70,6 +70,21 @@ export function usePublish() {
   return useMutation({
     mutationFn: (profile: NewProfile) =>
       callApi("/api/profiles", { method: "POST", body: profile, shape: profileDetail }),
+    onSuccess: () => client.invalidateQueries({ queryKey: profilesKey }),
+  });
+}
+
+/** A revision after the one that it rests on; where somebody was there first the server says so. */
+export function useAddRevision(id: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: ({ after, ...revision }: NewRevision & { readonly after: number }) =>
+      callApi(`/api/profiles/${id}/revisions`, {
+        method: "POST",
+        body: revision,
+        ifMatch: `"${after}"`,
+        shape: profileDetail,
+      }),
     onSuccess: () => client.invalidateQueries({ queryKey: profilesKey }),
   });
 }

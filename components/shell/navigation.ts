@@ -6,6 +6,7 @@ export const navigation: readonly NavigationItem[] = [
   { href: "/backups", label: "Backups" },
   { href: "/library", label: "Library" },
   { href: "/screens", label: "Screens" },
+  { href: "/modes", label: "Modes" },
 ];
 
 /** The item that a path belongs to. */

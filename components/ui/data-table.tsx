@@ -26,15 +26,21 @@ export type DataColumn<Row> = {
   readonly className?: string;
 };
 
+export type Sorting = { readonly id: string; readonly desc: boolean };
+
 export type DataTableProps<Row> = {
   /** What the table lists, for assistive technology. */
   readonly caption: string;
   readonly columns: readonly DataColumn<Row>[];
   readonly rows: readonly Row[];
   readonly rowKey: (row: Row) => string;
-  readonly sorting?: { readonly id: string; readonly desc: boolean };
+  readonly sorting?: Sorting;
+  /** Told when another order is chosen; the table keeps it by itself. */
+  readonly onSorting?: (sorting: Sorting) => void;
   /** A row that stands out: the chosen, the pinned. */
   readonly isMarked?: (row: Row) => boolean;
+  /** For the pointer alone: what a click anywhere in a row does. A button in the row does it for everybody. */
+  readonly onRow?: (row: Row) => void;
 };
 
 const features = tableFeatures({ rowSortingFeature, sortedRowModel: createSortedRowModel() });
@@ -51,9 +57,15 @@ export function DataTable<Row extends object>({
   rows,
   rowKey,
   sorting: initial,
+  onSorting,
   isMarked,
+  onRow,
 }: DataTableProps<Row>) {
   const [sorting, setSorting] = useState(initial === undefined ? [] : [{ id: initial.id, desc: initial.desc }]);
+  const order = ({ id, desc }: Sorting) => {
+    setSorting([{ id, desc }]);
+    onSorting?.({ id, desc });
+  };
   const defs = useMemo(() => {
     const helper = createColumnHelper<typeof features, Row>();
     return columns.map((column) =>
@@ -74,14 +86,17 @@ export function DataTable<Row extends object>({
     getRowId: rowKey,
     enableSortingRemoval: false,
     state: { sorting },
-    onSortingChange: setSorting,
+    onSortingChange: (change) => {
+      const [next] = typeof change === "function" ? change(sorting) : change;
+      if (next !== undefined) order(next);
+    },
   });
   const byId = new Map(columns.map((column) => [column.id, column]));
   const current = sorting[0];
 
   return (
     <div>
-      <PhoneSort columns={columns} sorting={current} onChange={(next) => setSorting([next])} />
+      <PhoneSort columns={columns} sorting={current} onChange={order} />
       <table role="table" className="block w-full border-collapse md:table">
         <caption className="sr-only">{caption}</caption>
         <thead role="rowgroup" className="hidden md:table-header-group">
@@ -127,8 +142,10 @@ export function DataTable<Row extends object>({
             <tr
               role="row"
               key={row.id}
+              onClick={onRow === undefined ? undefined : () => onRow(row.original)}
               className={classNames(
                 "block border-b border-line py-3 md:table-row",
+                onRow !== undefined && "cursor-pointer",
                 isMarked?.(row.original) === true && "bg-surface shadow-[inset_3px_0_0_var(--lamp)] max-md:pl-3",
               )}
             >
@@ -167,8 +184,6 @@ function DataCell<Row>({ column, row }: { readonly column: DataColumn<Row>; read
     </td>
   );
 }
-
-type Sorting = { readonly id: string; readonly desc: boolean };
 
 /** A phone shows no head, so the order is chosen from a list. */
 function PhoneSort<Row>({

@@ -1,6 +1,7 @@
 "use client";
 
-import { formatNumber, formatUs } from "@/components/ui/figures";
+import type { ReactNode } from "react";
+import { formatCount, formatNumber, formatUs } from "@/components/ui/figures";
 import { useWidth } from "@/components/ui/use-width";
 import { fieldWaveform, lineWaveform, waveformPath } from "@/components/video/waveform-geometry";
 import type { DrawnPart, Waveform } from "@/components/video/waveform-geometry";
@@ -9,7 +10,8 @@ import type { RasterTiming } from "@/lib/timing/raster";
 import { fieldLines, linePeriodUs } from "@/lib/timing/rates";
 
 const HEIGHT_PX = 96;
-const LEVELS = { syncPx: 72, blackPx: 48, whitePx: 10 } as const;
+/** Levels of a long waveform in px from its top: what lies over one stands on them. */
+export const LEVELS = { syncPx: 72, blackPx: 48, whitePx: 10 } as const;
 /** Below this the labels go under the drawing. */
 const LABELS_FROM_PX = 620;
 const LINE_SHARE = 0.36;
@@ -35,11 +37,23 @@ function factorWords(factor: number): string {
     : `blanking drawn ${formatNumber(factor, { decimals: 1 })} times wider than the picture`;
 }
 
+export type WaveformProps = {
+  readonly timing: RasterTiming;
+  /** Parts in clocks too. */
+  readonly inClocks?: boolean;
+  /** What lies over the drawing: handles to drag. */
+  readonly overlay?: (waveform: Waveform) => ReactNode;
+  /** Holds the scale of blanking while something is dragged. */
+  readonly pxPerBlank?: number | undefined;
+};
+
 /** One line of a mode, long form: parts in µs, blanking enlarged by the factor that is stated. */
-export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
+export function LineWaveform({ timing, inClocks = false, overlay, pxPerBlank }: WaveformProps) {
   const [attach, widthPx] = useWidth(720);
-  const waveform = lineWaveform(timing, { widthPx: widthPx - 24, blankingShare: LINE_SHARE });
-  const label = (part: DrawnPart["part"]) => `${words[part]} ${formatUs(partOf(waveform, part).length)}`;
+  const waveform = lineWaveform(timing, { widthPx: widthPx - 24, blankingShare: LINE_SHARE, pxPerBlank });
+  const clocks = (part: DrawnPart["part"]) =>
+    inClocks && part !== "active" ? `, ${formatCount(partOf(waveform, part).count, "clock", "clocks")}` : "";
+  const label = (part: DrawnPart["part"]) => `${words[part]} ${formatUs(partOf(waveform, part).length)}${clocks(part)}`;
   const all = waveform.parts.map((drawn) => label(drawn.part)).join(", ");
   const caption = `${modeName(timing)}: one line, ${formatUs(linePeriodUs(timing))}; ${factorWords(waveform.blankingFactor)}`;
   const wide = widthPx >= LABELS_FROM_PX;
@@ -47,7 +61,7 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
     partOf(waveform, part),
   );
   return (
-    <figure ref={attach} className="min-w-0">
+    <figure ref={attach} className="relative min-w-0">
       <svg
         role="img"
         aria-label={`One line: ${all}`}
@@ -58,13 +72,15 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
         <path d={waveformPath(waveform.parts, LEVELS, widthPx)} className="fill-none stroke-signal" strokeWidth={2} />
         {wide && front && sync && back && active ? (
           <g className="figure fill-muted">
-            <text x={front.fromPx} y={LEVELS.blackPx - 10}>
-              {`front ${formatNumber(front.length, { decimals: 2 })}`}
+            <text x={front.fromPx} y={LEVELS.blackPx - (overlay === undefined ? 10 : 15)}>
+              {inClocks
+                ? `front ${formatUs(front.length)}${clocks("frontPorch")}`
+                : `front ${formatNumber(front.length, { decimals: 2 })}`}
             </text>
             <text x={(sync.fromPx + sync.toPx) / 2} y={LEVELS.syncPx + 18} textAnchor="middle">
               {label("sync")}
             </text>
-            <text x={back.fromPx + 6} y={LEVELS.blackPx + 18}>
+            <text x={back.fromPx + (overlay === undefined ? 6 : 9)} y={LEVELS.blackPx + 18}>
               {label("backPorch")}
             </text>
             <text
@@ -78,6 +94,7 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
           </g>
         ) : null}
       </svg>
+      {overlay?.(waveform)}
       <figcaption className="figure mt-1 text-muted">
         {wide ? null : <span className="block">{all}</span>}
         <span className="block sm:text-right">{caption}</span>
@@ -90,9 +107,9 @@ export function LineWaveform({ timing }: { readonly timing: RasterTiming }) {
 const MAX_STROKES = 48;
 
 /** One field of a mode, long form: parts in lines; each stroke stands for a stated number of lines. */
-export function FieldWaveform({ timing }: { readonly timing: RasterTiming }) {
+export function FieldWaveform({ timing, overlay, pxPerBlank }: Omit<WaveformProps, "inClocks">) {
   const [attach, widthPx] = useWidth(360);
-  const waveform = fieldWaveform(timing, { widthPx: widthPx - 2, blankingShare: FIELD_SHARE });
+  const waveform = fieldWaveform(timing, { widthPx: widthPx - 2, blankingShare: FIELD_SHARE, pxPerBlank });
   const active = partOf(waveform, "active");
   const perStroke = Math.max(1, Math.ceil(active.count / MAX_STROKES));
   const strokes = Math.floor(active.count / perStroke);
@@ -105,7 +122,7 @@ export function FieldWaveform({ timing }: { readonly timing: RasterTiming }) {
   const all = waveform.parts.map((drawn) => `${words[drawn.part]} ${formatNumber(drawn.count)}`).join(", ");
   const field = timing.interlaced ? "one field of two" : "one field";
   return (
-    <figure ref={attach} className="min-w-0">
+    <figure ref={attach} className="relative min-w-0">
       <svg
         role="img"
         aria-label={`${field}, in lines: ${all}`}
@@ -120,7 +137,7 @@ export function FieldWaveform({ timing }: { readonly timing: RasterTiming }) {
             <text
               key={drawn.part}
               x={(drawn.fromPx + drawn.toPx) / 2}
-              y={drawn.part === "sync" ? LEVELS.syncPx + 18 : LEVELS.blackPx - 10}
+              y={drawn.part === "sync" ? LEVELS.syncPx + 18 : LEVELS.blackPx - (overlay === undefined ? 10 : 15)}
               textAnchor="middle"
             >
               {formatNumber(drawn.count)}
@@ -128,6 +145,7 @@ export function FieldWaveform({ timing }: { readonly timing: RasterTiming }) {
           ))}
         </g>
       </svg>
+      {overlay?.(waveform)}
       <figcaption className="figure mt-1 text-muted sm:text-right">
         {`${field}, ${formatNumber(fieldLines(timing))} lines, ${formatNumber(active.count)} shown${perStroke > 1 ? `; a stroke is ${perStroke}` : ""}`}
       </figcaption>

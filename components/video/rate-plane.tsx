@@ -12,6 +12,8 @@ export type RatePoint = PlanePoint & {
   readonly label: string;
   /** fits: a ring; chosen: a filled lamp; outside: a stop's octagon. */
   readonly kind: "fits" | "chosen" | "outside";
+  /** Its label stands beside it on the plane. */
+  readonly isNamed?: boolean;
 };
 
 export type RatePlaneProps = {
@@ -139,8 +141,19 @@ function PlanePointMark({ point, domain, frame }: Placed & { readonly point: Rat
       {point.kind === "outside" ? <path d="M-3 -7h6l4 4v6l-4 4h-6l-4-4v-6z" className="fill-halt" /> : null}
       {point.kind === "chosen" ? <circle r={5} className="fill-lamp" /> : null}
       {point.kind === "fits" ? <circle r={4} className="fill-bg stroke-signal" strokeWidth={2} /> : null}
+      {point.isNamed === true ? (
+        <text y={21} textAnchor={nameAnchor(x, frame)} className={point.kind === "outside" ? "fill-halt" : "fill-text"}>
+          {point.label}
+        </text>
+      ) : null}
     </g>
   );
+}
+
+/** A name near the edge of the plane runs inwards. */
+function nameAnchor(x: number, frame: PlaneFrame): "start" | "middle" | "end" {
+  if (x < frame.leftPx + 40) return "start";
+  return x > frame.leftPx + frame.widthPx - 40 ? "end" : "middle";
 }
 
 function planeWords(screenName: string, bands: readonly EnvelopeBand[], points: readonly RatePoint[]): string {

@@ -18,13 +18,20 @@ export type Waveform = {
   readonly parts: readonly DrawnPart[];
   /** How many times wider blanking is drawn than the picture. */
   readonly blankingFactor: number;
+  /** px of a µs, or of a line, of blanking; 0 where there is none. */
+  readonly pxPerBlank: number;
 };
 
 type WaveformShape = {
   readonly widthPx: number;
   /** Share of the width that blanking gets; where it has more by itself it is drawn true. */
   readonly blankingShare: number;
+  /** Instead of the share: px of a µs, or of a line, of blanking. What is dragged stays under the pointer with it. */
+  readonly pxPerBlank?: number | undefined;
 };
+
+/** Blanking never takes more of the width than this, so that there is a picture left. */
+const MOST_BLANKING = 0.8;
 
 function layOut(
   lengths: Readonly<Record<(typeof order)[number], number>>,
@@ -33,7 +40,8 @@ function layOut(
 ): Waveform {
   const blank = lengths.frontPorch + lengths.sync + lengths.backPorch;
   const natural = blank / (blank + lengths.active);
-  const share = blank === 0 ? 0 : Math.max(natural, shape.blankingShare);
+  const wanted = shape.pxPerBlank === undefined ? shape.blankingShare : (shape.pxPerBlank * blank) / shape.widthPx;
+  const share = blank === 0 ? 0 : Math.max(natural, Math.min(wanted, MOST_BLANKING));
   const blankPx = shape.widthPx * share;
   const perBlank = blank === 0 ? 0 : blankPx / blank;
   const perActive = (shape.widthPx - blankPx) / lengths.active;
@@ -43,7 +51,7 @@ function layOut(
     at += lengths[part] * (part === "active" ? perActive : perBlank);
     return { part, fromPx, toPx: at, length: lengths[part], count: counts[part] };
   });
-  return { parts, blankingFactor: perBlank === 0 ? 1 : perBlank / perActive };
+  return { parts, blankingFactor: perBlank === 0 ? 1 : perBlank / perActive, pxPerBlank: perBlank };
 }
 
 /** One line, from the front porch to the end of the picture, to scale in µs within blanking and within the picture. */
