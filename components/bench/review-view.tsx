@@ -21,6 +21,7 @@ function titleOf(target: BenchTarget): string {
 }
 
 function aboveOf(target: BenchTarget, device: string): string {
+  if (target.kind === "profile" && target.forSlot !== undefined) return `A mode to try on ${device}`;
   if (target.kind === "profile") return `Apply ${target.revisionNumber === null ? "a file" : `revision ${target.revisionNumber}`} to ${device}`;
   return target.kind === "restore" ? `Restore to ${device}` : `Plan for ${device}`;
 }

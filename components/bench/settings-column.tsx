@@ -1,6 +1,5 @@
 "use client";
 
-import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { SelectField } from "@/components/ui/field";
 import { Segmented } from "@/components/ui/segmented";
@@ -27,8 +26,7 @@ function reachWords(reach: Reach, slot: number, others: readonly number[]): stri
 }
 
 /** Settings by what they act on, each on its range ruler. Changes gather until they are reviewed as a plan. */
-export function SettingsColumn({ slot }: { readonly slot: number }) {
-  const [reach, setReach] = useState<Reach>("slot");
+export function SettingsColumn({ slot, reach, onReach }: { readonly slot: number; readonly reach: Reach; readonly onReach: (reach: Reach) => void }) {
   const device = useBench((state) => state.device);
   const reading = useBench((state) => state.reading);
   const edits = useBench((state) => state.edits);
@@ -49,7 +47,7 @@ export function SettingsColumn({ slot }: { readonly slot: number }) {
   return (
     <section aria-labelledby="settings-head">
       <h2 id="settings-head" className="mb-2 text-xl">Settings</h2>
-      <Segmented label="What a setting acts on" value={reach} onChange={setReach} choices={REACHES} />
+      <Segmented label="What a setting acts on" value={reach} onChange={onReach} choices={REACHES} />
       <p className="mt-2 mb-1 text-sm text-muted">{reachWords(reach, slot, alsoMoved(reach, planned, slot))}</p>
       {rows.length + native.length === 0 ? <p className="py-4 text-muted">Slot {slot} is empty: it has no mode to adjust.</p> : null}
       {rows.map((row) => (

@@ -1,6 +1,6 @@
 import { expect, test } from "@/tests/e2e/fixtures";
 import { register } from "@/tests/e2e/bench-steps";
-import { expectNoSidewaysScroll, PHONE, signInAs } from "@/tests/e2e/pages-steps";
+import { expectWhole, signInAs } from "@/tests/e2e/pages-steps";
 
 test("pages of an owner lead to the sign-in and back", async ({ page }) => {
   await page.goto("/backups");
@@ -67,10 +67,8 @@ test("name, password and sessions can be changed, and another browser is signed 
   await expect(page.getByRole("link", { name: "Sign in" })).toBeVisible();
 });
 
-test("the account page is whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
+test("the account page is whole by day, by night and on a phone of 360 px", async ({ page, expectAccessible }) => {
   await register(page, "/account");
   await expect(page.getByRole("heading", { name: "Sessions" })).toBeVisible();
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
 });

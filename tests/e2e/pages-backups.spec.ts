@@ -1,21 +1,22 @@
 import { expect, test } from "@/tests/e2e/fixtures";
-import { expectNoSidewaysScroll, PHONE, preferTheme, signInAs, THEMES } from "@/tests/e2e/pages-steps";
+import { expectWhole, signInAs } from "@/tests/e2e/pages-steps";
 
-for (const theme of THEMES) {
-  test(`devices at a glance and two backups compared by ${theme}`, async ({ page, expectAccessible }) => {
-    await preferTheme(page, theme);
-    await signInAs(page, "imke", "/backups");
-    const devices = page.getByRole("navigation", { name: "Devices" });
-    await expect(devices.getByText("differs from known good").first()).toBeVisible();
-    await expect(devices.getByText("as known good", { exact: true }).first()).toBeVisible();
-    await expect(page.getByRole("table", { name: "What changed between the two backups" })).toBeVisible();
-    await expectAccessible(page);
-    await page
-      .getByLabel("To", { exact: true })
-      .selectOption(await page.getByLabel("From", { exact: true }).inputValue());
-    await expect(page.getByText("This is one backup.")).toBeVisible();
-  });
-}
+test("devices at a glance and two backups compared, by day, by night and on a phone of 360 px", async ({
+  page,
+  expectAccessible,
+}) => {
+  await signInAs(page, "imke", "/backups");
+  const devices = page.getByRole("navigation", { name: "Devices" });
+  await expect(devices.getByText("differs from known good").first()).toBeVisible();
+  await expect(devices.getByText("as known good", { exact: true }).first()).toBeVisible();
+  await expect(page.getByRole("table", { name: /^Backups of/u })).toBeVisible();
+  await expect(page.getByRole("table", { name: "What changed between the two backups" })).toBeVisible();
+  await expectWhole(page, expectAccessible);
+  await page
+    .getByLabel("To", { exact: true })
+    .selectOption(await page.getByLabel("From", { exact: true }).inputValue());
+  await expect(page.getByText("This is one backup.")).toBeVisible();
+});
 
 test("a backup is renamed, pinned, deleted and taken back", async ({ page }) => {
   await signInAs(page, "imke", "/backups");
@@ -79,12 +80,4 @@ test("another owner's backup is not there", async ({ page, browser }) => {
   await signInAs(there, "tobin", href ?? "");
   await expect(there.getByText("This is not here any more.")).toBeVisible();
   await other.close();
-});
-
-test("backups are whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
-  await signInAs(page, "imke", "/backups");
-  await expect(page.getByRole("table", { name: /^Backups of/u })).toBeVisible();
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
 });

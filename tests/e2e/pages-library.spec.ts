@@ -1,6 +1,6 @@
 import { expect, test } from "@/tests/e2e/fixtures";
 import { register } from "@/tests/e2e/bench-steps";
-import { expectNoSidewaysScroll, PHONE, preferTheme, signInAs, THEMES } from "@/tests/e2e/pages-steps";
+import { expectWhole, PHONE, signInAs } from "@/tests/e2e/pages-steps";
 
 test("the library is searched and held against a screen, and the address keeps the wish", async ({ page }) => {
   await page.goto("/library");
@@ -35,28 +35,27 @@ test("columns sort both ways by the keyboard", async ({ page }) => {
   expect(await titles.allInnerTexts()).toEqual(byName(await titles.allInnerTexts()).reverse());
 });
 
-for (const theme of THEMES) {
-  test(`a profile by ${theme}: checked against a screen, two revisions compared, exported`, async ({
-    page,
-    expectAccessible,
-  }) => {
-    await preferTheme(page, theme);
-    await page.goto("/library?q=film+prop");
-    await page.getByRole("link", { name: /Film prop/u }).click();
-    await expect(page.getByRole("heading", { name: "Slots" })).toBeVisible();
-    await page.getByLabel("Hold against").selectOption({ label: "Any 31 kHz monitor, one rate" });
-    await expect(page.getByText(/must change$/u)).toBeVisible();
-    await expect(page.getByRole("table", { name: /What changed from revision/u })).toBeVisible();
-    await expectAccessible(page);
-    const download = page.waitForEvent("download");
-    await page.getByRole("link", { name: "Export .porch.json" }).click();
-    expect((await download).suggestedFilename()).toMatch(/\.porch\.json$/u);
-    await expect(page.getByRole("link", { name: "Apply" })).toHaveAttribute(
-      "href",
-      /^\/bench\?apply=[0-9a-f-]{36}&revision=\d+$/u,
-    );
-  });
-}
+test("a profile is checked against a screen, two revisions compared, exported, by day, by night and at 360 px", async ({
+  page,
+  expectAccessible,
+}) => {
+  await page.goto("/library?q=film+prop");
+  await page.getByRole("link", { name: /Film prop/u }).click();
+  await expect(page.getByRole("heading", { name: "Slots" })).toBeVisible();
+  await page.getByLabel("Hold against").selectOption({ label: "Any 31 kHz monitor, one rate" });
+  await expect(page.getByText(/must change$/u)).toBeVisible();
+  await expect(page.getByRole("table", { name: /What changed from revision/u })).toBeVisible();
+  await expectWhole(page, expectAccessible);
+  const download = page.waitForEvent("download");
+  await page.getByRole("link", { name: "Export .porch.json" }).click();
+  expect((await download).suggestedFilename()).toMatch(/\.porch\.json$/u);
+  await expect(page.getByRole("link", { name: "Apply" })).toHaveAttribute(
+    "href",
+    /^\/bench\?apply=[0-9a-f-]{36}&revision=\d+$/u,
+  );
+  await page.setViewportSize(PHONE);
+  await expect(page.getByRole("link", { name: "Apply" })).toBeInViewport();
+});
 
 test("a file goes in as it came out; a bad one changes nothing and says where", async ({ page }) => {
   await register(page, "/library");
@@ -96,15 +95,4 @@ test("some slots of a backup are published as a profile", async ({ page, expectA
   await page.getByRole("button", { name: "Publish", exact: true }).click();
   await expect(page.getByRole("heading", { level: 1, name: title })).toBeVisible();
   await expect(page.getByText(/private/u).first()).toBeVisible();
-});
-
-test("library and profile are whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
-  await page.goto("/library?q=film+prop");
-  await page.getByRole("link", { name: /Film prop/u }).click();
-  await expect(page.getByRole("heading", { name: "Slots" })).toBeVisible();
-  await expect(page.getByText("Loading")).toHaveCount(0);
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
-  await expect(page.getByRole("link", { name: "Apply" })).toBeInViewport();
 });

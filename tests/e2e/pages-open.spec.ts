@@ -1,5 +1,5 @@
 import { expect, test } from "@/tests/e2e/fixtures";
-import { expectNoSidewaysScroll, PHONE, preferTheme, THEMES } from "@/tests/e2e/pages-steps";
+import { expectWhole, PHONE, preferTheme } from "@/tests/e2e/pages-steps";
 
 /** Pages that everybody can read, each with what shows that it is there. */
 const pages = [
@@ -11,23 +11,11 @@ const pages = [
 ] as const;
 
 for (const { path, shows } of pages) {
-  for (const theme of THEMES) {
-    test(`${path} by ${theme}: no axe violation, no policy violation`, async ({ page, expectAccessible }) => {
-      await preferTheme(page, theme);
-      await page.goto(path);
-      await expect(page.getByRole("heading", { level: 1, name: shows })).toBeVisible();
-      await expect(page.getByText("Loading")).toHaveCount(0);
-      await expectAccessible(page);
-    });
-  }
-
-  test(`${path} is whole on a phone of 360 px`, async ({ page, expectAccessible }) => {
-    await page.setViewportSize(PHONE);
+  test(`${path} is whole by day, by night and on a phone of 360 px`, async ({ page, expectAccessible }) => {
     await page.goto(path);
     await expect(page.getByRole("heading", { level: 1, name: shows })).toBeVisible();
     await expect(page.getByText("Loading")).toHaveCount(0);
-    await expectNoSidewaysScroll(page);
-    await expectAccessible(page);
+    await expectWhole(page, expectAccessible);
   });
 }
 

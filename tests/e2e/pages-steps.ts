@@ -28,3 +28,20 @@ export async function preferTheme(page: Page, theme: Theme): Promise<void> {
 export async function expectNoSidewaysScroll(page: Page): Promise<void> {
   expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth)).toBeLessThanOrEqual(0);
 }
+
+const WIDE = { width: 1440, height: 900 } as const;
+
+/**
+ * The page as it stands is whole by day, by night and at 360 px: nothing that axe finds, nothing that scrolls sideways.
+ *
+ * One visit for the three: a page follows the system's theme and its window while it is open.
+ */
+export async function expectWhole(page: Page, expectAccessible: (page: Page) => Promise<void>): Promise<void> {
+  for (const { theme, size } of [{ theme: "day", size: WIDE }, { theme: "night", size: WIDE }, { theme: "night", size: PHONE }] as const) {
+    await page.setViewportSize(size);
+    await preferTheme(page, theme);
+    await expectNoSidewaysScroll(page);
+    await expectAccessible(page);
+  }
+  await page.setViewportSize(WIDE);
+}

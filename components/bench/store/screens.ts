@@ -1,4 +1,5 @@
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
+import { screenPresets } from "@/lib/timing/screen-presets";
 import { say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { replan } from "@/components/bench/store/review";
 import type { BenchScreen } from "@/components/bench/store/types";
@@ -45,6 +46,14 @@ export async function chooseScreen(core: BenchCore, choice: ScreenChoice): Promi
   } catch (error) {
     say(core, "halt", `The screen is used here, but it was not stored: ${sentenceOf(error)}`);
   }
+}
+
+/** Takes a screen by the id of a class of screens, or of an owner's row. What is neither stays unchosen. */
+export async function chooseScreenById(core: BenchCore, id: string): Promise<void> {
+  const preset = screenPresets.find((one) => one.id === id);
+  if (preset) return chooseScreen(core, { key: `preset:${id}`, label: preset.envelope.name, id: null, presetId: id, envelope: preset.envelope });
+  const own = core.around.account ? (await core.around.server.screens()).find((one) => one.id === id) : undefined;
+  if (own) await chooseScreen(core, { key: id, label: own.name, id, presetId: own.presetId, envelope: own.envelope });
 }
 
 /** The owner states that the screen is unknown and accepts that no limit of it was checked. */

@@ -67,6 +67,8 @@ export type BenchTarget =
       readonly document: ProfileDocument; readonly patches: readonly DocumentPatch[];
       /** The document took over a mode of the device, so it is no longer the revision and some patches. */
       readonly isAltered: boolean;
+      /** The document is one raster for this slot, not a profile of anybody's. */
+      readonly forSlot?: number;
     }
   | { readonly kind: "restore"; readonly title: string; readonly backupId: string | null; readonly content: BackupContent };
 
