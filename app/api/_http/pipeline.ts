@@ -168,7 +168,26 @@ function parseWith(schema: ZodType | undefined, value: unknown): Result<unknown,
   if (schema === undefined) return ok(undefined);
   const result = schema.safeParse(value);
   if (result.success) return ok(result.data);
-  return fail(result.error.issues.slice(0, maxErrors).map(({ path, message }) => ({ path: pathText(path), message })));
+  const issues = result.error.issues.flatMap((issue) => meantIssues(issue, []));
+  return fail(issues.slice(0, maxErrors).map(({ path, message }) => ({ path: pathText(path), message })));
+}
+
+type Issue = z.core.$ZodIssue;
+type Complaint = { readonly path: readonly PropertyKey[]; readonly message: string };
+
+/**
+ * Of a value with several shapes, the complaints of the shape that was meant: the one that gets farthest into it, or
+ * that has least against it. Recursion ends with the schema's own depth.
+ */
+function meantIssues(issue: Issue, before: readonly PropertyKey[]): Complaint[] {
+  const path = [...before, ...issue.path];
+  if (issue.code !== "invalid_union" || issue.errors.length === 0) return [{ path, message: issue.message }];
+  const shapes = issue.errors.map((errors) => errors.flatMap((inner) => meantIssues(inner, path)));
+  const reach = (found: readonly Complaint[]) => Math.min(...found.map((one) => one.path.length));
+  return shapes.reduce((best, found) => {
+    const further = reach(found) - reach(best);
+    return further > 0 || (further === 0 && found.length < best.length) ? found : best;
+  });
 }
 
 /** `["slots", 2, "name"]` as `slots[2].name`. */

@@ -12,6 +12,8 @@ export type Call = {
   readonly body?: unknown;
   /** Sent as it is, instead of `body` as JSON. */
   readonly text?: string;
+  /** Sent as they are, as `application/octet-stream`. */
+  readonly bytes?: Uint8Array<ArrayBuffer>;
   readonly cookie?: string | undefined;
   readonly headers?: Record<string, string>;
 };
@@ -21,9 +23,11 @@ export async function call(route: RouteFunction, given: Call = {}): Promise<Resp
   const { method = "GET", path = "/api/test", params = {}, cookie } = given;
   const headers = new Headers({ host: new URL(origin).host, origin, ...given.headers });
   const text = given.text ?? (given.body === undefined ? undefined : JSON.stringify(given.body));
-  if (text !== undefined && !headers.has("content-type")) headers.set("content-type", "application/json");
+  const type = given.bytes === undefined ? "application/json" : "application/octet-stream";
+  const body = given.bytes ?? text;
+  if (body !== undefined && !headers.has("content-type")) headers.set("content-type", type);
   if (cookie !== undefined) headers.set("cookie", cookie);
-  const request = new Request(`${origin}${path}`, { method, headers, body: text });
+  const request = new Request(`${origin}${path}`, { method, headers, body });
   return route(request, { params: Promise.resolve(params) });
 }
 

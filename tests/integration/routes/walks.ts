@@ -6,6 +6,7 @@ import type { ProfileDetail } from "@/lib/contracts/profile";
 import type { RunView } from "@/lib/contracts/run";
 import type { ScreenView } from "@/lib/contracts/screen";
 import { standardRaster } from "@/lib/timing/standards";
+import { publishedEdids } from "@/tests/fixtures/standards/read";
 import { backupBody, cabinet, deviceBody } from "@/tests/integration/routes/bench";
 import type { Call } from "@/tests/integration/routes/http";
 import type { Person } from "@/tests/integration/routes/people";
@@ -36,6 +37,7 @@ export type Walk = {
 
 /** A profile that the owner keeps private. */
 export const document = demoProfiles.find(({ key }) => key === "upright-240")?.revisions.at(-1)?.document;
+const publishedEdid = () => Uint8Array.from(publishedEdids()[0]?.[1] ?? []);
 const id = (of: { readonly id: string }, more: Call = {}): Call => ({ params: { id: of.id }, ...more });
 
 /** In an order in which each finds what it needs: what deletes comes last. */
@@ -43,6 +45,28 @@ export const walks: Readonly<Record<string, Walk>> = {
   "GET /api/health": { given: () => ({}), owner: 200, others: 200, nobody: 200 },
   "POST /api/timing/describe": {
     given: () => ({ body: { timing: standardRaster("240p60").timing } }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "POST /api/timing/fit": {
+    given: () => ({
+      body: { activeLines: 240, activePx: 1440, fieldRateHz: 60, interlaced: false, screen: cabinet },
+    }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "POST /api/timing/modeline": {
+    given: () => ({ body: { timing: standardRaster("240p60").timing } }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "GET /api/timing/standards": { given: () => ({}), owner: 200, others: 200, nobody: 200 },
+  "POST /api/screens/edid": { given: () => ({ bytes: publishedEdid() }), owner: 200, others: 200, nobody: 200 },
+  "POST /api/signal/attenuator": {
+    given: () => ({ body: { sourceVpp: 4, sourceOhm: 75, loadOhm: 75, targetVpp: 0.3 } }),
     owner: 200,
     others: 200,
     nobody: 200,
