@@ -35,19 +35,6 @@ export const test = base.extend<Fixtures>({
   },
 });
 
-let people = 0;
-
-/** Registers somebody new, so that no test meets another's devices. */
-export async function register(page: Page, returnPath = "/bench"): Promise<void> {
-  people += 1;
-  await page.goto(`/register?from=${encodeURIComponent(returnPath)}`);
-  await page.getByLabel("Name").fill("Tove Halvard");
-  await page.getByLabel("E-mail address").fill(`tove.${Date.now()}.${process.pid}.${people}@example.org`);
-  await page.getByLabel("Password").fill("a long plain password");
-  await page.getByRole("button", { name: "Register" }).click();
-  await page.waitForURL(`**${returnPath}`);
-}
-
 /** Connects, and waits until the device was read whole. */
 export async function connect(page: Page, wire: Wire): Promise<void> {
   await page.getByRole("button", { name: wire === "simulated" ? "Use a simulated device" : "Choose a port" }).click();

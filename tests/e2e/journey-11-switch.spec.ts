@@ -1,5 +1,6 @@
 import { expect } from "@/tests/e2e/fixtures";
-import { chooseScreen, connect, register, settled, test, WIRES, wireText } from "@/tests/e2e/bench-steps";
+import { chooseScreen, connect, settled, test, WIRES, wireText } from "@/tests/e2e/bench-steps";
+import { register } from "@/tests/e2e/pages-steps";
 
 for (const wire of WIRES) {
   test(`switch over ${wire}: a slot is checked against the screen, recalled once, read back`, async ({ page, prepareWire }) => {

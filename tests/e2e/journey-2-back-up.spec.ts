@@ -1,5 +1,6 @@
 import { expect } from "@/tests/e2e/fixtures";
-import { connect, moveBy, READ_MS, register, settled, test, tryIt, trial, WIRES, chooseScreen } from "@/tests/e2e/bench-steps";
+import { connect, moveBy, READ_MS, settled, test, tryIt, trial, WIRES, chooseScreen } from "@/tests/e2e/bench-steps";
+import { register } from "@/tests/e2e/pages-steps";
 
 for (const wire of WIRES) {
   test(`back up over ${wire}: everything is read with progress, dated, named; the second backup says what changed`, async ({ page, expectAccessible, prepareWire }) => {

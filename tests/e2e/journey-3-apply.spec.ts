@@ -1,5 +1,6 @@
 import { expect } from "@/tests/e2e/fixtures";
-import { chooseScreen, connect, READ_MS, readCautions, register, settled, test, trial, WIRES, wireText } from "@/tests/e2e/bench-steps";
+import { chooseScreen, connect, READ_MS, readCautions, settled, test, trial, WIRES, wireText } from "@/tests/e2e/bench-steps";
+import { register } from "@/tests/e2e/pages-steps";
 
 const ASKED_HEIGHT_PCT = 108;
 

@@ -1,7 +1,8 @@
 import { expect } from "@/tests/e2e/fixtures";
 import type { Page } from "@playwright/test";
-import { chooseScreen, connect, moveBy, READ_MS, readCautions, register, settled, test, trial, tryIt } from "@/tests/e2e/bench-steps";
+import { chooseScreen, connect, moveBy, READ_MS, readCautions, settled, test, trial, tryIt } from "@/tests/e2e/bench-steps";
 import { bridgeSerial } from "@/tests/e2e/serial-bridge";
+import { register } from "@/tests/e2e/pages-steps";
 
 /** Registers, connects the device outside and plans a move, ready to be tried for as long as a trial may take. */
 async function planOverTcp(page: Page): Promise<void> {
@@ -69,33 +70,27 @@ async function putBackByOwner(page: Page): Promise<void> {
   await settled(page);
 }
 
-test("the page is reloaded in a write, in a trial, in a commit and while putting back: each time the run is taken up", async ({ page, startDevice }) => {
+test("the page is reloaded in a write, and again while putting back: each time the owner can put the old values back", async ({ page, startDevice }) => {
   const bridge = await bridgeSerial(page, await startDevice());
   await planOverTcp(page);
   const inWrite = bridge.whenSent("HPOS 2");
   await start(page);
   await inWrite;
   await page.reload();
-  await putBackByOwner(page);
-
-  await button(page, "Close").click();
-  await moveBy(page, "Horizontal position", 2);
-  await page.getByRole("button", { name: "Review the plan" }).click();
-  await readCautions(page);
-  await page.getByLabel("Length of the trial").selectOption("120");
-  await start(page);
-  await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
+  await button(page, "Choose a port").click();
+  await expect(button(page, "Put back")).toBeVisible({ timeout: READ_MS });
+  // The value is on the device already, so putting back writes it again: cut off in that very write.
   const inPutBack = bridge.whenSent("HPOS 0");
   await button(page, "Put back").click();
   await inPutBack;
   await page.reload();
   await putBackByOwner(page);
+  await expect(page.getByRole("slider", { name: /Horizontal position/u })).toHaveAttribute("aria-valuenow", "0");
+});
 
-  await button(page, "Close").click();
-  await moveBy(page, "Horizontal position", 2);
-  await page.getByRole("button", { name: "Review the plan" }).click();
-  await readCautions(page);
-  await page.getByLabel("Length of the trial").selectOption("120");
+test("the page is reloaded in a trial, and again in the commit: it is kept by what the device says, not by the last word", async ({ page, startDevice }) => {
+  const bridge = await bridgeSerial(page, await startDevice());
+  await planOverTcp(page);
   await start(page);
   await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
   await page.reload();
@@ -106,7 +101,6 @@ test("the page is reloaded in a write, in a trial, in a commit and while putting
   await inCommit;
   await page.reload();
   await button(page, "Choose a port").click();
-  // The commit may have been stored: the device is asked, and read whole; only that is the proof.
   await expect(trial(page, "kept")).toBeVisible({ timeout: READ_MS });
   await settled(page);
   await expect(page.getByRole("slider", { name: /Horizontal position/u })).toHaveAttribute("aria-valuenow", "2");

@@ -1,11 +1,15 @@
+import { demoAccount } from "@/db/demo/accounts";
 import { expect, test } from "@/tests/e2e/fixtures";
-import { register } from "@/tests/e2e/bench-steps";
-import { expectWhole, signInAs } from "@/tests/e2e/pages-steps";
+import { expectWhole, register } from "@/tests/e2e/pages-steps";
 
 test("pages of an owner lead to the sign-in and back", async ({ page }) => {
   await page.goto("/backups");
   await expect(page).toHaveURL(/\/sign-in\?from=%2Fbackups$/u);
-  await signInAs(page, "tobin", "/backups");
+  const { email, password } = demoAccount("tobin");
+  await page.getByLabel("E-mail address").fill(email);
+  await page.getByLabel("Password").fill(password);
+  await page.getByRole("button", { name: "Sign in", exact: true }).click();
+  await page.waitForURL("**/backups");
   await expect(page.getByRole("heading", { level: 1, name: "Backups" })).toBeVisible();
 });
 

@@ -1,6 +1,5 @@
 import { expect, test } from "@/tests/e2e/fixtures";
-import { register } from "@/tests/e2e/bench-steps";
-import { expectWhole, PHONE, signInAs } from "@/tests/e2e/pages-steps";
+import { expectWhole, PHONE, register, signInAs } from "@/tests/e2e/pages-steps";
 
 test("the library is searched and held against a screen, and the address keeps the wish", async ({ page }) => {
   await page.goto("/library");

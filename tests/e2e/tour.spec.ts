@@ -1,5 +1,6 @@
 import { expect, test } from "@/tests/e2e/fixtures";
-import { chooseScreen, connect, moveBy, readCautions, READ_MS, register, trial } from "@/tests/e2e/bench-steps";
+import { chooseScreen, connect, moveBy, readCautions, READ_MS, trial } from "@/tests/e2e/bench-steps";
+import { register } from "@/tests/e2e/pages-steps";
 import { demoAccount } from "@/db/demo/accounts";
 import type { Page } from "@playwright/test";
 
