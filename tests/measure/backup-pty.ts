@@ -11,7 +11,7 @@ import type { Measurement } from "./measure";
 const ATTEMPTS = 6;
 
 /** From the first setting's request to the last setting's reply. @returns ms */
-async function timeOfSettings(session: DeviceSession, driver: CompiledDriver): Promise<number> {
+export async function timeOfSettings(session: DeviceSession, driver: CompiledDriver): Promise<number> {
   let startMs = NaN;
   let endMs = NaN;
   const backup = await takeBackup(session, driver, {

@@ -1,12 +1,13 @@
 import { readdirSync, writeFileSync } from "node:fs";
 import path from "node:path";
 
-/** One figure and the most that it may be, in the same unit. */
+/** One figure and the most that it may be (with `atLeast` the least), in the same unit. */
 export type Measurement = {
   readonly name: string;
   readonly value: number;
   readonly unit: string;
   readonly limit: number;
+  readonly atLeast?: boolean;
 };
 
 type Measure = () => Promise<readonly Measurement[]>;
@@ -25,9 +26,14 @@ async function findMeasures(): Promise<readonly (readonly [string, Measure])[]> 
   return found;
 }
 
-function line({ name, value, unit, limit }: Measurement): string {
+function isWithin({ value, limit, atLeast }: Measurement): boolean {
+  return atLeast ? value >= limit : value <= limit;
+}
+
+function line(measurement: Measurement): string {
+  const { name, value, unit, limit, atLeast } = measurement;
   const share = (value / limit).toFixed(3);
-  const verdict = value <= limit ? "within" : "OVER";
+  const verdict = isWithin(measurement) ? "within" : atLeast ? "UNDER" : "OVER";
   return `${name.padEnd(60)} ${value.toPrecision(5).padStart(12)} ${unit.padEnd(8)} limit ${limit.toPrecision(5)}  ${share} ${verdict}`;
 }
 
@@ -41,4 +47,4 @@ for (const [name, measure] of await findMeasures()) {
 }
 writeFileSync("measurements.json", `${JSON.stringify(measurements, null, 2)}\n`);
 if (measurements.length === 0) throw new Error("Nothing was measured.");
-process.exit(measurements.every(({ value, limit }) => value <= limit) ? 0 : 1);
+process.exit(measurements.every(isWithin) ? 0 : 1);

@@ -173,7 +173,11 @@ export class SimulatedDevicePort {
     if (event.kind === "unplug") this.unplug(event.order);
     else if (event.kind === "read-error") this.#far?.faultOnRead(event.fault);
     else if (event.kind === "write-error") this.#far?.faultOnWrite(event.fault);
-    else this.#options.model.restart();
+    else {
+      // What a device was about to say dies with it.
+      this.#deviceOut.clear();
+      this.#options.model.restart();
+    }
   }
 
   /** Bytes sampled at another rate or with other bits are other bytes; which ones does not matter, that they repeat does. */

@@ -1,7 +1,7 @@
 import type { NativeValues } from "@/lib/serial/native";
 import { rasterOfSlot, sameOutput } from "@/lib/serial/plan/output-raster";
 import { factsFrom } from "@/lib/serial/run/run-facts";
-import type { RunState, RunView } from "@/lib/serial/run/types";
+import type { JournalEntry, RunState, RunView } from "@/lib/serial/run/types";
 import { CHANGED, type World } from "./world";
 
 const changedKeys = Object.values(CHANGED);
@@ -19,8 +19,9 @@ export function sidesOf({ plan }: World): Sides {
   };
 }
 
-/** The raster out is that of the slot that is on, as its values are. */
+/** The raster out is that of the slot that is on, as its values are: a question where timing takes effect on recall. */
 function rasterInEffect({ device, driver }: World): boolean {
+  if (driver.definition.timingTakesEffect !== "recall") return true;
   return sameOutput(device.rasterOut, rasterOfSlot(driver, new Map(Object.entries(device.working)), device.activeSlot));
 }
 
@@ -30,15 +31,16 @@ function rasterInEffect({ device, driver }: World): boolean {
  * Source: the run's executable model, invariants S1 to S8 (S3 and S4's ways out are checked on whole runs).
  */
 export function brokenBy(world: World, before: RunState, view: RunView): readonly string[] {
-  if (view.state === before) return [];
   const { device, storedAtStart } = world;
-  const sides = sidesOf(world);
-  const commitSent = factsFrom(world.entries).commitSent;
-  const untouched = (values: NativeValues) => holds(values, sides.old) || holds(values, storedAtStart);
   const found: string[] = [];
   const demand = (truth: boolean, sentence: string) => {
     if (!truth) found.push(sentence);
   };
+  demand(view.link === "up" || view.why !== "" || before === view.state, "I6 the link is lost, and nothing says why");
+  if (view.state === before) return found;
+  const sides = sidesOf(world);
+  const commitSent = factsFrom(world.journals.browser).commitSent;
+  const untouched = (values: NativeValues) => holds(values, sides.old) || holds(values, storedAtStart);
   if (view.state === "kept") {
     demand(holds(device.stored, sides.new), "S1 kept, but non-volatile memory is not all new");
     demand(!device.timerArmed, "S1 kept, but the device timer is armed");
@@ -52,6 +54,7 @@ export function brokenBy(world: World, before: RunState, view: RunView): readonl
     demand(device.activeSlot === 1, "S5 put-back, but another slot is active");
   }
   if (view.state === "called-off") demand(device.counts.writes === Number(storedAtStart[CHANGED.other] !== sides.old[CHANGED.other]), "called off, but something was written");
+  if (view.state === "mixed" || view.state === "unconfirmed") demand(view.why !== "", `I6 ${view.state}, and nothing says why`);
   if (view.state === "mixed" && !world.timerFired) {
     demand(view.standings.every(({ key, found: value }) => value === device.working[key]), "S4 mixed, with a wrong label");
   }
@@ -60,6 +63,46 @@ export function brokenBy(world: World, before: RunState, view: RunView): readonl
     if (!view.onlyThisPagePutsBack) {
       demand(device.timerArmed ? world.armedOver !== null && untouched(world.armedOver) : untouched(device.working), "S6 trying, and the device alone would not go back to the old values");
     }
+  }
+  return found;
+}
+
+const isOnce = (entry: JournalEntry) => entry.kind === "request" && (entry.request === "recall" || entry.request === "commit");
+
+/** How things stood when an act began. */
+export type Before = { readonly left: number; readonly stored: Readonly<Record<string, number>>; readonly number: number };
+
+const lastNumber = (entries: readonly JournalEntry[]) => entries.reduce((last, { number }) => Math.max(last, number), 0);
+
+export function standsNow(world: World): Before {
+  return { left: world.left.length, stored: world.device.counts.stored, number: lastNumber(world.journals.browser) };
+}
+
+/** S3: the same recall or commit in the same direction leaves once. */
+function leftTwice(entries: readonly JournalEntry[]): readonly string[] {
+  const found: string[] = [];
+  const seen = new Map<string, number>();
+  for (const entry of entries) {
+    if (entry.kind !== "request" || !isOnce(entry)) continue;
+    const purpose = `${entry.request} ${entry.slot ?? ""} ${entry.direction}`;
+    const other = seen.get(purpose);
+    if (other !== undefined && other !== entry.number) found.push(`S3 ${purpose} left twice in one act`);
+    seen.set(purpose, entry.number);
+  }
+  return found;
+}
+
+/** I7, I8, S3: what left in one act of the owner. */
+export function brokenInAct(world: World, before: Before): readonly string[] {
+  const found = [...leftTwice(world.journals.browser.filter(({ number }) => number > before.number))];
+  const left = world.left.slice(before.left);
+  // One to keep and, where that went wrong in the same act, one to put back.
+  const commits = left.filter((name) => name === "commit").length;
+  if (commits > 2) found.push(`S3 commit left ${commits} times in one act`);
+  const journalled = new Set(world.journals.browser.filter(isOnce).map(({ number }) => number)).size;
+  if (world.left.length > journalled) found.push(`I7 ${world.left.length} recalls and commits left for ${journalled} in the journal`);
+  for (const [key, count] of Object.entries(world.device.counts.stored)) {
+    if (count - (before.stored[key] ?? 0) > 2) found.push(`I8 ${key} was stored more than once each way in one act`);
   }
   return found;
 }

@@ -1,40 +1,86 @@
-import type { Fault } from "./fault-line";
-import { explore, type Case } from "./explore";
+import type { WireDirection } from "@/lib/serial/simulator/wire-fault";
+import { BYTE_FAULTS, faultsOfKind, type ByteKind } from "./byte-faults";
+import { caseId, type Case } from "./case-id";
+import { explore, type Explored } from "./explore";
+import type { Fault, FaultKind } from "./fault-line";
 
-/** More points than a run has: a sweep that gets here does not end by itself. */
-const MAX_POINTS = 2_000;
+/**
+ * `cover`: what every run of the tests lives through: each fault at every stride-th place, each kind beginning at another
+ * one. `whole`: each fault at every place, all eight bits of a byte.
+ */
+export const SCOPE: "cover" | "whole" = process.env.SWEEP_SCOPE === "whole" ? "whole" : "cover";
 
-export type Found = { readonly cases: number; readonly broken: readonly string[]; readonly ends: Readonly<Record<string, number>> };
+/** More places than any scenario has: a sweep that gets here does not end by itself. */
+const MAX_PLACES = 20_000;
+/** Failures told in full; the others are counted. */
+const MAX_TOLD = 20;
 
-/** One case by a name that repeats it. */
-function named(faults: readonly Fault[]): string {
-  return faults.map(({ kind, at }) => `${kind} at ${at}`).join(", ");
+export type Swept = { readonly cases: number; readonly broken: readonly string[]; readonly ends: ReadonlySet<string> };
+
+/** Gathers what cases came to. Each broken one is told by the id that repeats it. */
+export class Tally {
+  cases = 0;
+  readonly ends = new Set<string>();
+  private readonly told: string[] = [];
+  private more = 0;
+
+  /** Lives one case. @returns how many of its troubles struck */
+  async live(one: Case): Promise<number> {
+    const { struck, end, broken } = await explored(one);
+    if (struck > 0) {
+      this.cases += 1;
+      this.ends.add(end);
+    }
+    for (const sentence of broken) {
+      if (this.told.length < MAX_TOLD) this.told.push(`${sentence} · SWEEP=${caseId(one)}`);
+      else this.more += 1;
+    }
+    return struck;
+  }
+
+  get broken(): readonly string[] {
+    return this.more === 0 ? this.told : [...this.told, `and ${this.more} more`];
+  }
 }
 
-/** Lives through each list of faults and gathers what broke. */
-export async function exploreAll(over: Omit<Case, "faults">, lists: Iterable<readonly Fault[]>): Promise<Found> {
-  const broken: string[] = [];
-  const ends: Record<string, number> = {};
-  let cases = 0;
-  for (const faults of lists) {
-    const { end, broken: found } = await explore({ ...over, faults });
-    cases += 1;
-    ends[end] = (ends[end] ?? 0) + 1;
-    broken.push(...found.map((sentence) => `${sentence}: ${named(faults)}`));
+/** A case that throws has broken I1, or something that nobody thought of: its id must not be lost. */
+export async function explored(one: Case): Promise<Explored> {
+  try {
+    return await explore(one);
+  } catch (error) {
+    return { struck: 1, end: "ready", broken: [`I1 ${error instanceof Error ? error.message : String(error)}`] };
   }
-  return { cases, broken, ends };
 }
 
-/** Injects one fault at the n-th request, n = 0, 1, 2 …, until nothing strikes any more. */
-export async function sweep(over: Omit<Case, "faults">, kind: Fault["kind"]): Promise<Found> {
-  const broken: string[] = [];
-  const ends: Record<string, number> = {};
-  for (let at = 0; at < MAX_POINTS; at += 1) {
-    const faults = [{ at, kind }];
-    const { fired, end, broken: found } = await explore({ ...over, faults });
-    if (fired === 0) return { cases: at, broken, ends };
-    ends[end] = (ends[end] ?? 0) + 1;
-    broken.push(...found.map((sentence) => `${sentence}: ${named(faults)}`));
-  }
+type Steps = { readonly stride: number; readonly phase: number };
+
+/** Places of a sweep in the chosen scope. */
+function* places({ stride, phase }: Steps): Generator<number> {
+  const step = SCOPE === "whole" ? 1 : stride;
+  for (let at = SCOPE === "whole" ? 0 : phase % stride; at < MAX_PLACES; at += step) yield at;
   throw new Error("The sweep did not end");
+}
+
+/** One fault at the n-th request, until nothing strikes any more. */
+export async function sweepRequests(tally: Tally, over: Omit<Case, "faults">, kind: FaultKind, steps: Steps): Promise<void> {
+  for (const at of places(steps)) {
+    if ((await tally.live({ ...over, faults: [{ at, kind } satisfies Fault] })) === 0) return;
+  }
+}
+
+/** One fault at the n-th byte of a direction, until nothing strikes any more. */
+export async function sweepBytes(tally: Tally, over: Omit<Case, "bytes">, kind: ByteKind, direction: WireDirection, lasting: boolean, steps: Steps): Promise<void> {
+  for (const at of places(steps)) {
+    for (const fault of faultsOfKind(kind, at, SCOPE === "whole")) {
+      if ((await tally.live({ ...over, bytes: [{ fault, direction, at, lasting }] })) === 0) return;
+    }
+  }
+}
+
+/** The directions in which a kind means something of its own: a port reads what comes in and writes what goes out. */
+export function directionsOf(kind: ByteKind): readonly WireDirection[] {
+  const fault = kind === "flip" || kind === "insert" ? null : BYTE_FAULTS[kind];
+  if (fault?.kind === "read-error") return ["device-to-host"];
+  if (fault?.kind === "write-error") return ["host-to-device"];
+  return ["host-to-device", "device-to-host"];
 }

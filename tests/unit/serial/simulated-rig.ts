@@ -29,15 +29,17 @@ export function compiled(definition: DriverDefinition): CompiledDriver {
 export const lf8 = compiled(lanternfieldLf8);
 
 /** A device and its wire, without a session. */
-export function plugIn(driver: CompiledDriver = lf8, options: Omit<DeviceModelOptions, "clock"> = {}, clock = createVirtualClock()): Omit<Rig, "session" | "identity"> {
+export function plugIn(
+  driver: CompiledDriver = lf8, options: Omit<DeviceModelOptions, "clock"> = {}, clock = createVirtualClock(), pacing: "wire" | "none" = "wire",
+): Omit<Rig, "session" | "identity"> {
   const device = createDeviceModel(driver, { clock, ...options });
-  const plug = createSimulatedDevicePort({ model: device, transport: driver.definition.transport, clock, pacing: "wire" });
+  const plug = createSimulatedDevicePort({ model: device, transport: driver.definition.transport, clock, pacing });
   return { clock, driver, device, plug, wireLog: createWireLog({ clock }) };
 }
 
-/** A device, its wire and a ready session. */
-export async function connect(driver: CompiledDriver = lf8, options: Omit<DeviceModelOptions, "clock"> = {}): Promise<Rig> {
-  const parts = plugIn(driver, options);
+/** A device, its wire and a ready session. @param pacing `none` where many are made and the line's own time does not matter */
+export async function connect(driver: CompiledDriver = lf8, options: Omit<DeviceModelOptions, "clock"> = {}, pacing: "wire" | "none" = "wire"): Promise<Rig> {
+  const parts = plugIn(driver, options, createVirtualClock(), pacing);
   const { clock, plug, wireLog } = parts;
   const opened = await clock.run(openSession({ port: plug.port, driver, clock, wireLog }));
   if (!opened.ok) throw new Error(`The session did not open: ${JSON.stringify(opened.error)}`);

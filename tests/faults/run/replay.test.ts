@@ -1,0 +1,23 @@
+import { expect, it } from "vitest";
+import { caseId, parseCase } from "./case-id";
+import { explored } from "./sweep";
+
+/** Cases that reach far, kept by name; and the one that `SWEEP` names. */
+const KEPT = [
+  "lf8/run/keep,finish/slot2/request-restart@14",
+  "lf8/run/keep,put-back/slot1,dirty/timer@20",
+  "lf8/run/keep,put-back/slot2/reply-unplug@30+reply-restart@41",
+  "brackenrow/run/keep,finish/slot2,hidden/reply-late@12",
+  "brackenrow/backup/keep,finish/slot2/in.drop@40!",
+  "ternwick/run/keep,put-back/slot2/torn@9",
+  "ternwick/put-back/put-back,put-back/slot2/out.flip3@60",
+];
+const NAMED = process.env.SWEEP !== undefined && !process.env.SWEEP.startsWith("short/") ? [process.env.SWEEP] : [];
+
+it.each([...KEPT, ...NAMED])("repeats the case %s", async (id) => {
+  const one = parseCase(id);
+  expect(caseId(one)).toBe(id);
+  const { struck, broken } = await explored(one);
+  expect(broken).toEqual([]);
+  expect(struck).toBeGreaterThan(0);
+});

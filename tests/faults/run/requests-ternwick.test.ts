@@ -1,0 +1,3 @@
+import { describeRequestSweep } from "./request-sweep";
+
+describeRequestSweep("ternwick", [1, 2, 2]);
