@@ -3,17 +3,23 @@ import { pathToFileURL } from "node:url";
 import { drizzle } from "drizzle-orm/node-postgres";
 import { migrate } from "drizzle-orm/node-postgres/migrator";
 import pg from "pg";
+import { seedShippedDrivers } from "@/db/seed-drivers";
 
 /** Any number, the same for every process that migrates. */
 const migrationLock = 7_350_317;
 
-/** Applies the migrations in `drizzle/` that a database lacks. Several at once wait for each other. */
+/**
+ * Applies the migrations in `drizzle/` that a database lacks, and publishes the drivers that come with the program.
+ * Several at once wait for each other.
+ */
 export async function migrateDatabase(connectionString: string): Promise<void> {
   const client = new pg.Client({ connectionString });
   await client.connect();
   try {
     await client.query("select pg_advisory_lock($1)", [migrationLock]);
-    await migrate(drizzle(client), { migrationsFolder: path.join(import.meta.dirname, "..", "drizzle") });
+    const db = drizzle(client);
+    await migrate(db, { migrationsFolder: path.join(import.meta.dirname, "..", "drizzle") });
+    await seedShippedDrivers(db);
   } finally {
     // Ending the connection gives the lock back.
     await client.end();

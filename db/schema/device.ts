@@ -33,6 +33,8 @@ export const device = pgTable(
     firmware: text("firmware").notNull(),
     simulated: boolean("simulated").notNull(),
     screenId: uuid("screen_id"),
+    /** The driver version whose notice the owner has put aside. */
+    acknowledgedDriverVersion: text("acknowledged_driver_version"),
     /** The backup to come back to. The migration adds the key to `backup`: the two tables name each other. */
     knownGoodBackupId: uuid("known_good_backup_id"),
     /** Counts changes; the ETag. */

@@ -1,7 +1,11 @@
 import "server-only";
+import type { Db } from "@/db/client";
+import type { Asker } from "@/db/queries/askers";
+import { readDefinition } from "@/db/queries/drivers";
 import type { BackupContent } from "@/lib/serial/backup/types";
 import { backupContent } from "@/lib/serial/backup/take-backup";
 import type { DriverDefinition } from "@/lib/serial/driver/definition";
+import { parseDefinition } from "@/lib/serial/driver/parse-definition";
 import { findShippedDriver } from "@/lib/serial/drivers/shipped";
 import type { NativeKey, NativeValues } from "@/lib/serial/native";
 import { compiledDriver } from "@/lib/serial/plan/compiled-driver";
@@ -10,10 +14,21 @@ import type { PathMessage, Result } from "@/lib/result";
 
 export type DriverRef = { readonly slug: string; readonly version: string };
 
-/** The driver definition that a backup or plan names. Error: "no-driver" when this version is not here. */
-export function findDriver({ slug, version }: DriverRef): Result<DriverDefinition, "no-driver"> {
-  const found = findShippedDriver(slug);
-  return found?.version === version ? ok(found) : fail("no-driver");
+/**
+ * The driver definition that a backup or plan names: one that came with the program, or one that was published here.
+ * @param asker a maintainer's own drafts count too
+ * Error: "no-driver" when this version is not here, or does not compile.
+ */
+export async function findDriver(
+  db: Db,
+  ref: DriverRef,
+  asker: Asker = null,
+): Promise<Result<DriverDefinition, "no-driver">> {
+  const shipped = findShippedDriver(ref.slug);
+  if (shipped?.version === ref.version) return ok(shipped);
+  const stored = await readDefinition(db, asker, ref);
+  const parsed = stored.ok ? parseDefinition(stored.value.definition) : stored;
+  return parsed.ok ? ok(parsed.value.definition) : fail("no-driver");
 }
 
 /** The most complaints about one read. */

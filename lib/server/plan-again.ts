@@ -38,7 +38,7 @@ type Base = Omit<PlanInput, "target" | "leftOut">;
 export async function planAgain(db: Db, ownerId: string, asked: Asked): Promise<Result<PlanValues, PlanRefusal>> {
   const rested = await getBackup(db, { ownerId, id: asked.backupId });
   if (!rested.ok) return fail({ code: "absent" });
-  const driver = findDriver(rested.value.content.driver);
+  const driver = await findDriver(db, rested.value.content.driver);
   if (!driver.ok) return fail({ code: driver.error });
   const screen = await screenOf(db, ownerId, asked);
   if (!screen.ok) return screen;

@@ -6,3 +6,8 @@ export const journalOften = { requestsPerMinute: 3000 } as const;
 
 /** A profile document and what stands around it. */
 export const documentBytes = 1_100_000;
+
+/** A suite of conformance takes a processor for some seconds. */
+export const suitesSeldom = { requestsPerMinute: 12 } as const;
+/** A driver definition and what stands around it; the definition itself has 512 KiB at most. */
+export const definitionBytes = 600_000;

@@ -21,7 +21,7 @@ export const GET = withRoute(
 export const POST = withRoute(
   { role: "owner", summary: "Add a device.", body: newDevice, response: deviceView, status: 201, limit: writesOften },
   async ({ user, body }) => {
-    const driver = findDriver(body.driver);
+    const driver = await findDriver(db, body.driver);
     if (!driver.ok) return respond(driver, { "no-driver": 422 });
     return respond(await createDevice(db, user.id, body), { known: 409, "no-screen": 422 }, (made) => ({
       status: 201,

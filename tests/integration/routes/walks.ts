@@ -3,8 +3,10 @@ import type { BackupDetail } from "@/lib/contracts/backup";
 import type { DeviceView } from "@/lib/contracts/device";
 import type { PlanView } from "@/lib/contracts/plan";
 import type { ProfileDetail } from "@/lib/contracts/profile";
+import type { QuestionView, RecordingView } from "@/lib/contracts/recording";
 import type { RunView } from "@/lib/contracts/run";
 import type { ScreenView } from "@/lib/contracts/screen";
+import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
 import { standardRaster } from "@/lib/timing/standards";
 import { publishedEdids } from "@/tests/fixtures/standards/read";
 import { backupBody, cabinet, deviceBody } from "@/tests/integration/routes/bench";
@@ -21,6 +23,8 @@ export type Belongings = {
   readonly profile: ProfileDetail;
   readonly plan: PlanView;
   readonly run: RunView;
+  readonly recording: RecordingView;
+  readonly question: QuestionView;
   readonly session: string;
 };
 
@@ -32,12 +36,20 @@ export type Walk = {
   readonly given: (of: Belongings) => Call;
   readonly owner: number;
   readonly others: number;
+  /** What it comes to for maintainers and admins, where that is something else. */
+  readonly maintainers?: number;
   readonly nobody?: number;
 };
 
 /** A profile that the owner keeps private. */
 export const document = demoProfiles.find(({ key }) => key === "upright-240")?.revisions.at(-1)?.document;
 const publishedEdid = () => Uint8Array.from(publishedEdids()[0]?.[1] ?? []);
+/** A version that is published, so that no maintainer's act on it does anything. */
+const shipped = { slug: lanternfieldLf8.slug, version: lanternfieldLf8.version };
+/** Two lines of a recording, as a page saves them. */
+export const recordingFile = `${JSON.stringify({ format: "backporch-recording", version: 1, driver: shipped, startedAt: "2026-01-01T00:00:00.000Z", struckOut: false })}
+{"atMs":0,"direction":"out","hex":"2A 49 44 4E 3F 0A"}
+`;
 const id = (of: { readonly id: string }, more: Call = {}): Call => ({ params: { id: of.id }, ...more });
 
 /** In an order in which each finds what it needs: what deletes comes last. */
@@ -214,6 +226,111 @@ export const walks: Readonly<Record<string, Walk>> = {
   },
   "POST /api/runs/{id}/closing": {
     given: ({ run, spare }) => id(run, { body: { afterBackupId: spare.id } }),
+    owner: 200,
+    others: 404,
+  },
+  "GET /api/drivers": { given: () => ({}), owner: 200, others: 200, nobody: 200 },
+  "POST /api/drivers/import": { given: () => ({ body: lanternfieldLf8 }), owner: 403, others: 403, maintainers: 409 },
+  "GET /api/drivers/{slug}/versions": { given: () => ({ params: shipped }), owner: 200, others: 200, nobody: 200 },
+  "POST /api/drivers/{slug}/versions": {
+    given: () => ({ params: shipped, body: { definition: lanternfieldLf8 } }),
+    owner: 403,
+    others: 403,
+    maintainers: 409,
+  },
+  "GET /api/drivers/{slug}/versions/{version}": {
+    given: () => ({ params: shipped }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "PUT /api/drivers/{slug}/versions/{version}": {
+    given: () => ({ params: shipped, body: { definition: lanternfieldLf8 }, headers: { "if-match": '"1"' } }),
+    owner: 403,
+    others: 403,
+    maintainers: 409,
+  },
+  "DELETE /api/drivers/{slug}/versions/{version}": {
+    given: () => ({ params: shipped, headers: { "if-match": '"1"' } }),
+    owner: 403,
+    others: 403,
+    maintainers: 409,
+  },
+  "POST /api/drivers/{slug}/versions/{version}/publication": {
+    given: () => ({ params: shipped, headers: { "if-match": '"1"' } }),
+    owner: 403,
+    others: 403,
+    maintainers: 409,
+  },
+  "POST /api/drivers/{slug}/versions/{version}/withdrawal": {
+    given: () => ({ params: shipped, body: { reason: "Walked" }, headers: { "if-match": '"99"' } }),
+    owner: 403,
+    others: 403,
+    maintainers: 412,
+  },
+  "GET /api/drivers/{slug}/versions/{version}/export": {
+    given: () => ({ params: shipped }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "GET /api/drivers/{slug}/versions/{version}/comparison": {
+    given: () => ({ params: shipped, path: `/x?with=${shipped.version}` }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "GET /api/conformance": {
+    given: () => ({ path: `/x?slug=${shipped.slug}&version=${shipped.version}` }),
+    owner: 200,
+    others: 200,
+    nobody: 200,
+  },
+  "POST /api/conformance": {
+    given: () => ({ body: { slug: shipped.slug, version: "9.9.9" } }),
+    owner: 403,
+    others: 403,
+    maintainers: 404,
+  },
+  "GET /api/conformance/{id}": { given: ({ run }) => id(run), owner: 404, others: 404, nobody: 404 },
+  "GET /api/driver-notices": { given: () => ({}), owner: 200, others: 200 },
+  "GET /api/drivers/{slug}/questions": { given: () => ({ params: shipped }), owner: 200, others: 200 },
+  "POST /api/drivers/{slug}/questions": {
+    given: ({ recording }) => ({ params: shipped, body: { text: "Walked", recordingId: recording.id } }),
+    owner: 201,
+    others: 422,
+  },
+  "PUT /api/driver-questions/{id}/answer": {
+    given: ({ question }) => id(question, { body: { text: "Walked" } }),
+    owner: 403,
+    others: 403,
+    maintainers: 200,
+  },
+  "GET /api/recordings": { given: () => ({}), owner: 200, others: 200 },
+  "POST /api/recordings": {
+    given: ({ device }) => ({
+      path: `/x?name=Walked&deviceId=${device.id}`,
+      text: recordingFile,
+      headers: { "content-type": "application/x-ndjson" },
+    }),
+    owner: 201,
+    others: 422,
+  },
+  "GET /api/recordings/{id}": { given: ({ recording }) => id(recording), owner: 200, others: 404 },
+  "GET /api/recordings/{id}/file": { given: ({ recording }) => id(recording), owner: 200, others: 404 },
+  "DELETE /api/recordings/{id}": { given: ({ recording }) => id(recording), owner: 204, others: 404 },
+  "GET /api/devices/{id}/driver": {
+    given: ({ device }) => id(device, { path: `/x?to=${shipped.version}` }),
+    owner: 200,
+    others: 404,
+  },
+  "PUT /api/devices/{id}/driver": {
+    given: ({ device }) => id(device, { body: { version: shipped.version } }),
+    owner: 200,
+    others: 404,
+  },
+  "PUT /api/devices/{id}/driver-notice": {
+    given: ({ device }) => id(device, { body: { version: shipped.version } }),
     owner: 200,
     others: 404,
   },

@@ -5,12 +5,13 @@ import { routeModules } from "@/app/api/openapi.json/routes";
 import { db } from "@/db/client";
 import type { PlanView } from "@/lib/contracts/plan";
 import type { ProfileDetail } from "@/lib/contracts/profile";
+import type { QuestionView, RecordingView } from "@/lib/contracts/recording";
 import type { RunView } from "@/lib/contracts/run";
 import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
 import { planChanges } from "@/lib/serial/plan/plan-changes";
 import { addBackup, addDevice, addScreen, taken } from "@/tests/integration/routes/bench";
 import { bodyOf, call } from "@/tests/integration/routes/http";
-import { document, walks } from "@/tests/integration/routes/walks";
+import { document, recordingFile, walks } from "@/tests/integration/routes/walks";
 import type { Belongings, Walk } from "@/tests/integration/routes/walks";
 import { person } from "@/tests/integration/routes/people";
 import type { Person } from "@/tests/integration/routes/people";
@@ -45,6 +46,7 @@ async function snapshot(): Promise<string> {
       (select string_agg(t::text, ' ' order by r.id) from revision r join profile t on t.id = r.profile_id where owner_id = ${its.owner.id}),
       (select string_agg(t::text, ' ' order by id) from plan t where owner_id = ${its.owner.id}),
       (select string_agg(t::text, ' ' order by id) from run t where owner_id = ${its.owner.id}),
+      (select string_agg(t::text, ' ' order by id) from recording t where owner_id = ${its.owner.id}),
       (select string_agg(session_token, ' ' order by id) from session where user_id = ${its.owner.id}),
       (select name from "user" where id = ${its.owner.id})) as everything`);
   return rows[0]?.everything ?? "";
@@ -91,9 +93,36 @@ async function belongings(): Promise<Belongings> {
     { planId: plan.id, holder: "walking-tab" },
     { "if-match": `"${plan.hash}"` },
   );
+  const uploaded = await call(handlerOf("POST /api/recordings"), {
+    method: "POST",
+    cookie: owner.cookie,
+    path: "/x?name=Mine",
+    text: recordingFile,
+    headers: { "content-type": "application/x-ndjson" },
+  });
+  const recording = await bodyOf<RecordingView>(uploaded);
+  const asked = await call(handlerOf("POST /api/drivers/{slug}/questions"), {
+    method: "POST",
+    cookie: owner.cookie,
+    params: { slug: lanternfieldLf8.slug },
+    body: { text: "Does it?" },
+  });
+  const question = await bodyOf<QuestionView>(asked);
   const second = await db.execute<{ id: string }>(sql`
     insert into session (session_token, user_id, expires) values ('a second browser', ${owner.id}, now() + interval '1 day') returning id`);
-  return { owner, screen, device, backup, spare, profile, plan, run, session: second.rows[0]?.id ?? "" };
+  return {
+    owner,
+    screen,
+    device,
+    backup,
+    spare,
+    profile,
+    plan,
+    run,
+    recording,
+    question,
+    session: second.rows[0]?.id ?? "",
+  };
 }
 
 beforeAll(async () => {
@@ -141,9 +170,18 @@ describe("every route", () => {
       const before = await snapshot();
       for (const [name, walk] of Object.entries(walks)) {
         const answer = await ask(name, walk, cookie);
-        expect([name, answer.status]).toEqual([name, walk.others]);
+        const wanted = who === "another owner" ? walk.others : (walk.maintainers ?? walk.others);
+        expect([name, answer.status]).toEqual([name, wanted]);
         const text = await answer.text();
-        for (const { id: theirs } of [its.screen, its.device, its.backup, its.profile, its.plan, its.run]) {
+        for (const { id: theirs } of [
+          its.screen,
+          its.device,
+          its.backup,
+          its.profile,
+          its.plan,
+          its.run,
+          its.recording,
+        ]) {
           expect(text.includes(theirs), `${name} shows ${theirs}`).toBe(false);
         }
       }
@@ -191,6 +229,11 @@ describe("every route", () => {
         "run.create",
         "run.called-off",
         "run.close",
+        "recording.create",
+        "recording.delete",
+        "driver-question.ask",
+        "device.driver-move",
+        "device.driver-acknowledge",
       ]),
     );
     await expect(

@@ -39,7 +39,7 @@ export const POST = withRoute(
     limit: { ...writesOften, bodyBytes: 4_000_000 },
   },
   async ({ user, params, body }) => {
-    const driver = findDriver(body.content.driver);
+    const driver = await findDriver(db, body.content.driver);
     if (!driver.ok) return respond(driver, { "no-driver": 422 });
     const content = contentFromRead(driver.value, { ...body.content, firmware: body.firmware });
     if (!content.ok) return problem(422, { code: "not-this-driver", errors: content.error });
