@@ -1,6 +1,6 @@
 "use client";
 
-import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
+import { queryOptions, useInfiniteQuery, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { callApi } from "@/components/ui/api";
 import { backupComparison, backupDetail, backupPage, backupView } from "@/lib/contracts/backup";
 import type { BackupView } from "@/lib/contracts/backup";
@@ -13,9 +13,10 @@ const backupsKey = ["backups"] as const;
 const MOST_DEVICES = 100;
 const PAGE = 50;
 
-export function useDevices() {
+export function useDevices(enabled = true) {
   return useQuery({
     queryKey: devicesKey,
+    enabled,
     queryFn: async ({ signal }) =>
       (await callApi(`/api/devices?limit=${MOST_DEVICES}`, { shape: devicePage, signal })).items,
   });
@@ -36,13 +37,18 @@ export function useBackups(deviceId: string | null) {
   });
 }
 
-/** A backup with all that it holds. Its content never changes; its name and pin may. */
-export function useBackup(id: string | null) {
-  return useQuery({
+/** What asks for one backup; nothing is asked for without an id. */
+export function backupQuery(id: string | null) {
+  return queryOptions({
     queryKey: [...backupsKey, id],
     enabled: id !== null,
     queryFn: ({ signal }) => callApi(`/api/backups/${id}`, { shape: backupDetail, signal }),
   });
+}
+
+/** A backup with all that it holds. Its content never changes; its name and pin may. */
+export function useBackup(id: string | null) {
+  return useQuery(backupQuery(id));
 }
 
 /** What changed from one backup to another; nothing is asked for while one is missing or both are the same. */

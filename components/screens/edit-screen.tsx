@@ -1,7 +1,10 @@
 "use client";
 
 import { useRouter } from "next/navigation";
+import { useMemo } from "react";
+import { edidOfAddress } from "@/components/screens/edid-file";
 import { ScreenFormView } from "@/components/screens/screen-form-view";
+import { sendable } from "@/components/screens/sendable";
 import { useAddScreen, useChangeScreen, useScreen } from "@/components/screens/use-screens";
 import { Button } from "@/components/ui/button";
 import { ProblemMessage } from "@/components/ui/problem-message";
@@ -10,28 +13,18 @@ import type { ScreenEnvelope } from "@/lib/timing/envelope";
 
 const blank: ScreenEnvelope = { name: "", bands: [{ lineRateHz: [15_577, 15_892], fieldRateHz: [58.44, 61.44] }] };
 
-/** The contract's envelope is the same with lists that can be written to. */
-function sendable(envelope: ScreenEnvelope) {
-  const { sources, ...limits } = envelope;
-  return {
-    ...limits,
-    bands: limits.bands.map(({ lineRateHz, fieldRateHz }) => ({
-      lineRateHz: [lineRateHz[0], lineRateHz[1]] as [number, number],
-      fieldRateHz: [fieldRateHz[0], fieldRateHz[1]] as [number, number],
-    })),
-    syncKinds: limits.syncKinds === undefined ? undefined : [...limits.syncKinds],
-    syncVpp: limits.syncVpp === undefined ? undefined : ([limits.syncVpp[0], limits.syncVpp[1]] as [number, number]),
-    sources: Object.fromEntries(
-      Object.entries(sources ?? {}).flatMap(([limit, source]) => (source === undefined ? [] : [[limit, source]])),
-    ),
-  };
-}
+export type NewScreenViewProps = {
+  readonly presetId: string | null;
+  /** An EDID to start from, as the address carries it. */
+  readonly edid: string | null;
+};
 
-/** A screen by hand, or from an envelope. */
-export function NewScreenView({ presetId }: { readonly presetId: string | null }) {
+/** A screen by hand, from an envelope, or from an EDID. */
+export function NewScreenView({ presetId, edid }: NewScreenViewProps) {
   const router = useRouter();
   const add = useAddScreen();
   const preset = screenPresets.find((each) => each.id === presetId);
+  const read = useMemo(() => (edid === null ? null : edidOfAddress(edid)), [edid]);
   return (
     <ScreenFormView
       title="Add a screen"
@@ -42,6 +35,7 @@ export function NewScreenView({ presetId }: { readonly presetId: string | null }
       }
       envelope={preset?.envelope ?? blank}
       notes=""
+      edid={read?.ok === true ? read.value : null}
       act="Add screen"
       isBusy={add.isPending}
       error={add.error}

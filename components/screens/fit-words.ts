@@ -44,3 +44,13 @@ export function fitOf(timing: RasterTiming, envelope: ScreenEnvelope): Fit {
   const outside = judgeEnvelope(timing, envelope).filter((verdict) => verdict.outcome === "outside");
   return { fits: outside.length === 0, words: outside.map(verdictWords).join("; ") };
 }
+
+/** What keeps a screen from taking a raster, in a word or two: "line rate above". Empty where it fits. */
+export function misfitInShort(timing: RasterTiming, envelope: ScreenEnvelope): string {
+  const outside = judgeEnvelope(timing, envelope).find((verdict) => verdict.outcome === "outside");
+  if (outside === undefined) return envelope.bands.length === 0 ? "bands not known" : "";
+  if (outside.rule === "interlace") return "interlaced";
+  const isAbove = outside.max !== undefined && outside.measured > outside.max;
+  const side = outside.unit === "µs" ? "too short" : isAbove ? "above" : "below";
+  return `${ruleWords[outside.rule]} ${side}`;
+}

@@ -2,19 +2,27 @@
 
 import { Plus, X } from "lucide-react";
 import { useRouter } from "next/navigation";
+import { useState } from "react";
 import { useFieldArray, useForm, useWatch } from "react-hook-form";
-import type { Control, FieldPath } from "react-hook-form";
+import type { Control, FieldPath, UseFormReturn } from "react-hook-form";
+import { EdidDrop } from "@/components/screens/edid-drop";
+import { productWords } from "@/components/screens/edid-file";
+import type { EdidView } from "@/components/screens/edid-file";
+import { EdidPanel } from "@/components/screens/edid-panel";
+import { fillFromEdid } from "@/components/screens/fill-from-edid";
 import { FigureField, SourceSelect } from "@/components/screens/limit-field";
 import { LimitFields } from "@/components/screens/limit-fields";
 import type { Wired } from "@/components/screens/limit-fields";
-import { ScreenPlane, StandardFits } from "@/components/screens/screen-detail";
+import { StandardFits } from "@/components/screens/mode-fits";
 import { emptyBand, envelopeFromForm, formFromEnvelope } from "@/components/screens/screen-form";
 import type { ScreenForm } from "@/components/screens/screen-form";
+import { ScreenPlane } from "@/components/screens/screen-plane";
 import { Button, IconButton } from "@/components/ui/button";
 import { TextAreaField, TextField } from "@/components/ui/field";
 import { FootBar } from "@/components/ui/foot-bar";
 import { PageHead } from "@/components/ui/page-head";
 import { ProblemMessage } from "@/components/ui/problem-message";
+import { useToast } from "@/components/ui/toast";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { MAX_BANDS } from "@/lib/timing/envelope-problems";
 
@@ -23,6 +31,8 @@ export type ScreenFormViewProps = {
   readonly lead: string;
   readonly envelope: ScreenEnvelope;
   readonly notes: string;
+  /** The EDID that the form starts from. */
+  readonly edid?: EdidView | null;
   readonly act: string;
   readonly isBusy: boolean;
   readonly error: Error | null;
@@ -30,9 +40,16 @@ export type ScreenFormViewProps = {
 };
 
 /** Every limit of a screen with its source; the plane beside it follows what is typed. */
-export function ScreenFormView({ title, lead, envelope, notes, act, isBusy, error, onSave }: ScreenFormViewProps) {
+export function ScreenFormView(props: ScreenFormViewProps) {
+  const { title, lead, envelope, notes, act, isBusy, error, onSave } = props;
   const router = useRouter();
-  const form = useForm<ScreenForm>({ defaultValues: formFromEnvelope(envelope, notes) });
+  const [edid, setEdid] = useState(props.edid ?? null);
+  const form = useForm<ScreenForm>({
+    defaultValues:
+      edid === null
+        ? formFromEnvelope(envelope, notes)
+        : fillFromEdid(formFromEnvelope({ name: "", bands: [] }, notes), edid),
+  });
   const { register, control, getFieldState, formState } = form;
   const errorOf = (name: string) => getFieldState(name as FieldPath<ScreenForm>, formState).error?.message;
   const save = (values: ScreenForm) => {
@@ -51,6 +68,7 @@ export function ScreenFormView({ title, lead, envelope, notes, act, isBusy, erro
       </div>
       <div className="gutter grid flex-1 grid-cols-1 gap-x-10 gap-y-8 border-t border-line pb-8 pt-5 lg:grid-cols-[minmax(0,1fr)_minmax(320px,460px)]">
         <div className="min-w-0">
+          <EdidPart form={form} edid={edid} onEdid={setEdid} />
           <TextField
             label="Name"
             placeholder="Gallery 2, wide CRT"
@@ -91,6 +109,37 @@ export function ScreenFormView({ title, lead, envelope, notes, act, isBusy, erro
   );
 }
 
+type EdidPartProps = {
+  readonly form: UseFormReturn<ScreenForm>;
+  readonly edid: EdidView | null;
+  readonly onEdid: (edid: EdidView | null) => void;
+};
+
+/** An EDID fills in what it states. What was typed before can be had back. */
+function EdidPart({ form, edid, onEdid }: EdidPartProps) {
+  const toast = useToast();
+  const fill = (next: EdidView) => {
+    const typed = form.getValues();
+    form.reset(fillFromEdid(typed, next), { keepDefaultValues: true });
+    onEdid(next);
+    toast({
+      text: `Filled in from the EDID of ${productWords(next.reading)}.`,
+      undo: {
+        onUndo: () => {
+          form.reset(typed, { keepDefaultValues: true });
+          onEdid(edid);
+        },
+      },
+    });
+  };
+  return (
+    <>
+      <EdidDrop onEdid={fill} className="mb-5" />
+      {edid === null ? null : <EdidPanel edid={edid} />}
+    </>
+  );
+}
+
 function LivePreview({
   control,
   fallback,
@@ -104,7 +153,7 @@ function LivePreview({
   return (
     <aside aria-label="What this screen takes" className="min-w-0 lg:sticky lg:top-4 lg:self-start">
       <ScreenPlane envelope={shown} heightPx={260} />
-      <h2 className="mb-2 mt-4 text-lg">Standard modes on it</h2>
+      <h2 className="mb-2 mt-4 text-lg">Published modes on it</h2>
       <StandardFits envelope={shown} />
     </aside>
   );

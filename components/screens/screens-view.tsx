@@ -3,8 +3,11 @@
 import Link from "next/link";
 import { useRouter } from "next/navigation";
 import { useState } from "react";
+import { EdidDetail } from "@/components/screens/edid-detail";
+import { EdidDrop } from "@/components/screens/edid-drop";
 import { ScreenDetail } from "@/components/screens/screen-detail";
 import { bandsInShort } from "@/components/screens/limit-words";
+import { useDeviceModes } from "@/components/screens/use-device-modes";
 import { useDeleteScreen, useScreens } from "@/components/screens/use-screens";
 import { DemoNoteFor } from "@/components/shell/demo-people";
 import { signInPath } from "@/components/shell/navigation";
@@ -20,26 +23,40 @@ import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { screenPresets } from "@/lib/timing/screen-presets";
 import type { ScreenPreset } from "@/lib/timing/screen-presets";
 
+export type ScreensViewProps = {
+  /** Id of a screen or of a standard envelope. */
+  readonly shown: string | null;
+  /** An EDID that was dropped here, as the address carries it. */
+  readonly edid: string | null;
+};
+
 /** Screens of the owner and standard envelopes in a list, the chosen one whole beside it. */
-export function ScreensView({ shown }: { readonly shown: string | null }) {
+export function ScreensView({ shown, edid }: ScreensViewProps) {
   const user = useSignedIn();
+  const router = useRouter();
   const screens = useScreens();
   const mine = screens.data ?? [];
   const isWaiting = user !== null && screens.isPending;
-  const chosen = mine.find((screen) => screen.id === shown);
+  const chosen = edid === null ? mine.find((screen) => screen.id === shown) : undefined;
   const preset =
-    screenPresets.find((each) => each.id === shown) ??
-    (shown === null && mine.length === 0 && !isWaiting ? screenPresets[0] : undefined);
-  const first = chosen ?? (preset === undefined ? mine[0] : undefined);
+    edid !== null
+      ? undefined
+      : (screenPresets.find((each) => each.id === shown) ??
+        (shown === null && mine.length === 0 && !isWaiting ? screenPresets[0] : undefined));
+  const first = chosen ?? (preset === undefined && edid === null ? mine[0] : undefined);
   return (
     <div className="gutter flex flex-1 flex-col">
       <PageHead
         title="Screens"
         lead="What each CRT takes, and where that figure comes from. Every check before a write is made against one of these."
         acts={
-          <ButtonLink kind="primary" href={user === null ? signInPath("/screens/new") : "/screens/new"}>
-            Add a screen
-          </ButtonLink>
+          <>
+            <ButtonLink href="/standards">Standards</ButtonLink>
+            <ButtonLink href="/attenuator">Attenuator</ButtonLink>
+            <ButtonLink kind="primary" href={user === null ? signInPath("/screens/new") : "/screens/new"}>
+              Add a screen
+            </ButtonLink>
+          </>
         }
       />
       <div className="-mx-4 grid flex-1 grid-cols-1 border-t border-line md:-mx-7 lg:grid-cols-[340px_minmax(0,1fr)]">
@@ -51,6 +68,10 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
               act={<Button onClick={() => void screens.refetch()}>Try again</Button>}
             />
           )}
+          <EdidDrop
+            className="mt-5"
+            onEdid={({ address }) => router.push(`/screens?edid=${address}`, { scroll: false })}
+          />
           <h2 className="mb-1 mt-6 text-lg">Standard envelopes</h2>
           <p className="mb-2 text-sm text-muted">To start from. The set’s service literature decides.</p>
           <ul>
@@ -65,7 +86,9 @@ export function ScreensView({ shown }: { readonly shown: string | null }) {
           </p>
         </div>
         <div className="min-w-0 px-4 pb-10 pt-5 md:px-7">
-          {first !== undefined ? (
+          {edid !== null ? (
+            <EdidDetail key={edid} address={edid} />
+          ) : first !== undefined ? (
             <OwnScreenDetail key={first.id} screen={first} />
           ) : preset !== undefined ? (
             <PresetDetail preset={preset} />
@@ -153,6 +176,7 @@ function PresetDetail({ preset }: { readonly preset: ScreenPreset }) {
   return (
     <ScreenDetail
       envelope={preset.envelope}
+      id={preset.id}
       above="Standard envelope"
       notes={notes}
       acts={<ButtonLink href={user === null ? signInPath(target) : target}>Start from this</ButtonLink>}
@@ -165,6 +189,7 @@ function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
   const router = useRouter();
   const toast = useToast();
   const remove = useDeleteScreen();
+  const devices = useDeviceModes(screen.devices);
   // This part leaves with the screen, and callbacks of `mutate` with it; a promise stays. A refusal shows below.
   const onDelete = () =>
     void remove.mutateAsync(screen).then(
@@ -177,6 +202,8 @@ function OwnScreenDetail({ screen }: { readonly screen: ScreenView }) {
   return (
     <ScreenDetail
       envelope={screen.envelope}
+      id={screen.id}
+      devices={devices}
       above={
         screen.devices.length === 0
           ? "No device stands before it"

@@ -15,6 +15,12 @@ export function SiteFooter() {
         <Link href="/screens" className="hover:text-text">
           Screens
         </Link>
+        <Link href="/standards" className="hover:text-text">
+          Standards
+        </Link>
+        <Link href="/attenuator" className="hover:text-text">
+          Attenuator
+        </Link>
         <a href="/api/openapi.json" className="hover:text-text">
           HTTP interface
         </a>

@@ -6,8 +6,8 @@ export const metadata: Metadata = { title: "Screens" };
 export default async function ScreensPage({
   searchParams,
 }: {
-  readonly searchParams: Promise<{ show?: string | string[] }>;
+  readonly searchParams: Promise<{ show?: string | string[]; edid?: string | string[] }>;
 }) {
-  const { show } = await searchParams;
-  return <ScreensView shown={typeof show === "string" ? show : null} />;
+  const { show, edid } = await searchParams;
+  return <ScreensView shown={typeof show === "string" ? show : null} edid={typeof edid === "string" ? edid : null} />;
 }

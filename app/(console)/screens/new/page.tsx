@@ -6,14 +6,13 @@ import { getSessionUser } from "@/lib/server/session";
 
 export const metadata: Metadata = { title: "Add a screen" };
 
-export default async function NewScreenPage({
-  searchParams,
-}: {
-  readonly searchParams: Promise<{ from?: string | string[] }>;
-}) {
-  const { from } = await searchParams;
-  const presetId = typeof from === "string" ? from : null;
-  if ((await getSessionUser()) === null)
-    redirect(signInPath(presetId === null ? "/screens/new" : `/screens/new?from=${encodeURIComponent(presetId)}`));
-  return <NewScreenView presetId={presetId} />;
+type Search = Promise<{ from?: string | string[]; edid?: string | string[] }>;
+
+export default async function NewScreenPage({ searchParams }: { readonly searchParams: Search }) {
+  const { from, edid } = await searchParams;
+  const start = new URLSearchParams();
+  if (typeof from === "string") start.set("from", from);
+  if (typeof edid === "string") start.set("edid", edid);
+  if ((await getSessionUser()) === null) redirect(signInPath(`/screens/new${start.size === 0 ? "" : `?${start}`}`));
+  return <NewScreenView presetId={start.get("from")} edid={start.get("edid")} />;
 }
