@@ -4,7 +4,7 @@
  * `find` stands once in `file` and is replaced by `replace`. A break that no test notices is a hole in the tests, not in the code.
  */
 const UNIT = "tests/unit/serial";
-const session = [`${UNIT}/session/session.test.ts`];
+const session = [`${UNIT}/session/session.test.ts`, `${UNIT}/session/drain.test.ts`];
 const runs = [`${UNIT}/run/run.test.ts`, `${UNIT}/run/run-proof.test.ts`, `${UNIT}/run/run-loss.test.ts`];
 const sweepShort = ["tests/faults/session/fault-sweep.test.ts"];
 const sweepRun = ["tests/faults/run/requests-lf8.test.ts"];

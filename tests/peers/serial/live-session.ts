@@ -1,3 +1,4 @@
+import type { Clock } from "@/lib/serial/clock";
 import { createRealClock } from "@/lib/serial/clock/real-clock";
 import { compileDriver } from "@/lib/serial/driver/compile";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
@@ -20,8 +21,8 @@ export async function withSession<T>(
   driver: CompiledDriver,
   connect: (options: SerialOpenOptions) => Promise<ByteDuplex>,
   body: (opened: OpenedSession, adapter: DuplexPort) => Promise<T>,
+  clock: Clock = createRealClock(),
 ): Promise<T> {
-  const clock = createRealClock();
   const adapter = new DuplexPort({ clock, connect });
   const opened = await openSession({ port: adapter.port, driver, clock, wireLog: createWireLog({ clock }) });
   if (!opened.ok) throw new Error(JSON.stringify(opened.error));

@@ -1,6 +1,9 @@
 /*
  * Reads stretches of holding registers of a Modbus RTU device through libmodbus, as often as asked, and prints each pass's time in ms.
  *
+ * libmodbus leaves the silence before each request to its caller: 3.5 characters, 1.75 ms above 19 200 baud
+ * (MODBUS over Serial Line V1.02, 2.5.1.1). A request without it is no request to a device that keeps to the rule.
+ *
  * Usage: read-spans DEVICE BAUD UNIT PASSES FIRST COUNT [FIRST COUNT]...
  * After the times: a line of the registers of the last pass, in hexadecimal, in order.
  */
@@ -10,7 +13,13 @@
 #include <stdlib.h>
 #include <time.h>
 
-enum { MOST_SPANS = 64 };
+enum { MOST_SPANS = 64, SILENCE_NS = 1750000 };
+
+static void keep_silence(void)
+{
+  struct timespec silence = { 0, SILENCE_NS };
+  nanosleep(&silence, NULL);
+}
 
 static double now_ms(void)
 {
@@ -33,6 +42,7 @@ int main(int count, char **args)
     double start = now_ms();
     for (int i = 0; i < spans; i++) {
       int first = atoi(args[5 + 2 * i]), words = atoi(args[6 + 2 * i]);
+      if (i > 0) keep_silence();
       if (modbus_read_registers(client, first, words, found[i]) != words) {
         fprintf(stderr, "%d registers from %d: %s\n", words, first, modbus_strerror(errno));
         return 1;

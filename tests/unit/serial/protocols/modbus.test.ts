@@ -73,6 +73,8 @@ describe("Modbus RTU", () => {
     expect(read?.match(frame(17, 0x83, 2))).toEqual({ kind: "refused", message: "illegal data address" });
     expect(read?.match(frame(17, 0x83, 6))).toEqual({ kind: "busy" });
     expect(read?.match(frame(18, 3, 2, 0, 5))).toEqual({ kind: "other" });
+    // The exception of another function answers another request.
+    expect(read?.match(frame(17, 0x90, 2))).toEqual({ kind: "other" });
     expect(read?.match(frame(17, 3, 4, 0, 5, 0, 5))).toEqual({ kind: "other" });
     expect(read?.match(frame(17, 3, 2, 0xff, 0xfe))).toMatchObject({ kind: "reply", values: { "slots[1].placement.offsetPx": -2 } });
   });
