@@ -134,18 +134,36 @@ export async function latestPublished(db: Db, slug: string): Promise<{ version: 
   return row ?? null;
 }
 
+/** As JSON of the database, whose times have other digits than ours. A published version compiles, so it has these fields. */
+type LatestRow = NonNullable<DriverSummary["latest"]>;
+
+const isoTime = (text: string) => new Date(text).toISOString();
+
+function latestOf({ publishedAt, report, ...row }: LatestRow): LatestRow {
+  return {
+    ...row,
+    publishedAt: isoTime(publishedAt),
+    report: report && { green: report.green, createdAt: isoTime(report.createdAt) },
+  };
+}
+
+/** With its table's name: a query of one table names columns alone, and in a subquery that is another table's column. */
+const outerSlug = sql`${driver}.slug`;
+
 const summaryColumns = {
   slug: driver.slug,
   maker: driver.maker,
   model: driver.model,
-  latest: sql<string | null>`(
-    select v.version from ${driverVersion} v where v.slug = ${driver.slug} and v.state = 'published' order by v.version_order desc limit 1)`,
-  // As text: the driver of the database parses times only in columns that the query builder knows.
-  latestAt: sql<string | null>`(
-    select v.published_at::text from ${driverVersion} v where v.slug = ${driver.slug} and v.state = 'published' order by v.version_order desc limit 1)`,
-  versions: sql<number>`(select count(*)::int from ${driverVersion} v where v.slug = ${driver.slug} and v.state in ('published', 'withdrawn'))`,
-  unpublished: sql<number>`(select count(*)::int from ${driverVersion} v where v.slug = ${driver.slug} and v.state in ('draft', 'conformance'))`,
-  openQuestions: sql<number>`(select count(*)::int from ${driverQuestion} q where q.driver_slug = ${driver.slug} and q.answer is null)`,
+  latest: sql<LatestRow | null>`(
+    select json_build_object('version', v.version, 'publishedAt', v.published_at,
+      'protocol', v.definition->'protocol'->>'kind',
+      'firmware', json_build_object('min', v.definition->'firmware'->>'min', 'max', v.definition->'firmware'->>'max'),
+      'report', (select json_build_object('green', r.green, 'createdAt', r.created_at) from ${conformanceReport} r
+        where r.version_id = v.id and r.driver_hash = v.hash order by r.created_at desc, r.id desc limit 1))
+    from ${driverVersion} v where v.slug = ${outerSlug} and v.state = 'published' order by v.version_order desc limit 1)`,
+  versions: sql<number>`(select count(*)::int from ${driverVersion} v where v.slug = ${outerSlug} and v.state in ('published', 'withdrawn'))`,
+  unpublished: sql<number>`(select count(*)::int from ${driverVersion} v where v.slug = ${outerSlug} and v.state in ('draft', 'conformance'))`,
+  openQuestions: sql<number>`(select count(*)::int from ${driverQuestion} q where q.driver_slug = ${outerSlug} and q.answer is null)`,
 };
 
 /** Every driver that the asker may see, by maker and model. Error: "bad-cursor". */
@@ -163,7 +181,7 @@ export async function listDrivers(
       and(
         isMaintainer(asker)
           ? undefined
-          : sql`exists (select from ${driverVersion} v where v.slug = ${driver.slug} and v.state in ('published', 'withdrawn'))`,
+          : sql`exists (select from ${driverVersion} v where v.slug = ${outerSlug} and v.state in ('published', 'withdrawn'))`,
         from.value === null
           ? undefined
           : sql`(${driver.maker}, ${driver.model}, ${driver.slug}) > (${from.value[0]}, ${from.value[1]}, ${from.value[2]})`,
@@ -174,10 +192,9 @@ export async function listDrivers(
   const shown = rows.slice(0, limit);
   const last = shown.at(-1);
   const more = rows.length > limit && last !== undefined;
-  const items = shown.map(({ latest, latestAt, ...row }): DriverSummary => ({
+  const items = shown.map(({ latest, ...row }): DriverSummary => ({
     ...row,
-    latest:
-      latest === null || latestAt === null ? null : { version: latest, publishedAt: new Date(latestAt).toISOString() },
+    latest: latest && latestOf(latest),
     unpublished: isMaintainer(asker) ? row.unpublished : 0,
     openQuestions: isMaintainer(asker) ? row.openQuestions : 0,
   }));

@@ -68,7 +68,16 @@ export const driverSummary = z.object({
   maker: z.string(),
   model: z.string(),
   /** Highest published version. Null: all were withdrawn, or none was published. */
-  latest: z.object({ version: z.string(), publishedAt: timeSchema }).nullable(),
+  latest: z
+    .object({
+      version: z.string(),
+      publishedAt: timeSchema,
+      protocol: z.string(),
+      firmware: z.object({ min: z.string(), max: z.string() }),
+      /** The latest report of it. */
+      report: z.object({ green: z.boolean(), createdAt: timeSchema }).nullable(),
+    })
+    .nullable(),
   versions: z.number().int(),
   /** Drafts and candidates; maintainers alone see more than 0. */
   unpublished: z.number().int(),
