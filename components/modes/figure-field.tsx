@@ -1,7 +1,7 @@
 "use client";
 
-import { useId, useState } from "react";
-import type { KeyboardEvent } from "react";
+import { useId, useRef, useState } from "react";
+import type { KeyboardEvent, PointerEvent } from "react";
 import { classNames } from "@/components/ui/class-names";
 import { parseFigure } from "@/components/ui/figures";
 import { useModes, useModesActs } from "@/components/modes/modes-context";
@@ -26,6 +26,7 @@ export function FigureField({ figure, value, disabled = false, isCell = false, d
   const error = useModes((state) => state.errors[figure]);
   const [draft, setDraft] = useState<string | null>(null);
   const errorId = useId();
+  const scrubFrom = useRef(value);
   const { label, unit, scale, step } = figureWords[figure];
   const isNoFigure = draft !== null && parseFigure(draft) === null;
   const complaint = isNoFigure && draft !== "" ? "This is no figure." : error;
@@ -76,10 +77,16 @@ export function FigureField({ figure, value, disabled = false, isCell = false, d
             isCell ? "text-[14px]" : "text-[17px]",
           )}
         />
-        {isCell ? null : (
-          <span aria-hidden className="figure text-muted">
-            {unit}
-          </span>
+        {isCell || disabled ? null : (
+          <ScrubUnit
+            unit={unit}
+            onScrub={(by) => turn(figure, roundHz(scrubFrom.current + by * step * scale))}
+            onHold={() => {
+              scrubFrom.current = value;
+              hold(figure);
+            }}
+            onLetGo={letGo}
+          />
         )}
       </span>
       {complaint === undefined ? null : (
@@ -94,4 +101,50 @@ export function FigureField({ figure, value, disabled = false, isCell = false, d
 /** What was typed in MHz or kHz is a whole number of µHz: binary fractions of it are noise. */
 function roundHz(value: number): number {
   return Math.round(value * 1e6) / 1e6;
+}
+
+/** So many px of dragging are one step. */
+const PX_A_STEP = 5;
+
+type ScrubProps = {
+  readonly unit: string;
+  readonly onHold: () => void;
+  readonly onLetGo: () => void;
+  /** Steps from where the unit was taken hold of. */
+  readonly onScrub: (steps: number) => void;
+};
+
+/** The unit of a figure, dragged sideways to change it; the field's arrow keys do the same. */
+function ScrubUnit({ unit, onHold, onLetGo, onScrub }: ScrubProps) {
+  const drag = useRef<{ readonly fromPx: number; steps: number } | null>(null);
+  const end = () => {
+    if (drag.current !== null) onLetGo();
+    drag.current = null;
+  };
+  const onPointerDown = (event: PointerEvent<HTMLSpanElement>) => {
+    event.preventDefault();
+    event.currentTarget.setPointerCapture(event.pointerId);
+    drag.current = { fromPx: event.clientX, steps: 0 };
+    onHold();
+  };
+  const onPointerMove = (event: PointerEvent<HTMLSpanElement>) => {
+    if (drag.current === null) return;
+    const steps = Math.round((event.clientX - drag.current.fromPx) / PX_A_STEP);
+    if (steps === drag.current.steps) return;
+    drag.current.steps = steps;
+    onScrub(steps);
+  };
+  return (
+    <span
+      aria-hidden
+      title="Drag to change"
+      onPointerDown={onPointerDown}
+      onPointerMove={onPointerMove}
+      onPointerUp={end}
+      onPointerCancel={end}
+      className="figure -my-1 -mr-1 cursor-ew-resize touch-none select-none px-1 py-1.5 text-muted hover:text-lamp"
+    >
+      {unit}
+    </span>
+  );
 }

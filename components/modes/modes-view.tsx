@@ -11,13 +11,24 @@ import { ModesFoot } from "@/components/modes/modes-foot";
 import { PlaneColumn } from "@/components/modes/plane-column";
 import { toQuery, type ModesQuery } from "@/components/modes/store/link";
 import { useCopy } from "@/components/modes/use-copy";
+import { StartFromBench } from "@/components/modes/start-from-bench";
 import { useOwnScreen } from "@/components/modes/use-own-screen";
 import { WantedColumn } from "@/components/modes/wanted-column";
 import { WaveformEditor } from "@/components/modes/waveform-editor";
 
 /** Make a mode: from lines, refresh and a screen to a raster that runs. The address holds everything. */
 export function ModesView({ query }: { readonly query: ModesQuery }) {
-  return <ModesProvider query={query}>{(problems) => <ModesPage problems={problems} />}</ModesProvider>;
+  const isFresh = Object.keys(query).length === 0;
+  return (
+    <ModesProvider query={query}>
+      {(problems) => (
+        <>
+          {isFresh ? <StartFromBench /> : null}
+          <ModesPage problems={problems} />
+        </>
+      )}
+    </ModesProvider>
+  );
 }
 
 function ModesPage({ problems }: { readonly problems: readonly string[] }) {

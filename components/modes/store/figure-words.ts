@@ -125,8 +125,8 @@ export const figureWords: Readonly<Record<EditFigure, FigureWord>> = {
 export function figureText(figure: EditFigure, value: number): string {
   const { scale, decimals } = figureWords[figure];
   const shown = value / scale;
-  const isFiner = figure === "fieldRateHz" && Math.abs(shown * 100 - Math.round(shown * 100)) > 1e-6;
-  return formatNumber(shown, { decimals: isFiner ? 3 : decimals });
+  const isFiner = figure === "fieldRateHz" && !shown.toFixed(decimals + 1).endsWith("0");
+  return formatNumber(shown, { decimals: isFiner ? decimals + 1 : decimals });
 }
 
 /** "60.05 Hz", "1 716 clocks". */
