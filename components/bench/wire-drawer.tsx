@@ -1,6 +1,6 @@
 "use client";
 
-import { useEffect } from "react";
+import { useEffect, useRef } from "react";
 import { useStore } from "zustand";
 import { ChevronDown, ChevronUp } from "lucide-react";
 import { Button } from "@/components/ui/button";
@@ -15,9 +15,14 @@ export function WireDrawer() {
   const { store, setOpen, follow } = wireView;
   const isOpen = useStore(store, (state) => state.isOpen);
   const total = useStore(store, (state) => state.total);
+  const sight = useStore(store, (state) => state.sight);
+  const drawer = useRef<HTMLElement>(null);
   useEffect(() => follow(), [follow]);
+  useEffect(() => {
+    if (sight !== null) drawer.current?.scrollIntoView({ block: "end" });
+  }, [sight]);
   return (
-    <section aria-labelledby="wire-head" className="border-t border-line bg-sunk">
+    <section ref={drawer} aria-labelledby="wire-head" className="border-t border-line bg-sunk">
       <div className="gutter flex flex-wrap items-center gap-x-4 gap-y-2 py-2">
         <h2 id="wire-head" className="text-[15px]">Wire log</h2>
         <span className="figure text-muted">{formatNumber(total)} exchanges</span>

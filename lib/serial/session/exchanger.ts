@@ -130,8 +130,10 @@ export function createExchanger({ driver, clock, wireLog, send, onHopeless, onUn
     send(job.request.bytes);
   }
 
-  function maySend({ request }: Job): boolean {
+  function maySend({ request, sentAgain }: Job): boolean {
     if (inFlight.length === 0) return true;
+    // The line is cleared after the answer to one that was sent again: beside it, the answers of others would be lost too.
+    if (sentAgain || inFlight.some((other) => other.sentAgain)) return false;
     const alone = !request.named || inFlight.some((other) => !other.request.named || other.request.label === request.label);
     return !alone && inFlight.length < pace.inFlight;
   }
