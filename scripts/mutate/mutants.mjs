@@ -8,6 +8,7 @@ const session = [`${UNIT}/session/session.test.ts`, `${UNIT}/session/drain.test.
 const runs = [`${UNIT}/run/run.test.ts`, `${UNIT}/run/run-proof.test.ts`, `${UNIT}/run/run-loss.test.ts`];
 const sweepShort = ["tests/faults/session/fault-sweep.test.ts"];
 const sweepRun = ["tests/faults/run/requests-lf8.test.ts"];
+const replay = ["tests/faults/run/replay.test.ts"];
 const modbus = [`${UNIT}/protocols/modbus.test.ts`];
 const packet = [`${UNIT}/protocols/packet.test.ts`];
 const text = [`${UNIT}/protocols/text-codec.test.ts`];
@@ -48,7 +49,7 @@ export const mutants = [
 
   // The port.
   { name: "reading ends with the first break of the line", file: "lib/serial/session/link.ts", find: "if (glitches > MAX_GLITCHES) return lose", replace: "if (glitches > 0) return lose", tests: session },
-  { name: "the read stream stays locked", file: "lib/serial/session/link.ts", find: "      reader.releaseLock();\n      reader = null;\n    }\n  }\n\n  async function pump", replace: "      reader = null;\n    }\n  }\n\n  async function pump", tests: [...session, "tests/faults/run/replay.test.ts"] },
+  { name: "the read stream stays locked", file: "lib/serial/session/link.ts", find: "      reader.releaseLock();\n      reader = null;\n    }\n  }\n\n  async function pump", replace: "      reader = null;\n    }\n  }\n\n  async function pump", tests: [...session, ...replay] },
   { name: "a device is asked but once who it is", file: "lib/serial/session/identify.ts", find: "if (before && sameIdentity(before, identity)) {", replace: "if (ask >= 0) {", tests: session },
   { name: "a restart in the midst of a whole read goes unseen", file: "lib/serial/session/read-whole.ts", find: 'if (before.value !== after.value) return ok("moved");', replace: "", tests: session },
 
@@ -56,6 +57,7 @@ export const mutants = [
   { name: "another device is taken for the run's", file: "lib/serial/run/create-run.ts", find: 'if (!sameDevice(identity.value, core.identity)) return fail("other-device");', replace: "", tests: runs },
   { name: "a request leaves before it stands in the journal", file: REQUESTS, find: 'if (!(await core.record({ ...body, outcome: "leaving" }, number))) return null;', replace: "", tests: runs },
   { name: "a write is not read back", file: REQUESTS, find: "const stored = found.every(({ value }, at) => value === step.writes[at]?.value);", replace: "const stored = found.length > 0;", tests: runs },
+  { name: "a write is sent again to a device that has started anew", file: REQUESTS, find: 'return answer.value === (counts ? core.lastRead?.bootCount : core.slotOn) ? "no" : "perhaps";', replace: 'return "no";', tests: replay },
   { name: "a recall is not read back", file: REQUESTS, find: 'if (active.value !== slot) return "no";', replace: "", tests: [...runs, ...sweepRun] },
   { name: "a commit is sent twice", file: PROCEDURES, find: 'if ((await commit(core, "forward")) === "lost") return "rest";\n', replace: 'if ((await commit(core, "forward")) === "lost") return "rest";\n  await commit(core, "forward");\n', tests: runs },
   { name: "a commit's acknowledgement is taken for its proof", file: PROCEDURES, find: 'if (canAskCommitted(core)) return "arrive";', replace: 'if (canAskCommitted(core)) {\n    await core.say("kept");\n    return "rest";\n  }', tests: runs },

@@ -40,6 +40,8 @@ export class RunCore {
   /** The device timer is known to be off: it fired, or was confirmed or disarmed. Not journalled: a reload asks the device. */
   unarmed = false;
   lastRead: WholeRead | null = null;
+  /** The slot that was on when the device was last asked. */
+  slotOn: number | null = null;
   readonly lookedAt = new Set<number>();
 
   private readonly journal: JournalStore;

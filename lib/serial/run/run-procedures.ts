@@ -59,6 +59,7 @@ export async function writeForward(core: RunCore, steps: readonly PlanStep[], ar
   }
   const outcome = await follow(core, steps, "forward");
   if (outcome === "lost") return "rest";
+  if (outcome === "restarted" && !core.wantsBack) return "arrive";
   if (outcome !== "done" || core.wantsBack) return "put-back";
   if ((await unmute(core)) === "lost") return "rest";
   const judged = await readAndJudge(core);
@@ -122,6 +123,7 @@ export async function putBack(core: RunCore): Promise<Turn> {
   core.expect(steps.length);
   const outcome = await follow(core, steps, "back");
   if (outcome === "lost") return "rest";
+  if (outcome === "restarted") return "arrive";
   if (outcome === "failed") {
     const found = await readWhole(core);
     return found === null ? "rest" : settleMixed(core, "The device did not take a value back.");

@@ -11,8 +11,11 @@ type RequestEntry = JournalEntry & { kind: "request" };
 type RequestBody = EntryBody & { kind: "request" };
 export type Direction = RequestEntry["direction"];
 
-/** `lost`: the port, the device's voice or the journal is gone, and the run says so. `failed`: the device said no, or holds another value. */
-export type StepOutcome = "done" | "failed" | "lost";
+/**
+ * `lost`: the port, the device's voice or the journal is gone, and the run says so. `failed`: the device said no, or holds
+ * another value. `restarted`: it may have started anew, so that nothing of what was written, and no mute, is sure any more.
+ */
+export type StepOutcome = "done" | "failed" | "restarted" | "lost";
 
 /** What became of a request that leaves once. */
 type Sent = "acknowledged" | "unknown" | "refused" | "lost";
@@ -48,6 +51,7 @@ export async function readWhole(core: RunCore): Promise<WholeRead | null> {
     return null;
   }
   core.lastRead = read.value;
+  core.slotOn = read.value.activeSlot;
   const { bootCount } = read.value;
   if (core.facts.bootCount === null && bootCount !== undefined && core.state !== "ready") {
     if (!(await core.record({ kind: "boot-count", bootCount }))) return null;
@@ -87,7 +91,30 @@ async function readBack(core: RunCore, writes: readonly NativeWrite[]): Promise<
   return writes.map(({ key }) => ({ key, value: read.value[key] ?? "" }));
 }
 
-/** One write, read back. A lost reply is unknown until then; what was not stored is set again, within the driver's retries. */
+/**
+ * Whether the device may have started anew since the last whole read. A request that got no answer may have met a device that
+ * was starting: what stood in working memory is gone then, and the next write would meet another raster than the plan's.
+ *
+ * Without a count of starts only a device that stores at once can be believed: all that it loses is its active slot and a mute.
+ */
+async function mayHaveRestarted(core: RunCore): Promise<"no" | "perhaps" | "lost"> {
+  const session = liveSession(core);
+  if (session === null) return "lost";
+  const { status, memory } = core.goal.driver.definition;
+  const counts = status.bootCount !== undefined;
+  if (!counts && (memory.volatileWrites || core.facts.muted)) return "perhaps";
+  const answer = await (counts ? session.bootCount() : session.activeSlot());
+  if (!answer.ok) {
+    core.lose(answer.error.message);
+    return "lost";
+  }
+  return answer.value === (counts ? core.lastRead?.bootCount : core.slotOn) ? "no" : "perhaps";
+}
+
+/**
+ * One write, read back. A lost reply is unknown until then; what was not stored is set again, within the driver's retries, by
+ * a device that has not started anew meanwhile.
+ */
 async function write(core: RunCore, step: PlanStep & { kind: "write" }, direction: Direction): Promise<StepOutcome> {
   const body: RequestBody = { kind: "request", direction, request: "write", old: step.was, new: step.writes, outcome: "leaving" };
   const { retries } = core.goal.driver.definition.pace;
@@ -105,6 +132,8 @@ async function write(core: RunCore, step: PlanStep & { kind: "write" }, directio
     if (!(await core.record({ ...body, outcome, readBack: found }, left.number))) return "lost";
     if (stored) return "done";
     if (outcome === "mismatch") return "failed";
+    const restarted = await mayHaveRestarted(core);
+    if (restarted !== "no") return restarted === "lost" ? "lost" : "restarted";
   }
   return "failed";
 }
@@ -122,6 +151,7 @@ async function slotIsOn(core: RunCore, slot: number, raster: RasterTiming | null
     core.lose(active.error.message);
     return "lost";
   }
+  core.slotOn = active.value;
   if (active.value !== slot) return "no";
   const { definition } = core.goal.driver;
   if (raster === undefined || definition.timingTakesEffect !== "recall" || definition.status.rasterOut === undefined) return "yes";

@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { BYTE_KINDS, type ByteKind } from "./byte-faults";
 import { CALM, type Case, type Scenario } from "./case-id";
 import type { DeviceName } from "./drivers";
-import { directionsOf, sweepBytes, Tally } from "./sweep";
+import { directionsOf, livedCases, sweepBytes, Tally } from "./sweep";
 
 /** A busy machine is slow; nothing here measures time. */
 const PATIENCE_MS = 3_600_000;
@@ -26,8 +26,8 @@ const ENDS: Readonly<Record<Scenario, readonly string[]>> = {
 /** A kind that lasts as it is: one strike or many make no difference. */
 const LASTS_ANYWAY: readonly ByteKind[] = ["stall"];
 
-/** Declares the tests of one device: every kind of fault at its bytes, each way, once and lasting, over a backup, a run and a putting back. */
-export function describeByteSweep(device: DeviceName, strides: Strides): void {
+/** Declares the tests of one device: every kind of fault at its bytes, each way, once and lasting, over a backup, a run and a putting back. @param least cases in all */
+export function describeByteSweep(device: DeviceName, strides: Strides, least: number): void {
   describe.each(["backup", "run", "put-back"] as const)(`a fault at byte n of a %s, ${device}`, (scenario) => {
     it.each(BYTE_KINDS)("breaks no invariant and finds an end: %s", { timeout: PATIENCE_MS }, async (kind) => {
       const tally = new Tally();
@@ -43,5 +43,10 @@ export function describeByteSweep(device: DeviceName, strides: Strides): void {
       expect(tally.cases).toBeGreaterThan(2);
       expect(ENDS[scenario]).toEqual(expect.arrayContaining([...tally.ends]));
     });
+  });
+
+  it(`has lived through ${least} cases at least, ${device}`, () => {
+    console.log("COUNT", device, livedCases());
+    expect(livedCases()).toBeGreaterThanOrEqual(least);
   });
 }

@@ -15,20 +15,22 @@ export type Case = {
   readonly powerOnSlot: 1 | 2;
   readonly dirty: boolean;
   readonly hidden: boolean;
+  /** See `WorldOptions`. */
+  readonly way: 1 | 3 | 5;
   readonly faults: readonly Fault[];
   readonly bytes: readonly ByteTrouble[];
 };
 
-export const CALM = { powerOnSlot: 2, dirty: false, hidden: false, faults: [], bytes: [] } as const satisfies Partial<Case>;
+export const CALM = { powerOnSlot: 2, dirty: false, hidden: false, way: 1, faults: [], bytes: [] } as const satisfies Partial<Case>;
 
 const WAYS = { out: "host-to-device", in: "device-to-host" } as const;
 
 /**
- * The name that repeats a case: `lf8/run/keep,finish/slot2/reply-lost@12+out.flip3@140!`. `dirty` and `hidden` stand after
- * the slot; a byte's trouble has its direction before it, and `!` behind it where it lasts.
+ * The name that repeats a case: `lf8/run/keep,finish/slot2/reply-lost@12+out.flip3@140!`. `dirty`, `hidden`, `way3` and `way5`
+ * stand after the slot; a byte's trouble has its direction before it, and `!` behind it where it lasts.
  */
-export function caseId({ device, scenario, intent, powerOnSlot, dirty, hidden, faults, bytes }: Case): string {
-  const setting = [`slot${powerOnSlot}`, ...(dirty ? ["dirty"] : []), ...(hidden ? ["hidden"] : [])].join(",");
+export function caseId({ device, scenario, intent, powerOnSlot, dirty, hidden, way, faults, bytes }: Case): string {
+  const setting = [`slot${powerOnSlot}`, ...(dirty ? ["dirty"] : []), ...(hidden ? ["hidden"] : []), ...(way === 1 ? [] : [`way${way}`])].join(",");
   const troubles = [
     ...faults.map(({ kind, at }) => `${kind}@${at}`),
     ...bytes.map(({ fault, direction, at, lasting }) => `${direction === WAYS.out ? "out" : "in"}.${fault}@${at}${lasting ? "!" : ""}`),
@@ -62,5 +64,6 @@ export function parseCase(id: string): Case {
     if ("kind" in trouble) faults.push(trouble);
     else bytes.push(trouble);
   }
-  return { device, scenario, intent: { wish, recovery }, powerOnSlot: parts.includes("slot1") ? 1 : 2, dirty: parts.includes("dirty"), hidden: parts.includes("hidden"), faults, bytes };
+  const way = parts.includes("way3") ? 3 : parts.includes("way5") ? 5 : 1;
+  return { device, scenario, way, intent: { wish, recovery }, powerOnSlot: parts.includes("slot1") ? 1 : 2, dirty: parts.includes("dirty"), hidden: parts.includes("hidden"), faults, bytes };
 }

@@ -5,7 +5,7 @@ import type { DriverDefinition } from "@/lib/serial/driver/definition";
 import { cutDown } from "@/tests/unit/serial/run/run-rig";
 
 /** Settings that a run cannot tell from others: left out, so that a whole read is short. */
-const ALIKE = /^(?:everywhere\.trim\.(?!leftPx)|native\.|modes\[\*\]\.name|slots\[\*\]\.(?:name|input|colour\.|syncKind|outputKind|inputRange|lineFilter|placement\.(?:heightPct|offsetLines)))/u;
+const ALIKE = /^(?:everywhere\.trim\.(?!leftPx)|native\.|modes\[\*\]\.name|slots\[\*\]\.(?:name|colour\.|syncKind|outputKind|inputRange|lineFilter|placement\.(?:heightPct|offsetLines)))/u;
 
 /** The same device with two slots, two modes and one setting of each kind: protocol, memory, timer, pace and effect as shipped. */
 function small(definition: DriverDefinition): DriverDefinition {

@@ -14,6 +14,18 @@ export type Explored = {
 /** Longer than any timer of a page that is closed, or of a device that starts. */
 const AFTERWARDS_MS = 3_000;
 
+/** A port whose streams nobody holds can be opened and closed again. @returns what it said otherwise */
+async function openAgain({ plug, driver }: World): Promise<string | null> {
+  const port = plug.replug();
+  try {
+    await port.open(driver.definition.transport);
+    await port.close();
+    return null;
+  } catch (error) {
+    return error instanceof Error ? error.message : String(error);
+  }
+}
+
 /** I4 and I5: the line works or counts as lost, and nothing is left behind. */
 export async function aftermath(world: World): Promise<readonly string[]> {
   const { clock, device } = world;
@@ -26,6 +38,8 @@ export async function aftermath(world: World): Promise<readonly string[]> {
   } else if (world.session.state.name !== "lost") broken.push(`I4 the session is ${world.session.state.name}`);
   world.run.release();
   await clock.run(world.session.close());
+  const again = await clock.run(openAgain(world));
+  if (again !== null) broken.push(`I4 the port does not open again: ${again}`);
   await clock.advance(AFTERWARDS_MS);
   if (clock.pendingTimers() > 0) broken.push(`I5 ${clock.pendingTimers()} timers are left`);
   return broken;

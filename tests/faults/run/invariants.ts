@@ -4,12 +4,6 @@ import { factsFrom } from "@/lib/serial/run/run-facts";
 import type { JournalEntry, RunState, RunView } from "@/lib/serial/run/types";
 import { CHANGED, type World } from "./world";
 
-const changedKeys = Object.values(CHANGED);
-
-function holds(values: NativeValues, wanted: NativeValues): boolean {
-  return changedKeys.every((key) => values[key] === wanted[key]);
-}
-
 export type Sides = { readonly old: NativeValues; readonly new: NativeValues };
 
 export function sidesOf({ plan }: World): Sides {
@@ -39,11 +33,14 @@ export function brokenBy(world: World, before: RunState, view: RunView): readonl
   demand(view.link === "up" || view.why !== "" || before === view.state, "I6 the link is lost, and nothing says why");
   if (view.state === before) return found;
   const sides = sidesOf(world);
+  const changedKeys = Object.keys(sides.new);
+  const holds = (values: NativeValues, wanted: NativeValues) => changedKeys.every((key) => values[key] === wanted[key]);
   const commitSent = factsFrom(world.journals.browser).commitSent;
   const untouched = (values: NativeValues) => holds(values, sides.old) || holds(values, storedAtStart);
   if (view.state === "kept") {
     demand(holds(device.stored, sides.new), "S1 kept, but non-volatile memory is not all new");
     demand(!device.timerArmed, "S1 kept, but the device timer is armed");
+    demand(!device.muted, "kept, but the output is muted");
     demand(world.word === "keep", "S8 kept, but the owner's last word was to put back");
   }
   if (view.state === "put-back") {
@@ -51,6 +48,7 @@ export function brokenBy(world: World, before: RunState, view: RunView): readonl
     demand(untouched(device.stored), `S2 put-back, but non-volatile memory is not all old (commit sent: ${String(commitSent)})`);
     demand(rasterInEffect(world), "S2 put-back, but the raster out is not the old one");
     demand(!device.timerArmed, "S2 put-back, but the device timer is armed");
+    demand(!device.muted, "put-back, but the output is muted");
     demand(device.activeSlot === 1, "S5 put-back, but another slot is active");
   }
   if (view.state === "called-off") demand(device.counts.writes === Number(storedAtStart[CHANGED.other] !== sides.old[CHANGED.other]), "called off, but something was written");

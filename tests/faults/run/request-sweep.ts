@@ -1,9 +1,9 @@
 import { describe, expect, it } from "vitest";
-import { CALM } from "./case-id";
+import { CALM, type Case } from "./case-id";
 import type { DeviceName } from "./drivers";
 import { FAULT_KINDS, type FaultKind } from "./fault-line";
 import type { Intent } from "./owner";
-import { sweepRequests, Tally } from "./sweep";
+import { livedCases, sweepRequests, Tally } from "./sweep";
 
 /** A busy machine is slow; nothing here measures time. */
 const PATIENCE_MS = 3_600_000;
@@ -22,20 +22,22 @@ const INTENTS: readonly Intent[] = [
  * request, each kind of it, for each of three owners, with a restart into the slot of the start and into another one,
  * with and without a change by hand that was never stored. That is the bound: two acts in one run are drawn by chance.
  * @param strides every so many requests, for each owner
+ * @param least cases in all
  */
-export function describeRequestSweep(device: DeviceName, strides: readonly [number, number, number]): void {
+export function describeRequestSweep(device: DeviceName, strides: readonly [number, number, number], least: number, way: Case["way"] = 1): void {
   describe.each(INTENTS.map((intent, index) => ({ ...intent, stride: strides[index] ?? 1 })))(
-    `one act of the adversary in a run, ${device}, whose owner wants to $wish and in doubt to $recovery`,
+    `one act of the adversary in a run of way ${way}, ${device}, whose owner wants to $wish and in doubt to $recovery`,
     ({ wish, recovery, stride }) => {
       it.each(FAULT_KINDS)("breaks no invariant and finds an end: %s", { timeout: PATIENCE_MS }, async (kind: FaultKind) => {
         const tally = new Tally();
         const intent = { wish, recovery };
         const phase = FAULT_KINDS.indexOf(kind);
-        await sweepRequests(tally, { ...CALM, device, scenario: "run", intent }, kind, { stride, phase });
+        const over = { ...CALM, device, scenario: "run", intent, way } as const;
+        await sweepRequests(tally, over, kind, { stride, phase });
         // The slot of the start is on after a restart too; and non-volatile memory is not what it seemed.
-        await sweepRequests(tally, { ...CALM, powerOnSlot: 1, device, scenario: "run", intent }, kind, { stride: 7 * stride, phase });
-        if (VOLATILE.includes(device)) await sweepRequests(tally, { ...CALM, dirty: true, device, scenario: "run", intent }, kind, { stride: 9 * stride, phase });
-        await sweepRequests(tally, { ...CALM, hidden: true, device, scenario: "run", intent }, kind, { stride: 11 * stride, phase });
+        await sweepRequests(tally, { ...over, powerOnSlot: 1 }, kind, { stride: 7 * stride, phase });
+        if (VOLATILE.includes(device)) await sweepRequests(tally, { ...over, dirty: true }, kind, { stride: 9 * stride, phase });
+        await sweepRequests(tally, { ...over, hidden: true }, kind, { stride: 11 * stride, phase });
         expect(tally.broken).toEqual([]);
         expect(tally.cases).toBeGreaterThan(4);
         expect(["kept", "put-back", "called-off"]).toEqual(expect.arrayContaining([...tally.ends]));
@@ -43,4 +45,9 @@ export function describeRequestSweep(device: DeviceName, strides: readonly [numb
       });
     },
   );
+
+  it(`has lived through ${least} cases at least, ${device}`, () => {
+    console.log("COUNT", device, livedCases());
+    expect(livedCases()).toBeGreaterThanOrEqual(least);
+  });
 }

@@ -1,3 +1,3 @@
 import { describeRequestSweep } from "./request-sweep";
 
-describeRequestSweep("brackenrow", [1, 2, 2]);
+describeRequestSweep("brackenrow", [1, 2, 2], 100);

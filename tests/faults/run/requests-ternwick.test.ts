@@ -1,3 +1,3 @@
 import { describeRequestSweep } from "./request-sweep";
 
-describeRequestSweep("ternwick", [1, 2, 2]);
+describeRequestSweep("ternwick", [1, 2, 2], 100);

@@ -17,6 +17,11 @@ const MAX_TOLD = 20;
 
 export type Swept = { readonly cases: number; readonly broken: readonly string[]; readonly ends: ReadonlySet<string> };
 
+let lived = 0;
+
+/** Cases that this file's sweeps have lived through so far. */
+export const livedCases = (): number => lived;
+
 /** Gathers what cases came to. Each broken one is told by the id that repeats it. */
 export class Tally {
   cases = 0;
@@ -29,6 +34,7 @@ export class Tally {
     const { struck, end, broken } = await explored(one);
     if (struck > 0) {
       this.cases += 1;
+      lived += 1;
       this.ends.add(end);
     }
     for (const sentence of broken) {

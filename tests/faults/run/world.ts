@@ -17,7 +17,7 @@ import { createSimulatedDevicePort, type SimulatedDevicePort } from "@/lib/seria
 import { anyOf } from "@/lib/serial/simulator/wire-fault";
 import { createWireLog, hexOf, type WireEntry } from "@/lib/serial/wire-log";
 import type { Result } from "@/lib/result";
-import { planned, profileOf, rasterOf, television } from "@/tests/unit/serial/plan/plan-fixtures";
+import { backupOf, planned, profileOf, rasterOf, television } from "@/tests/unit/serial/plan/plan-fixtures";
 import { ByteLine, type ByteTrouble } from "./byte-faults";
 import { FAULT_DEVICES, type DeviceName } from "./drivers";
 import { FaultLine, type DeviceFault, type Fault } from "./fault-line";
@@ -64,6 +64,11 @@ export type WorldOptions = {
   /** A change by hand that was never committed: non-volatile memory differs from the start. */
   readonly dirty: boolean;
   readonly hidden: boolean;
+  /**
+   * How the plan changes the raster that is out: 1 in one write, in one block or at a recall, as the device does it; 3 and 5,
+   * where each number takes effect at once, in many writes, meanwhile with another slot on, or muted.
+   */
+  readonly way: 1 | 3 | 5;
 };
 
 /** One device, one page and one owner, with what may go wrong between them. */
@@ -111,27 +116,40 @@ function otherWidth(driver: CompiledDriver): NativeValue {
   return native;
 }
 
-function planOf({ definition }: CompiledDriver, { content, activeSlot, rasterOut }: TakenBackup): CheckedPlan {
+/** The raster at half its clock, every number across halved: no order of single writes keeps within a television between them. */
+const HALVED: NativeValues = {
+  "modes[1].timing.pixelClockHz": 13_500_000, "modes[1].timing.horizontal.active": 720, "modes[1].timing.horizontal.frontPorch": 20,
+  "modes[1].timing.horizontal.sync": 62, "modes[1].timing.horizontal.backPorch": 56, [CHANGED.before]: 4, [CHANGED.other]: 88,
+};
+
+/** Slot 2 on another input: there is no slot to step aside to. */
+const ELSEWHERE: NativeValues = { "slots[2].input": 1 };
+
+function planOf({ definition }: CompiledDriver, { content, activeSlot, rasterOut }: TakenBackup, way: WorldOptions["way"]): CheckedPlan {
   const document = profileOf({
     everywhere: { trim: { leftPx: 4 } },
     modes: [{ key: "a", timing: { ...rasterOf(definition, 1), pixelClockHz: 27_050_000 } }],
     slots: [{ number: 1, mode: "a" }, { number: 2, placement: { widthPct: 88 } }],
   });
-  return planned({
+  const halved = backupOf(definition, { ...content.values, ...HALVED });
+  const plan = planned({
     backup: content, driver: definition, activeSlot, rasterOut, leftOut: [], acknowledged: [], screen: television, source: null,
-    target: { kind: "profile", document },
+    target: way === 1 ? { kind: "profile", document } : { kind: "restore", content: halved },
   });
+  if (way !== 1 && plan.way !== way) throw new Error(`The plan goes way ${plan.way}, not ${way}`);
+  return plan;
 }
 
 /** Plans are the same for the same backup: made once, since only the journal and the device differ from world to world. */
 const prepared = new Map<string, { readonly backup: TakenBackup; readonly plan: CheckedPlan }>();
 
-async function prepare(key: string, driver: CompiledDriver, clock: VirtualClock, session: DeviceSession) {
+async function prepare({ device, powerOnSlot, dirty, way }: WorldOptions, driver: CompiledDriver, clock: VirtualClock, session: DeviceSession) {
+  const key = [device, powerOnSlot, dirty, way].join(" ");
   const known = prepared.get(key);
   if (known) return known;
   const backup = await clock.run(takeBackup(session, driver));
   if (!backup.ok) throw new Error(backup.error.message);
-  const made = { backup: backup.value, plan: planOf(driver, backup.value) };
+  const made = { backup: backup.value, plan: planOf(driver, backup.value, way) };
   prepared.set(key, made);
   return made;
 }
@@ -173,7 +191,7 @@ export async function createWorld(options: WorldOptions): Promise<World> {
   const clock = createVirtualClock();
   const pageClock = hidden ? hiddenClock(clock) : clock;
   const own = deviceClock(clock);
-  const device = createDeviceModel(driver, { clock: own.clock, values: { "everywhere.powerOnSlot": powerOnSlot }, activeSlot: 1 });
+  const device = createDeviceModel(driver, { clock: own.clock, values: { ...(options.way === 5 ? ELSEWHERE : {}), "everywhere.powerOnSlot": powerOnSlot }, activeSlot: 1 });
   if (dirty) device.operate({ kind: "write", writes: [{ key: CHANGED.other, value: otherWidth(driver) }] });
   const plug = createSimulatedDevicePort({ model: device, transport: driver.definition.transport, clock, pacing: "none" });
   let next: DeviceFault | null = null;
@@ -206,7 +224,7 @@ export async function createWorld(options: WorldOptions): Promise<World> {
   const opened = await openPage(base, onceOnly(driver));
   if (!opened.ok) throw new Error(JSON.stringify(opened.error));
   const { session, identity } = opened.value;
-  const made = await prepare(`${options.device} ${powerOnSlot} ${dirty}`, driver, clock, session);
+  const made = await prepare(options, driver, clock, session);
   const journals = twoJournals();
   const run = createRun({ plan: made.plan, journal: journals.store, clock: pageClock, session, identity, countdownSeconds: 10 });
   const world: World = {

@@ -127,6 +127,8 @@ function strikeAt(strike: Strike, direction: WireDirection, at: number, abort: (
   };
 }
 
+let lived = 0;
+
 /** Runs the transaction with its faults from byte `at` on. @returns whether all of them struck */
 async function runCase(one: ShortCase): Promise<boolean> {
   const scenario = SCENARIOS[one.protocol];
@@ -142,6 +144,7 @@ async function runCase(one: ShortCase): Promise<boolean> {
   } catch (error) {
     throw new Error(`SWEEP=${idOf(one)}: ${error instanceof Error ? error.message : String(error)}`, { cause: error });
   }
+  lived += 1;
   return single.every((fault) => fault.fired);
 }
 
@@ -181,6 +184,11 @@ describe.each(Object.keys(SCENARIOS))("a fault on the line, %s", (protocol) => {
     }
     expect(cases).toBeGreaterThan(100);
   });
+});
+
+it("has lived through 100 cases at least", () => {
+  console.log("COUNT short", lived);
+  expect(lived).toBeGreaterThanOrEqual(100);
 });
 
 /** Cases that once went wrong, or were near to it, and the one that `SWEEP` names. */
