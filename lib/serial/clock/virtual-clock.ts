@@ -17,7 +17,7 @@ type Timer = { readonly dueMs: number; readonly fire: () => void };
 
 const DAY_MS = 86_400_000;
 /** Turns of the event loop that are granted to work outside the clock (a digest in another thread) before a deadlock is called. */
-const IDLE_TURNS = 200;
+const IDLE_TURNS = 20_000;
 /** Timers named in an error. */
 const NAMED_TIMERS = 5;
 

@@ -66,7 +66,7 @@ describe("the LF-8 driver", () => {
     expect(cost.bytes).toBe(19 + 19 + 17 + 19);
     expect(cost.seconds * 1000).toBeCloseTo((74 * 10_000) / 115_200 + 2 * 2, 6);
     expect(commitCost(lf8).seconds * 1000).toBeGreaterThan(180);
-    expect(recallCost(lf8, 2).bytes).toBeGreaterThan(0);
+    expect(recallCost(lf8, 2, null).bytes).toBeGreaterThan(0);
     expect(wholeReadCost(lf8).seconds * 1000).toBeGreaterThan(wireLimitMs(lf8));
   });
 
