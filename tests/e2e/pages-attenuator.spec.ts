@@ -1,5 +1,5 @@
 import { expect, test } from "@/tests/e2e/fixtures";
-import { expectNoSidewaysScroll, PHONE, preferTheme, THEMES } from "@/tests/e2e/pages-steps";
+import { expectWhole } from "@/tests/e2e/pages-steps";
 
 // 5 V behind 33 Ω, 620 Ω in line, 75 Ω of load: 0.51511 V. Source: ngspice, in tests/fixtures/standards/attenuation.json.
 
@@ -57,22 +57,12 @@ test("a screen's level leads here, and what it takes is said of each value", asy
 
 const answered = "/attenuator?source=5&impedance=33&screen=bt470-525";
 
-for (const theme of THEMES) {
-  test(`Attenuator by ${theme}: no axe violation`, async ({ page, expectAccessible }) => {
-    await preferTheme(page, theme);
-    await page.goto(answered);
-    await expect(page.getByRole("heading", { level: 1, name: "Attenuator" })).toBeVisible();
-    await expectAccessible(page);
-    await page.goto("/attenuator?way=readings&terminated=none");
-    await expect(page.getByText("What were both readings terminated with?")).toBeVisible();
-    await expectAccessible(page);
-  });
-}
-
-test("Attenuator is whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
+test("Attenuator is whole by day, by night and on a phone of 360 px", async ({ page, expectAccessible }) => {
   await page.goto(answered);
+  await expect(page.getByRole("heading", { level: 1, name: "Attenuator" })).toBeVisible();
   await expect(page.getByText("Nearest E24 values")).toBeVisible();
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
+  await page.goto("/attenuator?way=readings&terminated=none");
+  await expect(page.getByText("What were both readings terminated with?")).toBeVisible();
+  await expectWhole(page, expectAccessible);
 });

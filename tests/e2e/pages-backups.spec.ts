@@ -65,7 +65,7 @@ test("a backup shows all that it holds, and leads to restoring and publishing it
     "href",
     /^\/library\/publish\?backup=/u,
   );
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
 });
 
 test("another owner's backup is not there", async ({ page, browser }) => {

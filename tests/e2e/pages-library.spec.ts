@@ -88,7 +88,7 @@ test("some slots of a backup are published as a profile", async ({ page, expectA
   await slots.first().click();
   await page.getByRole("button", { name: "Publish", exact: true }).click();
   await expect(page.getByText("Give it a title.")).toBeVisible();
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
   const title = `From the cabinet ${Date.now()}`;
   await page.getByLabel("Title").fill(title);
   await page.getByRole("button", { name: "Publish", exact: true }).click();

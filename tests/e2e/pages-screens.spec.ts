@@ -1,7 +1,7 @@
 import { readFileSync } from "node:fs";
 import type { Page } from "@playwright/test";
 import { expect, test } from "@/tests/e2e/fixtures";
-import { expectNoSidewaysScroll, PHONE, preferTheme, register, signInAs, THEMES } from "@/tests/e2e/pages-steps";
+import { expectWhole, register, signInAs } from "@/tests/e2e/pages-steps";
 
 test("everybody sees what a standard envelope takes, and where each limit comes from", async ({ page }) => {
   await page.goto("/screens");
@@ -37,26 +37,15 @@ test("a screen is made from an envelope, changed, and deleted", async ({ page, e
   await expect(page.getByRole("link", { name: /Workshop, 4:3/u })).toHaveCount(0);
 });
 
-for (const theme of THEMES) {
-  test(`an owner's screens and the form by ${theme}: no axe violation`, async ({ page, expectAccessible }) => {
-    await preferTheme(page, theme);
-    await signInAs(page, "imke", "/screens");
-    await expect(page.getByText("Before it: Cabinet A, upright", { exact: true })).toBeVisible();
-    await expect(page.getByRole("article")).toBeVisible();
-    await expect(page.getByText("Demo: the Saltmarsh Play Archive")).toBeVisible();
-    await expectAccessible(page);
-    await page.goto("/screens/new");
-    await expect(page.getByRole("button", { name: "Add screen" })).toBeVisible();
-    await expectAccessible(page);
-  });
-}
-
-test("the form of a screen is whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
-  await register(page, "/screens/new");
+test("an owner's screens and the form are whole by day, by night and at 360 px", async ({ page, expectAccessible }) => {
+  await signInAs(page, "imke", "/screens");
+  await expect(page.getByText("Before it: Cabinet A, upright", { exact: true })).toBeVisible();
+  await expect(page.getByRole("article")).toBeVisible();
+  await expect(page.getByText("Demo: the Saltmarsh Play Archive")).toBeVisible();
+  await expectWhole(page, expectAccessible);
+  await page.goto("/screens/new");
   await expect(page.getByRole("button", { name: "Add screen" })).toBeVisible();
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
 });
 
 /** A published EDID: an analogue CRT, 30 to 83 kHz at 48 to 120 Hz and 170 MHz (`edid-decode`, in edid-ranges.json). */
@@ -145,19 +134,8 @@ test("the modes of the devices before a screen stand among the known ones", asyn
   await expect(detail.getByText("on its devices")).toBeVisible();
 });
 
-for (const theme of THEMES) {
-  test(`a screen to be, from an EDID, by ${theme}: no axe violation`, async ({ page, expectAccessible }) => {
-    await preferTheme(page, theme);
-    await page.goto(`/screens?edid=${Buffer.from(crt()).toString("base64url")}`);
-    await expect(page.getByRole("article", { name: "AplVision750" })).toBeVisible();
-    await expectAccessible(page);
-  });
-}
-
-test("a screen to be, from an EDID, is whole on a phone of 360 px", async ({ page, expectAccessible }) => {
-  await page.setViewportSize(PHONE);
+test("a screen to be, from an EDID, is whole by day, by night and at 360 px", async ({ page, expectAccessible }) => {
   await page.goto(`/screens?edid=${Buffer.from(crt()).toString("base64url")}`);
   await expect(page.getByRole("article", { name: "AplVision750" })).toBeVisible();
-  await expectNoSidewaysScroll(page);
-  await expectAccessible(page);
+  await expectWhole(page, expectAccessible);
 });

@@ -1,7 +1,6 @@
 import { expect, test } from "@/tests/e2e/fixtures";
 import { chooseScreen, connect, moveBy, readCautions, READ_MS, trial } from "@/tests/e2e/bench-steps";
-import { register } from "@/tests/e2e/pages-steps";
-import { demoAccount } from "@/db/demo/accounts";
+import { register, signInAs } from "@/tests/e2e/pages-steps";
 import type { Page } from "@playwright/test";
 
 /**
@@ -13,15 +12,6 @@ async function stop(page: Page, name: string): Promise<void> {
   await page.evaluate(() => scrollTo(0, 0));
   const path = process.env.TOUR === "1" ? `docs/tour/${name}.png` : undefined;
   await page.screenshot({ animations: "disabled", ...(path === undefined ? {} : { path }) });
-}
-
-async function signIn(page: Page, returnPath: string): Promise<void> {
-  const { email, password } = demoAccount("imke");
-  await page.goto(`/sign-in?from=${encodeURIComponent(returnPath)}`);
-  await page.getByLabel("E-mail address").fill(email);
-  await page.getByLabel("Password").fill(password);
-  await page.getByRole("button", { name: "Sign in" }).click();
-  await page.waitForURL(`**${returnPath}`);
 }
 
 test("the front page has a simulated device: slots, raster, picture", async ({ page }) => {
@@ -49,7 +39,7 @@ test("the bench: settings on rulers, a plan under review, a trial", async ({ pag
 });
 
 test("the demo's backups, library and screens have something to show", async ({ page }) => {
-  await signIn(page, "/backups");
+  await signInAs(page, "imke", "/backups");
   await expect(page.getByRole("table").first()).toBeVisible();
   await expect(page.getByText("known good").first()).toBeVisible();
   await stop(page, "backups");
@@ -59,4 +49,18 @@ test("the demo's backups, library and screens have something to show", async ({ 
   await page.goto("/screens");
   await expect(page.getByRole("main").getByRole("link").first()).toBeVisible();
   await stop(page, "screens");
+});
+
+test("a mode is made for a screen, rasters are compared, and a sync output is brought down", async ({ page }) => {
+  await page.goto("/modes");
+  await page.getByLabel("on this device").selectOption({ label: "Lanternfield LF-8" });
+  await page.getByRole("textbox", { name: "Lines, lines", exact: true }).fill("270");
+  await expect(page.getByRole("heading", { name: /don’t fit/u })).toBeVisible();
+  await stop(page, "modes");
+  await page.goto("/standards");
+  await expect(page.getByRole("table").first()).toBeVisible();
+  await stop(page, "standards");
+  await page.goto("/attenuator");
+  await expect(page.getByText(/in line with the sync/u)).toBeVisible();
+  await stop(page, "attenuator");
 });
