@@ -4,6 +4,7 @@ import { openDb } from "@/db/client";
 import type { Db } from "@/db/client";
 import { demoAccounts } from "@/db/demo/accounts";
 import { seedDevices, seedScreens } from "@/db/demo/seed-devices";
+import { seedDrivers } from "@/db/demo/seed-drivers";
 import { seedPeople } from "@/db/demo/seed-people";
 import { seedProfiles } from "@/db/demo/seed-profiles";
 
@@ -21,6 +22,7 @@ export async function seedDemo(db: Db): Promise<void> {
     await seedScreens(tx, people);
     await seedDevices(tx, people);
     await seedProfiles(tx, people);
+    await seedDrivers(tx, people);
     if (people.size < demoAccounts.length) {
       console.log("Some of the demo's addresses belong to other people here; nothing was added for those.");
     }

@@ -153,7 +153,7 @@ export async function deleteDraft(db: Db, by: Maintaining, key: Keyed): Promise<
 }
 
 /**
- * Stores a report that was computed here of the definition as it stood; a draft becomes a candidate by it.
+ * Stores a report that was computed here of the definition as it stood. A draft becomes a candidate by a green one.
  * Errors: "absent"; "stale" when the definition was changed meanwhile.
  */
 export async function storeReport(
@@ -181,7 +181,7 @@ export async function storeReport(
       })
       .returning({ id: conformanceReport.id });
     if (made === undefined) throw new Error("an insert gave no row");
-    if (held.state === "draft") {
+    if (held.state === "draft" && report.green) {
       await tx
         .update(driverVersion)
         .set({
@@ -204,13 +204,13 @@ export async function storeReport(
 
 /**
  * Publishes a candidate by the latest report of its very definition.
- * Errors: "absent"; "stale"; "not-a-candidate"; "no-report"; "red".
+ * Errors: "absent"; "stale"; "not-a-candidate"; "red" when that report is not green.
  */
 export async function publishVersion(
   db: Db,
   by: Maintaining,
   key: Keyed,
-): Promise<Result<DriverVersionView, ActError | "not-a-candidate" | "no-report" | "red">> {
+): Promise<Result<DriverVersionView, ActError | "not-a-candidate" | "red">> {
   return db.transaction(async (tx) => {
     const [held] = await tx
       .select({ id: driverVersion.id, state: driverVersion.state, revision: driverVersion.revision })
@@ -221,8 +221,8 @@ export async function publishVersion(
     if (held.revision !== key.revision) return fail("stale");
     if (held.state !== "conformance") return fail("not-a-candidate");
     const { report } = await written(tx, by, key);
-    if (report === null) return fail("no-report");
-    if (!report.green) return fail("red");
+    // A candidate has a report of its definition; a later one, on more recordings, may be red.
+    if (report?.green !== true) return fail("red");
     await tx
       .update(driverVersion)
       .set({

@@ -16,8 +16,9 @@ export const versionParams = z.object({ slug: driverSlug, version: driverVersion
 export const definitionHead = z.looseObject({
   slug: driverSlug,
   version: driverVersionNumber,
-  maker: lineText(80),
-  model: lineText(80),
+  // Not trimmed: what is kept, and its hash, is what was sent.
+  maker: z.string().min(1).max(80),
+  model: z.string().min(1).max(80),
 });
 
 const note = z.string().trim().max(2000);

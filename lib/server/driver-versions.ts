@@ -40,33 +40,31 @@ type Refused = { readonly code: "not-a-definition"; readonly errors: readonly Pa
 const refused = (errors: readonly PathMessage[]): { ok: false; error: Refused } =>
   fail({ code: "not-a-definition", errors });
 
+/** A definition as it was written, and what it says that it is. */
+export type Storable = VersionKey & {
+  readonly maker: string;
+  readonly model: string;
+  readonly definition: StoredDefinition;
+};
+
 /**
- * The head of a definition that can be kept: it may be unfinished, and it names itself.
+ * A definition that can be kept: it may be unfinished, and it names itself.
  * @param wanted what the address says that it is
  */
-export function storableDefinition(
-  definition: unknown,
-  wanted: Partial<VersionKey>,
-): Result<
-  StoredDefinition & {
-    readonly slug: string;
-    readonly version: string;
-    readonly maker: string;
-    readonly model: string;
-  },
-  Refused
-> {
+export function storableDefinition(definition: unknown, wanted: Partial<VersionKey>): Result<Storable, Refused> {
   const unstorable = storageProblems(definition);
   if (unstorable.length > 0) return refused(unstorable);
   const head = definitionHead.safeParse(definition);
   if (!head.success) return refused(schemaProblems(head.error));
   const { slug, version, maker, model } = head.data;
-  if (wanted.slug !== undefined && slug !== wanted.slug)
-    return refused([{ path: "slug", message: `Must be ${wanted.slug}, as the address says.` }]);
-  if (wanted.version !== undefined && version !== wanted.version)
-    return refused([{ path: "version", message: `Must be ${wanted.version}, as the address says.` }]);
-  // As it was written: the parsed head has its texts trimmed. The cast holds, since it was seen to be a group of fields.
-  return ok({ ...(definition as StoredDefinition), slug, version, maker, model });
+  for (const [path, said, asked] of [
+    ["slug", slug, wanted.slug],
+    ["version", version, wanted.version],
+  ] as const) {
+    if (asked !== undefined && said !== asked) return refused([{ path, message: `Must be ${asked}, as the address says.` }]);
+  }
+  // The cast holds: it was seen to be a group of fields.
+  return ok({ slug, version, maker, model, definition: definition as StoredDefinition });
 }
 
 /** Begins a version from a definition. Errors: "not-a-definition" with paths; "known". */
@@ -77,11 +75,10 @@ export async function draftFrom(
   wanted: Partial<VersionKey>,
   note: string,
 ): Promise<Result<DriverVersionDetail, Refused | "known">> {
-  const definition = storableDefinition(given, wanted);
-  if (!definition.ok) return definition;
-  const { slug, version, maker, model } = definition.value;
-  const made = await createDraft(db, by, { slug, version, maker, model, definition: definition.value, note });
-  return made.ok ? ok(detailOf(made.value, definition.value)) : made;
+  const storable = storableDefinition(given, wanted);
+  if (!storable.ok) return storable;
+  const made = await createDraft(db, by, { ...storable.value, note });
+  return made.ok ? ok(detailOf(made.value, storable.value.definition)) : made;
 }
 
 /** Begins a version from a file. Errors as of `draftFrom`. */

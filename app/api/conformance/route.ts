@@ -22,7 +22,7 @@ export const POST = withRoute(
   {
     role: "maintainer",
     summary:
-      "Run the suite here, on the definition and the recordings as they are stored. A draft becomes a candidate by it.",
+      "Run the suite here, on the definition and the recordings as they are stored. A draft that comes out green becomes a candidate.",
     body: newConformance,
     response: conformanceDetail,
     status: 201,

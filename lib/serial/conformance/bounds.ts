@@ -12,7 +12,7 @@ export const CONFORMANCE_BOUNDS = {
   /** Time of the simulated world that one step may take, in ms: the longest timeout, retried, in each of several requests. */
   stepVirtualMs: 4 * 3_600_000,
   /** Real time by the clock that the caller gives, in ms. */
-  wallMs: 90_000,
+  wallMs: 120_000,
   /** Values of settings that are tried; past that, slots and modes are thinned out. */
   values: 6000,
   /** Slots that are made active each. */

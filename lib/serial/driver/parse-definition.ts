@@ -3,6 +3,7 @@ import { fail, ok, type PathMessage, type Result } from "@/lib/result";
 import { compileDriver } from "./compile";
 import type { CompiledDriver } from "./compiled";
 import { driverDefinitionSchema, type DriverDefinition } from "./definition";
+import { jsonBreak } from "./json-place";
 
 /** Bounds of a definition from a stranger. The shipped ones have 20 KB. Source: the project's own rule. */
 export const MAX_DEFINITION_BYTES = 512 * 1024;
@@ -45,18 +46,13 @@ export function storageProblems(value: unknown): PathMessage[] {
   return problems;
 }
 
-/** Line and column of a place in a text, counted from 1. */
-function placeIn(text: string, position: number): string {
+/** Where a text stops being JSON, by line and column counted from 1. */
+function whereIn(text: string): string {
+  const position = jsonBreak(text) ?? text.length;
+  if (text.trim() === "") return "It is empty.";
   const before = text.slice(0, position).split("\n");
-  return `line ${before.length}, column ${(before.at(-1)?.length ?? 0) + 1}`;
-}
-
-/** Where a parser stopped, as far as its message tells: V8 names a position or a line, other engines a line. */
-function whereIn(text: string, message: string): string {
-  const position = /at position (\d+)/u.exec(message)?.[1];
-  if (position !== undefined) return ` It breaks off at ${placeIn(text, Number(position))}.`;
-  const place = /line (\d+) column (\d+)/u.exec(message);
-  return place ? ` It breaks off at line ${place[1]}, column ${place[2]}.` : text.trim() === "" ? " It is empty." : " It ends too early.";
+  const place = `line ${before.length}, column ${(before.at(-1)?.length ?? 0) + 1}`;
+  return position === text.length ? `It ends too early, at ${place}.` : `It breaks off at ${place}.`;
 }
 
 /** Reads the JSON text of a definition. Errors: one sentence with line and column, at the empty path. */
@@ -68,7 +64,7 @@ export function readDefinitionText(text: string): Result<unknown, PathMessage[]>
     // A stack that runs out on hostile nesting is the document's fault too.
     if (error instanceof RangeError) return fail(whole("Is nested too deeply."));
     if (!(error instanceof SyntaxError)) throw error;
-    return fail(whole(`This is not JSON.${whereIn(text, error.message)}`));
+    return fail(whole(`This is not JSON. ${whereIn(text)}`));
   }
 }
 

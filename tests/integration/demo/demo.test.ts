@@ -9,7 +9,11 @@ import { demoProfiles } from "@/db/demo/seed-profiles";
 import { findCredential } from "@/db/queries/accounts";
 import { deleteBackup } from "@/db/queries/backup-acts";
 import { getBackup, listBackups } from "@/db/queries/backups";
+import { demoDraft, demoRecordings } from "@/db/demo/drivers";
 import { listDevices } from "@/db/queries/devices";
+import { getReport } from "@/db/queries/driver-reports";
+import { findVersion } from "@/db/queries/drivers";
+import { listRecordings, readRecording } from "@/db/queries/recordings";
 import { getProfile } from "@/db/queries/revisions";
 import { listScreens } from "@/db/queries/screens";
 import { profile } from "@/db/schema/profile";
@@ -17,7 +21,10 @@ import { screen } from "@/db/schema/screen";
 import { checkProfile } from "@/lib/profile/check/check-profile";
 import { parseDocument } from "@/lib/profile/parse";
 import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
+import { shippedDrivers } from "@/lib/serial/drivers/shipped";
 import { deviceLimits } from "@/lib/serial/limits";
+import { parseRecording } from "@/lib/serial/recording";
+import { printable } from "@/lib/serial/wire-log";
 import { planChanges } from "@/lib/serial/plan/plan-changes";
 import { verifyPassword } from "@/lib/server/password";
 
@@ -28,6 +35,8 @@ async function counts(): Promise<unknown> {
   const { rows } = await db.execute(sql`
     select (select count(*) from "user") as people, (select count(*) from screen) as screens, (select count(*) from device) as devices,
       (select count(*) from backup) as backups, (select count(*) from backup_content) as contents,
+      (select count(*) from recording) as recordings, (select count(*) from driver_version) as versions,
+      (select count(*) from conformance_report) as reports, (select count(*) from driver_question) as questions,
       (select count(*) from profile) as profiles, (select count(*) from revision) as revisions`);
   return rows[0];
 }
@@ -40,9 +49,44 @@ async function itemsOf<T>(
   return found.value.items;
 }
 
-beforeAll(() => seedDemo(db), 60_000);
+beforeAll(() => seedDemo(db), 300_000);
 
 describe("the demo", () => {
+  it("has recordings without a name or a serial number, a green report of each shipped driver, and a red one of the draft", async () => {
+    const maren = { id: demoId("maren@saltmarsh.example"), role: "maintainer" } as const;
+    const recordings = await itemsOf(listRecordings(db, maren, { ...page, mine: "false" }));
+    expect(recordings).toHaveLength(2);
+    const own = await itemsOf(listRecordings(db, { id: imke, role: "owner" }, { ...page, mine: "true" }));
+    expect(own).toHaveLength(demoRecordings.length);
+    for (const { id, struckOut, exchanges } of own) {
+      expect([struckOut, exchanges > 10]).toEqual([true, true]);
+      const file = await readRecording(db, { id: imke, role: "owner" }, id);
+      const parsed = parseRecording(file.ok ? file.value.content : "");
+      const said = parsed.ok
+        ? parsed.value.lines.map((line) => (line.direction === "event" ? line.text : printable(line.bytes))).join("\n")
+        : "";
+      for (const { serialNumber } of demoDevices) expect(said).not.toContain(serialNumber);
+      expect(said).not.toContain("Upright");
+    }
+    for (const { slug, version } of shippedDrivers) {
+      const found = await findVersion(db, null, { slug, version });
+      expect(found).toMatchObject({
+        ok: true,
+        value: { state: "published", origin: "shipped", report: { green: true } },
+      });
+    }
+    const { slug, version } = demoDraft.definition;
+    expect(await findVersion(db, null, { slug, version })).toEqual({ ok: false, error: "absent" });
+    const draft = await findVersion(db, maren, { slug, version });
+    expect(draft).toMatchObject({ ok: true, value: { state: "draft", report: { green: false } } });
+    const report = await getReport(db, maren, draft.ok ? (draft.value.report?.id ?? "") : "");
+    const failed = report.ok
+      ? report.value.report.sections.filter((section) => section.failed > 0).map(({ name }) => name)
+      : [];
+    // The renamed word passes on a device made from the draft; only the recording refutes it.
+    expect(failed).toEqual(["definition", "recordings"]);
+  });
+
   it("has an account of every role and a second owner, each with the password that is printed", async () => {
     expect(new Set(demoAccounts.map(({ role }) => role))).toEqual(new Set(["owner", "maintainer", "admin"]));
     expect(demoAccounts.filter(({ role }) => role === "owner")).toHaveLength(2);

@@ -4,7 +4,11 @@ import { pool } from "@/db/client";
 import type { Db } from "@/db/client";
 import { listBackups } from "@/db/queries/backups";
 import { listDevices } from "@/db/queries/devices";
+import { listQuestions } from "@/db/queries/driver-questions";
+import { listReports } from "@/db/queries/driver-reports";
+import { listDrivers, listVersions, readDefinition } from "@/db/queries/drivers";
 import { listProfiles } from "@/db/queries/profiles";
+import { listRecordings } from "@/db/queries/recordings";
 import { listRevisions } from "@/db/queries/revisions";
 import { listSteps } from "@/db/queries/run-steps";
 import { listRuns } from "@/db/queries/runs";
@@ -47,10 +51,18 @@ beforeAll(async () => {
       select case when row_number() over (order by p.owner_id = '${owner}' desc) = 1 then '${run}'::uuid else gen_random_uuid() end,
         p.owner_id, p.device_id, p.id, 'kept', 'keeping', 30, 'tab', now(), now() - random() * interval '30 days' from plan p`,
     `insert into run_step (run_id, number, at_ms, kind, entry) select id, n, 0, 'word', '{}' from run, generate_series(0, 2) n where run.owner_id = '${owner}'`,
+    `insert into driver (slug, maker, model) select 's-' || n, 'M' || n, 'M' from generate_series(1, 400) n`,
+    `insert into driver_version (id, slug, version, version_order, definition, hash)
+      select case when d.slug = 's-1' and n = 1 then '${run}'::uuid else gen_random_uuid() end, d.slug, '1.0.' || n, array[1, 0, n], '{}', ${hash}
+      from driver d, generate_series(1, 8) n where d.slug like 's-%'`,
+    `insert into conformance_report (version_id, driver_hash, green, report) select id, ${hash}, false, '{}' from driver_version where slug like 's-%'`,
+    `insert into recording (owner_id, name, driver_slug, driver_version, struck_out, exchanges, lines, content)
+      select u.id, 'R', 's-1', '1.0.1', true, 1, 1, 'x' from "user" u, generate_series(1, 40) n`,
+    `insert into driver_question (driver_slug, asker_id, text) select d.slug, '${owner}', 'T' from driver d, generate_series(1, 8) n`,
     "vacuum analyze",
   ];
   for (const statement of statements) await pool.query(statement);
-}, 120_000);
+}, 300_000);
 
 function nodesOf(node: Node): Node[] {
   return [node, ...(node.Plans ?? []).flatMap(nodesOf)];
@@ -73,6 +85,8 @@ async function planOf(table: string, act: () => Promise<unknown>): Promise<Node[
 const page = { limit: 25 };
 const library = { ...page, mine: "false", fitting: "false" } as const;
 const me = { id: owner ?? "", name: "P", role: "owner", sessionId: device ?? "" } as const;
+
+const maintainer = { id: device ?? "", role: "maintainer" } as const;
 
 const lists: readonly [name: string, table: string, index: string, act: () => Promise<unknown>][] = [
   ["screens by name", "screen", "screen_owner_idx", () => listScreens(db, me.id, page)],
@@ -116,6 +130,37 @@ const lists: readonly [name: string, table: string, index: string, act: () => Pr
     "run_step",
     "run_step_run_id_number_pk",
     () => listSteps(db, { ownerId: me.id, id: run ?? "" }, { after: -1, limit: 100 }),
+  ],
+  ["drivers by name", "driver", "driver_name_idx", () => listDrivers(db, maintainer, page)],
+  [
+    "versions of a driver",
+    "driver_version",
+    "driver_version_order_idx",
+    () => listVersions(db, maintainer, "s-1", page),
+  ],
+  [
+    "a version by its name",
+    "driver_version",
+    "driver_version_key",
+    () => readDefinition(db, maintainer, { slug: "s-1", version: "1.0.1" }),
+  ],
+  [
+    "reports of a version",
+    "conformance_report",
+    "conformance_report_version_idx",
+    () => listReports(db, maintainer, { ...page, slug: "s-1", version: "1.0.1" }),
+  ],
+  [
+    "recordings of a person",
+    "recording",
+    "recording_owner_idx",
+    () => listRecordings(db, me, { ...page, mine: "true" }),
+  ],
+  [
+    "questions about a driver",
+    "driver_question",
+    "driver_question_driver_idx",
+    () => listQuestions(db, maintainer, "s-1", page),
   ],
   ["sessions of a person", "session", "session_user_idx", () => listSessions(db, me)],
   ["a session by its token", "session", "session_pkey", () => findSessionUser(db, "0")],

@@ -33,12 +33,13 @@ export const PUT = withRoute(
   async ({ user, params, body, request }) => {
     const revision = requiredVersion(request);
     if (!revision.ok) return revision.error;
-    const definition = storableDefinition(body.definition, params);
-    if (!definition.ok) return respond(definition, { "not-a-definition": 422 });
-    const change = { definition: definition.value, note: body.note };
+    const storable = storableDefinition(body.definition, params);
+    if (!storable.ok) return respond(storable, { "not-a-definition": 422 });
+    const { definition } = storable.value;
+    const change = { definition, note: body.note };
     const changed = await changeDraft(db, user, { ...params, revision: revision.value }, change);
     if (!changed.ok) return respond(changed, { absent: 404, stale: 412, published: 409 });
-    return respond({ ok: true, value: detailOf(changed.value, definition.value) }, {}, withEtag);
+    return respond({ ok: true, value: detailOf(changed.value, definition) }, {}, withEtag);
   },
 );
 

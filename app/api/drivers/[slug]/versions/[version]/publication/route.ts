@@ -20,7 +20,7 @@ export const POST = withRoute(
     const revision = requiredVersion(request);
     if (!revision.ok) return revision.error;
     const published = await publishVersion(db, user, { ...params, revision: revision.value });
-    const refusals = { absent: 404, stale: 412, "not-a-candidate": 409, "no-report": 409, red: 409 } as const;
+    const refusals = { absent: 404, stale: 412, "not-a-candidate": 409, red: 409 } as const;
     return respond(published, refusals, (version) => ({ headers: { etag: etag(version.revision) } }));
   },
 );
