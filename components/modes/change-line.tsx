@@ -14,7 +14,18 @@ const MOST_TOLD = 6;
 export function ChangeLine() {
   const refusal = useModes((state) => state.refusal);
   const note = useModes((state) => state.note);
+  const errors = useModes((state) => state.errors);
   const { letGoAndTurn, undo, dismiss } = useModesActs();
+  // What belongs to a field stands under the field.
+  const others = Object.entries(errors).filter(([path]) => !(path in figureWords));
+  if (others.length > 0)
+    return (
+      <ul role="alert" className="border-l-3 my-2 border-halt py-1 pl-3">
+        {others.map(([path, message]) => (
+          <li key={path}>This was not taken. {message}</li>
+        ))}
+      </ul>
+    );
   if (refusal !== null) {
     const { figure, value, by } = refusal;
     return (

@@ -18,7 +18,9 @@ import type { FitConstraint } from "@/lib/timing/fit/fit-types";
 export function MiddleColumn() {
   const answer = useModes((state) => state.answer);
   const follows = useModes((state) => followsSource(state.choices));
-  if (answer === null) return <p className="gutter py-6 text-muted">Getting the screen…</p>;
+  const hasErrors = useModes((state) => Object.keys(state.errors).length > 0);
+  if (answer === null)
+    return <div className="gutter py-6 text-muted">{hasErrors ? <ChangeLine /> : "Getting the screen…"}</div>;
   const { hand, clock, request } = answer;
   return (
     <section aria-labelledby="answer-head" className="gutter min-w-0 py-4 lg:px-7">

@@ -1,6 +1,6 @@
 "use client";
 
-import { useEffect } from "react";
+import { useEffect, useState } from "react";
 import { useScreens } from "@/components/screens/use-screens";
 import { useSignedIn } from "@/components/shell/signed-in";
 import { useModes, useModesActs } from "@/components/modes/modes-context";
@@ -15,13 +15,17 @@ export function useOwnScreen(): string | null {
   const user = useSignedIn();
   const { data, isError } = useScreens();
   const screen = useModes((state) => state.choices.screen);
-  const { chooseScreen } = useModesActs();
+  const { chooseScreen, updateScreen } = useModesActs();
+  const [wasAway, setWasAway] = useState(false);
   const own = data?.find(({ id }) => id === screen.id);
   const isAway = screen.envelope === null && (user === null || isError || (data !== undefined && own === undefined));
   useEffect(() => {
     if (own !== undefined && JSON.stringify(own.envelope) !== JSON.stringify(screen.envelope))
-      chooseScreen({ id: own.id, envelope: own.envelope });
-    else if (isAway) chooseScreen(DEFAULT_CHOICES.screen);
-  }, [own, isAway, screen, chooseScreen]);
-  return isAway ? "The screen of the link is not among yours: a 525-line television stands in." : null;
+      updateScreen({ id: own.id, envelope: own.envelope });
+    else if (isAway) {
+      chooseScreen(DEFAULT_CHOICES.screen);
+      queueMicrotask(() => setWasAway(true));
+    }
+  }, [own, isAway, screen, chooseScreen, updateScreen]);
+  return isAway || wasAway ? "The screen of the link is not among yours: a 525-line television stands in." : null;
 }

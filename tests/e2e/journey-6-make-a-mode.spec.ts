@@ -21,7 +21,9 @@ async function copiedModeline(page: Page): Promise<RasterTiming> {
 
 /** The raster as the LF-8 tells it of its output: clock in kHz, parts across, parts down. */
 function asTold({ pixelClockHz, horizontal, vertical }: RasterTiming): string {
-  const parts = [horizontal, vertical].map(({ active, frontPorch, sync, backPorch }) => [active, frontPorch, sync, backPorch, "NEG"].join(","));
+  const parts = [horizontal, vertical].map(({ active, frontPorch, sync, backPorch }) =>
+    [active, frontPorch, sync, backPorch, "NEG"].join(","),
+  );
   return `OUT:RASTER=${pixelClockHz / 1000},${parts.join(",")},P`;
 }
 
@@ -65,9 +67,13 @@ test("what fits nowhere says why with its figures, and the nearest that does fit
   await figure(page, "Lines, lines").fill("270");
   await expect(none(page)).toHaveText(/270 lines at 60 Hz don’t fit this screen/u);
   // 290 lines at 60 Hz are 17.4 kHz; the preset's band for 525-line televisions ends 1 % above 15.734 kHz.
-  await expect(page.locator("[data-none-fits]")).toContainText(/290 in all with 20 of blanking; at 60\sHz that is 17\.4\skHz and this screen ends at 15\.892\skHz/u);
+  await expect(page.locator("[data-none-fits]")).toContainText(
+    /290 in all with 20 of blanking; at 60\sHz that is 17\.4\skHz and this screen ends at 15\.892\skHz/u,
+  );
   await expect(page.getByRole("img", { name: /wanted \(17\.400\skHz, 60\.00\sHz\) does not fit/u })).toBeVisible();
-  const nearest = page.getByRole("table", { name: "The nearest rasters that fit" }).getByRole("button", { name: /lines/u });
+  const nearest = page
+    .getByRole("table", { name: "The nearest rasters that fit" })
+    .getByRole("button", { name: /lines/u });
   await nearest.nth(1).click();
   await expect(nearest.nth(1)).toHaveAttribute("aria-pressed", "true");
   await expect(foot(page).getByRole("link", { name: "Try on the bench" })).toBeVisible();
@@ -89,7 +95,9 @@ test("a modeline is pasted, with its errors named, fills the page, and is copied
   expect(await copiedModeline(page)).toEqual(read.ok ? read.value.timing : null);
 });
 
-test("handles and locks: a porch is moved by key, what else changed is said, and what is kept holds", async ({ page }) => {
+test("handles and locks: a porch is moved by key, what else changed is said, and what is kept holds", async ({
+  page,
+}) => {
   await page.goto("/modes?device=lanternfield-lf8&clock=27&raster=27_1440.38.124.114_240.4.3.15_pnn");
   const handle = page.getByRole("slider", { name: "Front porch", exact: true });
   await expect(handle).toHaveAttribute("aria-valuenow", "38");

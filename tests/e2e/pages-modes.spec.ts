@@ -4,7 +4,10 @@ import { expectNoSidewaysScroll, PHONE, preferTheme, register, signInAs, THEMES 
 const NONE_FITS = "/modes?lines=270&rate=60&width=1440&keep=rate&device=lanternfield-lf8";
 
 for (const theme of THEMES) {
-  test(`a mode that fits, and one that fits nowhere, by ${theme}: no axe violation`, async ({ page, expectAccessible }) => {
+  test(`a mode that fits, and one that fits nowhere, by ${theme}: no axe violation`, async ({
+    page,
+    expectAccessible,
+  }) => {
     await preferTheme(page, theme);
     await page.goto("/modes?device=lanternfield-lf8");
     await expect(page.getByRole("heading", { name: "240 lines at 60 Hz fit." })).toBeVisible();
@@ -33,6 +36,7 @@ test("a link with bad values falls back, and says so", async ({ page }) => {
   await page.goto("/modes?lines=many&device=none-such&screen=6f0f3a52-6f4e-4d0e-9f3b-0c6c1a4b7a11");
   await expect(page.getByText("“lines” of the link can't be read")).toBeVisible();
   await expect(page.getByText("“device” of the link can't be read")).toBeVisible();
+  await expect(page.getByText("The screen of the link is not among yours")).toBeVisible();
   await expect(page.getByLabel("for this screen")).toHaveValue("bt470-525");
   await expect(page.getByRole("textbox", { name: "Lines, lines" })).toHaveValue("240");
 });
@@ -46,7 +50,9 @@ test("a raster outside the screen is not tried, and what stops it is said", asyn
   await expect(page.getByRole("link", { name: "Try on the bench" })).toBeVisible();
 });
 
-test("an owner's own screens lead the list, and a mode goes into a new profile, then into its next revision", async ({ page }) => {
+test("an owner's own screens lead the list, and a mode goes into a new profile, then into its next revision", async ({
+  page,
+}) => {
   await register(page, "/modes");
   await page.getByRole("button", { name: "Use in a profile" }).click();
   const dialog = page.getByRole("dialog");

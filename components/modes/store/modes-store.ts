@@ -1,5 +1,6 @@
 import { createStore, type StoreApi } from "zustand/vanilla";
 import type { Remedy } from "@/lib/profile/finding";
+import type { PathMessage } from "@/lib/result";
 import { editableFigures, type EditFigure } from "@/lib/timing/fit/editable-figures";
 import type { EditedFigure } from "@/lib/timing/fit/change-figure";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
@@ -37,7 +38,7 @@ export type ModesState = {
   readonly note: ChangeNote | null;
   /** What is kept stood in the way of the figure that was typed last. */
   readonly refusal: Refusal | null;
-  /** Why a typed figure was not taken, by figure. */
+  /** Why a figure or a choice was not taken, by the member of the request that is to blame. */
   readonly errors: Readonly<Partial<Record<string, string>>>;
 };
 
@@ -59,6 +60,9 @@ function othersBetween(before: RasterTiming | null, after: RasterTiming | null, 
     .map((name) => ({ figure: name, from: from[name], to: to[name] }));
 }
 
+const errorsOf = (problems: readonly PathMessage[]) =>
+  Object.fromEntries(problems.map(({ path, message }) => [path, message]));
+
 const handOf = ({ answer }: ModesState): RasterTiming | null => answer?.hand?.timing ?? null;
 
 function createActs(store: StoreApi<ModesState>) {
@@ -70,7 +74,7 @@ function createActs(store: StoreApi<ModesState>) {
     if (!answer.ok && choices.screen.envelope !== null) {
       store.setState({
         refusal: null,
-        errors: Object.fromEntries(answer.error.map(({ path, message }) => [path, message])),
+        errors: errorsOf(answer.error),
       });
       return;
     }
@@ -125,6 +129,8 @@ function createActs(store: StoreApi<ModesState>) {
       change((choices, hand) => (hand === null ? choices : takeRemedy(choices, hand, remedy))),
     backToBest: () => change(backToBest),
     chooseScreen: (screen: ModesScreen) => change((choices) => ({ ...withoutPick(choices), screen })),
+    /** The same screen, as it is known now: a raster that was picked for it stays. */
+    updateScreen: (screen: ModesScreen) => change((choices) => ({ ...choices, screen })),
     chooseDevice: (device: ModesDevice | null) => change((choices) => ({ ...withoutPick(choices), device })),
     chooseSource: (source: SourceFormat | null) => change((choices) => ({ ...choices, source })),
     undo: () => {
@@ -151,7 +157,7 @@ export function createModesStore(choices: ModesChoices): ModesStore {
     answer: answer.ok ? answer.value : null,
     note: null,
     refusal: null,
-    errors: {},
+    errors: answer.ok || choices.screen.envelope === null ? {} : errorsOf(answer.error),
   }));
   return { store, acts: createActs(store) };
 }

@@ -137,6 +137,35 @@ describe("a raster changed by hand", () => {
   });
 });
 
+describe("a screen", () => {
+  const own = {
+    id: "own",
+    envelope: { name: "Wide CRT", bands: [{ lineRateHz: [15_450, 15_892] as const, fieldRateHz: [48, 62] as const }] },
+  };
+
+  it("that is only known better now leaves the raster that was picked; another one does not", () => {
+    const page = at();
+    const second = page.store.getState().answer?.candidates[1];
+    if (second === undefined) throw new Error("There is more than one");
+    page.acts.pick(second.timing);
+    page.acts.updateScreen(own);
+    expect(handOf(page).timing).toEqual(second.timing);
+    page.acts.chooseScreen(own);
+    expect(handOf(page)).toBe(page.store.getState().answer?.candidates[0]);
+  });
+
+  it("whose bands are crossed is not taken, and the page says why", () => {
+    const page = at();
+    const before = page.store.getState().choices;
+    page.acts.chooseScreen({
+      id: "bad",
+      envelope: { name: "Bad", bands: [{ lineRateHz: [16_000, 15_000], fieldRateHz: [48, 62] }] },
+    });
+    expect(page.store.getState().choices).toBe(before);
+    expect(Object.values(page.store.getState().errors)).toEqual(["The lower end is above the upper one."]);
+  });
+});
+
 describe("the findings", () => {
   it("name the envelope's limit and source, and what was not known", () => {
     const page = at({ raster: standardRaster("480p60").timing, byHand: true });
