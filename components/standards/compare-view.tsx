@@ -4,9 +4,10 @@ import { useMemo } from "react";
 import type { ScreenOption } from "@/components/library/use-my-screen";
 import { fitOf } from "@/components/screens/fit-words";
 import { FigureTable } from "@/components/standards/figure-table";
+import { modesHref } from "@/components/standards/modes-href";
 import { documentWords, entryWords } from "@/components/standards/standard-rows";
 import type { StandardsState } from "@/components/standards/standards-address";
-import { Button } from "@/components/ui/button";
+import { Button, ButtonLink } from "@/components/ui/button";
 import { SelectField } from "@/components/ui/field";
 import { FindingWord } from "@/components/ui/finding-icon";
 import { PageHead } from "@/components/ui/page-head";
@@ -16,7 +17,6 @@ import { ModeGlyph } from "@/components/video/mode-glyph";
 import { TracePair } from "@/components/video/trace-pair";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
 import type { CatalogueRecord } from "@/lib/timing/catalogue/search-catalogue";
-import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { formatModeline } from "@/lib/timing/modeline/format-modeline";
 
 export type CompareViewProps = {
@@ -61,8 +61,8 @@ export function CompareView({ left, right, laid, screen, options, onChange, onBa
           <TracePair of="line" left={left} right={right} laid={laid} />
           <TracePair of="field" left={left} right={right} laid={laid} />
           <div className="divide-y divide-line border-t border-line">
-            <Entry entry={left} envelope={screen.envelope} />
-            <Entry entry={right} envelope={screen.envelope} />
+            <Entry entry={left} screen={screen} />
+            <Entry entry={right} screen={screen} />
           </div>
         </div>
         <div className="min-w-0 px-4 pt-5 md:px-7">
@@ -101,10 +101,11 @@ function Choices({ left, right, screen, options, onChange }: Omit<CompareViewPro
 
 type EntryProps = {
   readonly entry: CatalogueRecord;
-  readonly envelope: ScreenEnvelope | null;
+  readonly screen: ScreenOption;
 };
 
-function Entry({ entry, envelope }: EntryProps) {
+function Entry({ entry, screen }: EntryProps) {
+  const { envelope } = screen;
   const copy = useCopy();
   const modeline = formatModeline(entry.timing);
   const fit = envelope === null ? null : fitOf(entry.timing, envelope);
@@ -117,6 +118,9 @@ function Entry({ entry, envelope }: EntryProps) {
           {documentWords(entry)}
           {entry.note === undefined ? "" : `; ${entry.note}`}
         </span>
+        <ButtonLink size="small" href={modesHref(entry.timing, screen)}>
+          Open in Modes
+        </ButtonLink>
         <Button size="small" onClick={() => copy(modeline, `modeline of ${entry.name}`)}>
           Copy modeline
         </Button>

@@ -1,7 +1,10 @@
 "use client";
 
-import { Copy } from "lucide-react";
+import { AudioWaveform, Copy } from "lucide-react";
+import Link from "next/link";
 import { useMemo } from "react";
+import type { ScreenOption } from "@/components/library/use-my-screen";
+import { modesHref } from "@/components/standards/modes-href";
 import { documentWords, entryWords } from "@/components/standards/standard-rows";
 import type { StandardRow } from "@/components/standards/standard-rows";
 import type { Order, StandardsState } from "@/components/standards/standards-address";
@@ -101,7 +104,7 @@ const fitsColumn: Column = {
 
 /** Columns that a narrower table leaves out, by the width in px that it needs to have them. */
 const roomFor: Readonly<Partial<Record<Column["id"], number>>> = {
-  clock: 1240,
+  clock: 1480,
   front: 1240,
   back: 1240,
   picture: 1240,
@@ -114,7 +117,7 @@ const BLOCKS_UP_TO_PX = 703;
 
 const hasRoom = (column: Column, widthPx: number) => widthPx <= BLOCKS_UP_TO_PX || widthPx >= (roomFor[column.id] ?? 0);
 
-function useColumns(picked: readonly string[], hasScreen: boolean, onPick: (id: string) => void): readonly Column[] {
+function useColumns(picked: readonly string[], screen: ScreenOption, onPick: (id: string) => void): readonly Column[] {
   const copy = useCopy();
   return useMemo(() => {
     const pickColumn: Column = {
@@ -148,30 +151,47 @@ function useColumns(picked: readonly string[], hasScreen: boolean, onPick: (id: 
       align: "end",
       phone: "bare",
       cell: (row) => (
-        <IconButton
-          label={`Copy modeline of ${entryWords(row)}`}
-          onClick={() => copy(formatModeline(row.timing), `modeline of ${row.name}`)}
-        >
-          <Copy aria-hidden size={16} />
-        </IconButton>
+        <span className="inline-flex">
+          <Link
+            href={modesHref(row.timing, screen)}
+            aria-label={`Open in Modes: ${entryWords(row)}`}
+            title="Open in Modes"
+            className="inline-flex size-9 items-center justify-center rounded-control border border-transparent text-muted hover:border-edge hover:text-text"
+          >
+            <AudioWaveform aria-hidden size={16} />
+          </Link>
+          <IconButton
+            label={`Copy modeline of ${entryWords(row)}`}
+            onClick={() => copy(formatModeline(row.timing), `modeline of ${row.name}`)}
+          >
+            <Copy aria-hidden size={16} />
+          </IconButton>
+        </span>
       ),
     };
-    return [pickColumn, nameColumn, documentColumn, ...figureColumns, ...(hasScreen ? [fitsColumn] : []), actsColumn];
-  }, [picked, hasScreen, onPick, copy]);
+    return [
+      pickColumn,
+      nameColumn,
+      documentColumn,
+      ...figureColumns,
+      ...(screen.envelope === null ? [] : [fitsColumn]),
+      actsColumn,
+    ];
+  }, [picked, screen, onPick, copy]);
 }
 
 export type StandardsTableProps = {
   readonly rows: readonly StandardRow[];
-  readonly hasScreen: boolean;
+  readonly screen: ScreenOption;
   readonly state: StandardsState;
   readonly onPick: (id: string) => void;
   readonly onOrder: (order: StandardsState["order"]) => void;
 };
 
 /** The published rasters with their figures; a tick takes one into the comparison. */
-export function StandardsTable({ rows, hasScreen, state, onPick, onOrder }: StandardsTableProps) {
+export function StandardsTable({ rows, screen, state, onPick, onOrder }: StandardsTableProps) {
   const [attach, widthPx] = useWidth(1384);
-  const all = useColumns(state.picked, hasScreen, onPick);
+  const all = useColumns(state.picked, screen, onPick);
   const columns = useMemo(() => all.filter((column) => hasRoom(column, widthPx)), [all, widthPx]);
   return (
     <div ref={attach}>

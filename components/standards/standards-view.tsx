@@ -56,7 +56,7 @@ export function StandardsView() {
         {rows.length > 0 ? (
           <StandardsTable
             rows={rows}
-            hasScreen={screen.envelope !== null}
+            screen={screen}
             state={state}
             onPick={onPick}
             onOrder={(order) => change({ order })}
