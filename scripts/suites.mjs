@@ -101,7 +101,7 @@ export const stages = [
       vitestSuite("Database", "integration", 40),
     ],
   ],
-  [[vitestSuite("Faults", "faults", 105), vitestSuite("Peers", "peers", 15)]],
+  [[vitestSuite("Faults", "faults", 100), vitestSuite("Peers", "peers", 30)]],
   [[browserSuite(420)]],
 ];
 

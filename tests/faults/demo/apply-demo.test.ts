@@ -26,7 +26,7 @@ async function deviceOf(device: DemoDevice): Promise<Rig> {
   const values = Object.assign({}, ...device.backups.map(({ changes }) => changes)) as Record<string, string | number>;
   const last = device.backups.at(-1);
   const { serialNumber, firmware } = device;
-  return connect(compiledDriver(shippedDriver(device.driverSlug)), { values, serialNumber, firmware, activeSlot: last?.activeSlot, source: last?.source ?? null });
+  return connect(compiledDriver(shippedDriver(device.driverSlug)), { values, serialNumber, firmware, activeSlot: last?.activeSlot, source: last?.source ?? null }, "none");
 }
 
 function envelopeOf(device: DemoDevice): ScreenEnvelope {

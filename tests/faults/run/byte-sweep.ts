@@ -1,4 +1,5 @@
 import { describe, expect, it } from "vitest";
+import type { WireDirection } from "@/lib/serial/simulator/wire-fault";
 import { BYTE_KINDS, type ByteKind } from "./byte-faults";
 import { CALM, type Case, type Scenario } from "./case-id";
 import type { DeviceName } from "./drivers";
@@ -23,8 +24,10 @@ const ENDS: Readonly<Record<Scenario, readonly string[]>> = {
   "put-back": ["put-back"],
 };
 
-/** A kind that lasts as it is: one strike or many make no difference. */
-const LASTS_ANYWAY: readonly ByteKind[] = ["stall"];
+/** A stall lasts as it is, and a device that speaks while it starts would start for ever. */
+function canLast(kind: ByteKind, direction: WireDirection): boolean {
+  return kind !== "stall" && !(kind === "restart" && direction === "device-to-host");
+}
 
 /** Declares the tests of one device: every kind of fault at its bytes, each way, once and lasting, over a backup, a run and a putting back. @param least cases in all */
 export function describeByteSweep(device: DeviceName, strides: Strides, least: number): void {
@@ -36,17 +39,16 @@ export function describeByteSweep(device: DeviceName, strides: Strides, least: n
       const { once, lasting } = strides[scenario];
       for (const direction of directionsOf(kind)) {
         await sweepBytes(tally, over, kind, direction, false, { stride: once, phase });
-        if (!LASTS_ANYWAY.includes(kind)) await sweepBytes(tally, over, kind, direction, true, { stride: lasting, phase: phase + 2 });
+        if (canLast(kind, direction)) await sweepBytes(tally, over, kind, direction, true, { stride: lasting, phase: phase + 2 });
       }
       expect(tally.broken).toEqual([]);
       // Not vacuous: it struck, and every run came to one of its ends.
-      expect(tally.cases).toBeGreaterThan(2);
+      expect(tally.cases).toBeGreaterThan(1);
       expect(ENDS[scenario]).toEqual(expect.arrayContaining([...tally.ends]));
     });
   });
 
   it(`has lived through ${least} cases at least, ${device}`, () => {
-    console.log("COUNT", device, livedCases());
     expect(livedCases()).toBeGreaterThanOrEqual(least);
   });
 }

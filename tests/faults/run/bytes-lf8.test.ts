@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("lf8", { backup: { once: 19, lasting: 97 }, run: { once: 149, lasting: 401 }, "put-back": { once: 101, lasting: 307 } }, 100);
+describeByteSweep("lf8", { backup: { once: 47, lasting: 193 }, run: { once: 401, lasting: 1201 }, "put-back": { once: 301, lasting: 907 } }, 900);

@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("ternwick", { backup: { once: 1, lasting: 5 }, run: { once: 13, lasting: 37 }, "put-back": { once: 9, lasting: 29 } }, 100);
+describeByteSweep("ternwick", { backup: { once: 3, lasting: 11 }, run: { once: 23, lasting: 61 }, "put-back": { once: 11, lasting: 41 } }, 3500);

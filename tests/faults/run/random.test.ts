@@ -85,7 +85,7 @@ const setting = fc.record({
 });
 
 /** Runs of a seed: the same in every run of the tests. */
-const RUNS = 150;
+const RUNS = 100;
 /** A busy machine is slow; nothing here measures time. */
 const PATIENCE_MS = 3_600_000;
 

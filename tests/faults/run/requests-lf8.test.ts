@@ -1,3 +1,3 @@
 import { describeRequestSweep } from "./request-sweep";
 
-describeRequestSweep("lf8", [1, 3, 4], 100);
+describeRequestSweep("lf8", [3, 8, 11], 550);

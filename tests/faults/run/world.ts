@@ -3,6 +3,7 @@ import type { TakenBackup } from "@/lib/serial/backup/types";
 import type { Clock } from "@/lib/serial/clock";
 import { createVirtualClock, type VirtualClock } from "@/lib/serial/clock/virtual-clock";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
+import type { ActionName } from "@/lib/serial/driver/definition";
 import { toNative } from "@/lib/serial/driver/neutral";
 import type { NativeValue, NativeValues } from "@/lib/serial/native";
 import { compiledDriver } from "@/lib/serial/plan/compiled-driver";
@@ -154,6 +155,8 @@ async function prepare({ device, powerOnSlot, dirty, way }: WorldOptions, driver
   return made;
 }
 
+const TIMER_ORDERS: readonly ActionName[] = ["extendTimer", "confirmTimer", "disarmTimer"];
+
 /** How a fault inside the device goes on. */
 function operationFault(kind: DeviceFault): OperationFault {
   const faults: Readonly<Record<DeviceFault, OperationFault>> = {
@@ -215,6 +218,8 @@ export async function createWorld(options: WorldOptions): Promise<World> {
     if (operation.kind === "action" && operation.name === "armTimer") world.armedOver = device.working;
     const stores = operation.kind === "write" || (operation.kind === "action" && operation.name === "commit");
     if (next === null || (!stores && ["ignored", "other", "torn"].includes(next))) return undefined;
+    // By the device's word a refusal of these says that no timer is armed: a device that lies there is another device.
+    if (next === "refused" && operation.kind === "action" && TIMER_ORDERS.includes(operation.name)) return undefined;
     const fault = operationFault(next);
     world.deviceLied ||= next === "other" || next === "torn";
     next = null;

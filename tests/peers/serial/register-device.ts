@@ -14,7 +14,7 @@ const input = (register: number, words: number) => ({ register, words, table: "i
 export const registerDevice: DriverDefinition = driverDefinitionSchema.parse({
   format: DRIVER_FORMAT, formatVersion: 1,
   maker: "Testbench", model: "R200", slug: "testbench-r200", version: "1.0.0",
-  firmware: { min: "", max: "", updateErasesSlots: false },
+  firmware: { min: "1.0", max: "1.0", updateErasesSlots: false },
   transport: { baudRate: 115_200, dataBits: 8, stopBits: 1, parity: "even", flowControl: "none" },
   protocol: { kind: "modbus-rtu", unit: 9, maxReadGap: 0 },
   pace: { replyTimeoutMs: 2000, retries: 1, gapMs: 0, inFlight: 1, workMs: 0 },
@@ -28,7 +28,7 @@ export const registerDevice: DriverDefinition = driverDefinitionSchema.parse({
   },
   inputs: [{ name: "digital-1", label: "digital", accepts: [] }],
   status: {
-    identity: { kind: "modbus", fields: [{ name: "maker", field: input(0, 8) }, { name: "model", field: input(8, 4) }] },
+    identity: { kind: "modbus", fields: [{ name: "maker", field: input(0, 8) }, { name: "model", field: input(8, 4) }, { name: "firmware", field: input(12, 2) }] },
     activeSlot: { kind: "modbus", fields: [{ name: "slot", field: { register: 0 } }] },
   },
   actions: {},

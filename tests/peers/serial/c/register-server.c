@@ -2,7 +2,7 @@
  * A Modbus RTU server on libmodbus that knows nothing of the project: 200 holding registers, and who it is in input registers.
  *
  * Usage: register-server DEVICE BAUD UNIT. Holding register i holds (i * 40503 + 7) mod 65536 until it is written.
- * Input registers, two letters each: 0 "Testbench" in 8 registers, 8 "R200" in 4.
+ * Input registers, two letters each: 0 "Testbench" in 8 registers, 8 "R200" in 4, 12 "1.0" in 2.
  */
 #include <errno.h>
 #include <modbus/modbus.h>
@@ -10,7 +10,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-enum { HOLDING = 200, INPUTS = 12, MAKER_AT = 0, MODEL_AT = 8 };
+enum { HOLDING = 200, INPUTS = 14, MAKER_AT = 0, MODEL_AT = 8, FIRMWARE_AT = 12 };
 
 static void put_text(uint16_t *registers, int words, const char *text)
 {
@@ -31,6 +31,7 @@ int main(int count, char **args)
   for (int i = 0; i < HOLDING; i++) memory->tab_registers[i] = (uint16_t)(i * 40503u + 7u);
   put_text(memory->tab_input_registers + MAKER_AT, 8, "Testbench");
   put_text(memory->tab_input_registers + MODEL_AT, 4, "R200");
+  put_text(memory->tab_input_registers + FIRMWARE_AT, 2, "1.0");
   modbus_set_slave(server, atoi(args[3]));
   if (modbus_connect(server) == -1) {
     fprintf(stderr, "%s: %s\n", args[1], modbus_strerror(errno));
