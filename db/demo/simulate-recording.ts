@@ -9,12 +9,17 @@ import { createSimulatedDevicePort } from "@/lib/serial/simulator/simulated-devi
 import { createWireLog } from "@/lib/serial/wire-log";
 
 /**
- * A recording as the bench saves one, struck out: a session over a wire with a simulated device, everything read, each of the
- * named slots made active.
+ * A recording as the bench saves one, struck out unless told otherwise: a session over a wire with a simulated device,
+ * everything read, each of the named slots made active.
  */
 export async function simulateRecording(
   driver: CompiledDriver,
-  { at, slots, ...state }: DemoState & { readonly at: string; readonly slots: readonly number[] },
+  {
+    at,
+    slots,
+    strikeOut = true,
+    ...state
+  }: DemoState & { readonly at: string; readonly slots: readonly number[]; readonly strikeOut?: boolean },
 ): Promise<string> {
   const clock = createVirtualClock({ wallStartMs: Date.parse(at) });
   const model = createDeviceModel(driver, { clock, ...state });
@@ -32,5 +37,5 @@ export async function simulateRecording(
     if (!recalled.ok || !active.ok) throw new Error(`The demo device did not make slot ${slot} active`);
   }
   await clock.run(session.close());
-  return saveRecording(driver, wireLog.entries(), { strikeOut: true });
+  return saveRecording(driver, wireLog.entries(), { strikeOut });
 }
