@@ -103,7 +103,7 @@ function spanOfKin(kin: readonly Sample[]): BlankingSpan {
 }
 
 /** Kin are neighbours in the sorted samples, so there are few sets of them: each is put together once. */
-const spansOfKin = new Map<string, BlankingSpan>();
+const spansOfKin = new Map<number, BlankingSpan>();
 
 /**
  * What BT.470 and the CTA-861 rasters within 3 % of a line rate span together.
@@ -117,7 +117,7 @@ export function blankingSpan(rateHz: number): BlankingSpan | undefined {
   const first = samples.findIndex(isKin);
   if (first < 0) return undefined;
   const last = samples.findLastIndex(isKin);
-  const key = `${first} ${last}`;
+  const key = first * samples.length + last;
   const known = spansOfKin.get(key);
   if (known !== undefined) return known;
   const span = spanOfKin(samples.slice(first, last + 1));

@@ -1,3 +1,7 @@
+import { checkProfile } from "@/lib/profile/check/check-profile";
+import { PROFILE_FORMAT, PROFILE_VERSION } from "@/lib/profile/document";
+import { lanternfieldLf8 } from "@/lib/serial/drivers/lanternfield-lf8";
+import { deviceLimits } from "@/lib/serial/limits";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { fitRaster } from "@/lib/timing/fit/fit-raster";
@@ -36,7 +40,21 @@ function fit(request: Parameters<typeof fitRaster>[0], fits: boolean): void {
   if (!result.ok || result.value.fits.length > 0 !== fits) throw new Error("not the outcome that is measured");
 }
 
-/** How long the engine takes: a fit in a wide band, the answer when nothing fits, the whole catalogue against a screen. */
+const lf8 = deviceLimits(lanternfieldLf8);
+
+/** 24 modes of which a television takes none, each shown by a slot: the most that a check has to search for. */
+const misfits = catalogue.filter(({ timing }) => timing.pixelClockHz / timing.vertical.active > 1e5).slice(-24);
+const misfitDocument = {
+  format: PROFILE_FORMAT,
+  version: PROFILE_VERSION,
+  modes: misfits.map(({ id, timing }) => ({ key: id, timing })),
+  slots: misfits.map(({ id }, number) => ({ number: number + 1, mode: id })),
+} as const;
+
+/**
+ * How long the engine takes: a fit in a wide band, the answer when nothing fits, a check that searches for the nearest
+ * rasters, the whole catalogue against a screen.
+ */
 export function measureTiming(): Promise<TimingMeasurement[]> {
   const television = screenPresets[0]?.envelope ?? wide;
   const figures: TimingMeasurement[] = [
@@ -55,6 +73,22 @@ export function measureTiming(): Promise<TimingMeasurement[]> {
     {
       name: "270 lines that fit nowhere, with reasons and the nearest",
       value: leastMs(() => fit({ wish: { ...wish, activeLines: 270 }, screen: television, device }, false)),
+      unit: "ms",
+      limit: 100,
+    },
+    {
+      name: "a check of 24 modes that do not fit, with the nearest rasters",
+      value: leastMs(() => {
+        const document = {
+          ...misfitDocument,
+          modes: [...misfitDocument.modes],
+          slots: [...misfitDocument.slots],
+        };
+        const stops = checkProfile({ document, device: lf8, screen: television }).filter(
+          ({ rule }) => rule === "screen.line-rate",
+        );
+        if (stops.length !== 24) throw new Error("not the document that is measured");
+      }),
       unit: "ms",
       limit: 100,
     },

@@ -7,6 +7,7 @@ import type { Finding, Remedy } from "@/lib/profile/finding";
 import { modePath } from "@/lib/profile/paths";
 import { limitSourceText, listText, microsecondText, spanText, withUnit } from "@/lib/profile/words";
 import type { CheckContext, JudgedMode } from "./context";
+import { nearestWay } from "./nearest-raster";
 import { leaveOutAll, otherModeRemedies } from "./remedies";
 import { shiftRemedy, type BlankingShift } from "./shift-blanking";
 
@@ -39,7 +40,11 @@ function shiftToMinimum(timing: RasterTiming, rule: MinimumRule, count: number):
 }
 
 function otherWays(context: CheckContext, mode: JudgedMode): Remedy[] {
-  return [...otherModeRemedies(context, mode.changedUsers, mode), ...leaveOutAll(mode.changedUsers)];
+  return [
+    ...otherModeRemedies(context, mode.changedUsers, mode),
+    ...nearestWay(context, mode).remedies,
+    ...leaveOutAll(mode.changedUsers),
+  ];
 }
 
 function minimumFindings(context: CheckContext, mode: TimedMode, screen: ScreenEnvelope): Finding[] {
@@ -62,7 +67,7 @@ function minimumFindings(context: CheckContext, mode: TimedMode, screen: ScreenE
         limit: min,
         unit: "µs",
         sentence: `Mode ${mode.key}'s ${name} is ${microsecondText(verdict.measured)}, too short for this screen.`,
-        detail: `${screen.name} needs ${microsecondText(min)} at least${nearestCount ? `, which is ${withUnit(nearestCount.count, nearestCount.unit)} here` : ""}.`,
+        detail: `${screen.name} needs ${microsecondText(min)} at least${nearestCount ? `, which is ${withUnit(nearestCount.count, nearestCount.unit)} here` : ""}.${nearestWay(context, mode).words}`,
         limitSource: limitSourceText(verdict.source),
         slots: mode.users,
         remedies: [...remedies, ...otherWays(context, mode)],
@@ -125,7 +130,9 @@ function spanFindings(context: CheckContext, mode: TimedMode): Finding[] {
         sentence: absent
           ? `Mode ${mode.key} has no ${partName(verdict)}: nothing can lock to it.`
           : `Mode ${mode.key}'s ${partName(verdict)} is ${text(verdict.measured)}, ${side} than published rasters of this line rate.`,
-        detail: verdict.span && `They span ${spanText(verdict.span, text)}.`,
+        detail: absent
+          ? nearestWay(context, mode).words.trim() || undefined
+          : verdict.span && `They span ${spanText(verdict.span, text)}.`,
         limitSource: absent ? "common practice, no source" : documents(verdict.from),
         slots: mode.users,
         remedies: [...remedies, ...(absent ? otherWays(context, mode) : [])],

@@ -41,8 +41,24 @@ function byLikeness(wanted: RasterTiming | undefined) {
   };
 }
 
-function isTimed(mode: JudgedMode): mode is JudgedMode & { timing: RasterTiming } {
+function isTimed(mode: JudgedMode): mode is TimedMode {
   return mode.timing !== undefined;
+}
+
+type TimedMode = JudgedMode & { readonly timing: RasterTiming };
+
+const usable = new WeakMap<CheckContext, readonly TimedMode[]>();
+
+/** Modes that the screen and the device take: judged once a check, since every finding of a mode asks. */
+function usableModes(context: CheckContext): readonly TimedMode[] {
+  const known = usable.get(context);
+  if (known !== undefined) return known;
+  const modes = context.modes
+    .filter(isTimed)
+    .filter((mode) => isRasterAllowed(mode.timing, context.screen))
+    .filter((mode) => context.device?.interlace !== false || !mode.timing.interlaced);
+  usable.set(context, modes);
+  return modes;
 }
 
 /**
@@ -56,10 +72,8 @@ export function otherModeRemedies(
   instead: JudgedMode | undefined,
 ): Remedy[] {
   if (slots.length === 0) return [];
-  return context.modes
-    .filter(isTimed)
-    .filter((mode) => mode.key !== instead?.key && isRasterAllowed(mode.timing, context.screen))
-    .filter((mode) => context.device?.interlace !== false || !mode.timing.interlaced)
+  return usableModes(context)
+    .filter((mode) => mode.key !== instead?.key)
     .sort(byLikeness(instead?.timing))
     .slice(0, MAX_OTHER_MODES)
     .map((mode) => ({

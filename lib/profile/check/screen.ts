@@ -1,11 +1,12 @@
 import { judgeEnvelope, type EnvelopeVerdict } from "@/lib/timing/judge-envelope";
-import { fieldRateHz } from "@/lib/timing/rates";
+import { followInput } from "@/lib/timing/slip/rate-slip";
 import type { RasterTiming } from "@/lib/timing/raster";
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import type { Finding } from "@/lib/profile/finding";
 import { modePath, slotPath } from "@/lib/profile/paths";
 import { clockText, fieldRateText, limitSourceText, lineRateText, spanText } from "@/lib/profile/words";
 import type { CheckContext, JudgedMode } from "./context";
+import { nearestWay } from "./nearest-raster";
 import { leaveOutAll, modeText, otherModeRemedies } from "./remedies";
 
 export type ScreenRule = "line-rate" | "field-rate" | "interlace" | "clock";
@@ -84,17 +85,23 @@ export function screenFinding(
 function ofMode(context: CheckContext, mode: JudgedMode, screen: ScreenEnvelope): Finding[] {
   const { timing } = mode;
   if (!timing) return [];
-  return brokenScreenLimits(timing, screen).map((found) => ({
-    ...screenFinding(found, `Mode ${mode.key}`, screen),
-    path: modePath(mode.key, "timing"),
-    slots: mode.users,
-    remedies: [...otherModeRemedies(context, mode.changedUsers, mode), ...leaveOutAll(mode.changedUsers)],
-  }));
-}
-
-/** The raster that comes out where the output follows the rate that arrives: the same counts, another clock. */
-export function followedRaster(timing: RasterTiming, sourceFieldRateHz: number): RasterTiming {
-  return { ...timing, pixelClockHz: (timing.pixelClockHz * sourceFieldRateHz) / fieldRateHz(timing) };
+  const broken = brokenScreenLimits(timing, screen);
+  if (broken.length === 0) return [];
+  const nearest = nearestWay(context, mode);
+  return broken.map((found) => {
+    const finding = screenFinding(found, `Mode ${mode.key}`, screen);
+    return {
+      ...finding,
+      detail: `${finding.detail}${nearest.words}`,
+      path: modePath(mode.key, "timing"),
+      slots: mode.users,
+      remedies: [
+        ...otherModeRemedies(context, mode.changedUsers, mode),
+        ...nearest.remedies,
+        ...leaveOutAll(mode.changedUsers),
+      ],
+    };
+  });
 }
 
 function followed(context: CheckContext, screen: ScreenEnvelope): Finding[] {
@@ -103,7 +110,7 @@ function followed(context: CheckContext, screen: ScreenEnvelope): Finding[] {
     if (!timing || !source) return [];
     const nominal = new Set(brokenScreenLimits(timing, screen).map(({ rule }) => rule));
     const what = `Slot ${number} follows its source: ${modeText(slot.mode ?? "", timing)}`;
-    return brokenScreenLimits(followedRaster(timing, source.fieldRateHz), screen)
+    return brokenScreenLimits(followInput(timing, source.fieldRateHz), screen)
       .filter(({ rule }) => !nominal.has(rule))
       .map((found) => ({
         ...screenFinding(found, what, screen),

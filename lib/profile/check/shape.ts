@@ -97,7 +97,8 @@ export function isOutside(slot: JudgedSlot): boolean {
     { active: slot.timing.vertical.active, extent: down },
   ].some(({ active, extent }) => {
     const cut = cutOff(active, extent);
-    return extent.size - cut.before - cut.after <= 0;
+    // Turned round: a size beyond all numbers leaves no number, and nothing inside.
+    return !(extent.size - cut.before - cut.after > 0);
   });
 }
 

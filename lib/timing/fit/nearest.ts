@@ -1,5 +1,7 @@
 import { NEAREST_TRIES, type Budget } from "@/lib/timing/fit/budget";
 import { catalogue } from "@/lib/timing/catalogue/catalogue";
+import type { CatalogueEntry } from "@/lib/timing/catalogue/catalogue-entry";
+import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { fittedRaster } from "@/lib/timing/fit/fitted-raster";
 import type {
   FigureChange,
@@ -114,11 +116,20 @@ function withoutOne(request: Search): Found[] {
   return stated.flatMap((figure) => firstOf(request, { ...request.wish, [figure]: undefined }));
 }
 
+const takenByScreen = new WeakMap<ScreenEnvelope, readonly CatalogueEntry[]>();
+
+/** Published rasters that a screen takes: judged once for each envelope, since a check asks for one mode after another. */
+function publishedFor(screen: ScreenEnvelope): readonly CatalogueEntry[] {
+  const known = takenByScreen.get(screen);
+  if (known !== undefined) return known;
+  const taken = catalogue.filter(({ timing }) => fitsEnvelope(timing, screen));
+  takenByScreen.set(screen, taken);
+  return taken;
+}
+
 function standards(request: FitRequest): RasterTiming[] {
   const { wish, screen, device = {} } = request;
-  const usable = catalogue.filter(
-    ({ timing }) => fitsEnvelope(timing, screen) && brokenDeviceLimits(timing, device).length === 0,
-  );
+  const usable = publishedFor(screen).filter(({ timing }) => brokenDeviceLimits(timing, device).length === 0);
   const ranked = usable
     .map(({ timing }) => ({ timing, far: distance(changesOf(wish, timing)) }))
     .sort((a, b) => a.far - b.far)
@@ -128,6 +139,18 @@ function standards(request: FitRequest): RasterTiming[] {
 
 function distinct(timings: readonly RasterTiming[]): RasterTiming[] {
   return timings.filter((timing, index) => timings.findIndex((other) => sameRaster(other, timing)) === index);
+}
+
+/** Those that give up least of a wish first; of what the owner wants kept before all. */
+function byLeastGivenUp(wish: FitWish, keep: readonly FitFigure[], timings: readonly RasterTiming[]) {
+  return distinct(timings)
+    .map((timing) => ({ timing, changed: changesOf(wish, timing, keep) }))
+    .map((one) => ({
+      ...one,
+      broken: one.changed.filter(({ kept }) => kept).length,
+      far: distance(one.changed),
+    }))
+    .sort((a, b) => a.broken - b.broken || a.far - b.far);
 }
 
 /**
@@ -150,17 +173,34 @@ export function nearestRasters(wished: FitRequest, limit: number): NearestRaster
     ...withoutOne(request),
   ];
   const costs = new Map(found.map(({ timing, porchCost }) => [timing, porchCost]));
-  return distinct([...found.map(({ timing }) => timing), ...standards(request)])
-    .map((timing) => ({
-      ...fittedRaster(timing, wish.fieldRateHz, screen, costs.get(timing) ?? 0),
-      changed: changesOf(wish, timing, keep),
-    }))
-    .map((raster) => ({
-      raster,
-      broken: raster.changed.filter(({ kept }) => kept).length,
-      far: distance(raster.changed),
-    }))
-    .sort((a, b) => a.broken - b.broken || a.far - b.far)
+  const all = [...found.map(({ timing }) => timing), ...standards(request)];
+  return byLeastGivenUp(wish, keep, all)
     .slice(0, limit)
-    .map(({ raster }) => raster);
+    .map(({ timing, changed }) => ({
+      ...fittedRaster(timing, wish.fieldRateHz, screen, costs.get(timing) ?? 0),
+      changed,
+    }));
+}
+
+/**
+ * Rasters that fit and come close to a wish, best first: those that meet it, else other counts of lines, another rate
+ * or the other scan, else published ones and other widths.
+ *
+ * What a check can spare for a mode at each key: `budget` is spent, not more.
+ * @param request without `requestProblems`
+ */
+export function closeRasters(wished: FitRequest, budget: Budget): RasterTiming[] {
+  const request: Search = { ...wished, budget };
+  const { wish, keep = [] } = request;
+  const met = search(searchSpace(request), budget);
+  if (met.length > 0) return met.map(({ timing }) => timing);
+  const found = [
+    ...otherScan(request),
+    ...firstThatFits(request, nearbyLines(request, "fewer")),
+    ...firstThatFits(request, nearbyLines(request, "more")),
+    ...firstOf(request, wish, ["wish-field-rate"]),
+  ].map(({ timing }) => timing);
+  const wide = firstThatFits(request, found.length > 0 ? [] : nearbyWidths(request)).map(({ timing }) => timing);
+  const any = found.length > 0 ? found : [...wide, ...standards(request)];
+  return byLeastGivenUp(wish, keep, any).map(({ timing }) => timing);
 }

@@ -50,11 +50,31 @@ const highDefinitionReferences = ctaCatalogue
   .filter(({ code }) => code !== undefined && highDefinitionVics.includes(code))
   .map(({ timing }) => referenceOf(timing));
 
+/** A reference with the logarithms of its rates: they are compared for each count of lines of a search. */
+const withLogs = (reference: Reference) => ({
+  reference,
+  logLine: Math.log(reference.lineRateHz),
+  logField: Math.log(reference.fieldRateHz),
+});
+const crtByLogs = crtReferences.map(withLogs);
+const highDefinitionByLogs = highDefinitionReferences.map(withLogs);
+
 function nearestReference(rateHz: number, fieldHz: number): Reference {
-  const far = (one: Reference) =>
-    Math.abs(Math.log(rateHz / one.lineRateHz)) + Math.abs(Math.log(fieldHz / one.fieldRateHz));
-  const own = highDefinitionReferences.filter((one) => Math.abs(one.lineRateHz / rateHz - 1) <= SAME_KIND);
-  return [...crtReferences, ...own].reduce((best, one) => (far(one) < far(best) ? one : best));
+  const [logLine, logField] = [Math.log(rateHz), Math.log(fieldHz)];
+  let best: Reference | undefined;
+  let least = Infinity;
+  for (const list of [crtByLogs, highDefinitionByLogs]) {
+    for (const one of list) {
+      const isOwn = list === crtByLogs || Math.abs(one.reference.lineRateHz / rateHz - 1) <= SAME_KIND;
+      const far = Math.abs(logLine - one.logLine) + Math.abs(logField - one.logField);
+      if (!isOwn || (best !== undefined && far >= least)) continue;
+      best = one.reference;
+      least = far;
+    }
+  }
+  // There is always one: the CRT formats are taken at any line rate.
+  if (best === undefined) throw new Error("no reference raster");
+  return best;
 }
 
 /**
@@ -63,10 +83,8 @@ function nearestReference(rateHz: number, fieldHz: number): Reference {
  */
 const STRETCH = 0.08;
 
-/** What is published for a line rate, or for the nearest CRT standard's where that is not far. */
-function spansFor(rateHz: number): BlankingSpan | undefined {
-  const published = blankingSpan(rateHz);
-  if (published !== undefined) return published;
+/** What is published for the nearest CRT standard's line rate, where that is not far. */
+function stretchedSpan(rateHz: number): BlankingSpan | undefined {
   const far = (one: Reference) => Math.abs(one.lineRateHz / rateHz - 1);
   const near = crtReferences.reduce((best, one) => (far(one) < far(best) ? one : best));
   return far(near) <= STRETCH ? blankingSpan(near.lineRateHz) : undefined;
@@ -118,11 +136,10 @@ export function blankingGuide(rateHz: number, fieldHz: number): BlankingGuide {
   const { frontPorch, sync, backPorch } = reference.us;
   const aimUs = { frontPorch: frontPorch * scale, sync: sync * scale, backPorch: backPorch * scale };
   const { polarity, lines: aimLines } = reference;
-  const published = spansFor(rateHz);
+  const own = blankingSpan(rateHz);
+  const published = own ?? stretchedSpan(rateHz);
   if (published === undefined) return { aimUs, aimLines, spanUs: around(aimUs), spanLines: around(aimLines), polarity };
-  const isCrt =
-    blankingSpan(rateHz) === undefined ||
-    crtReferences.some((one) => Math.abs(one.lineRateHz / rateHz - 1) <= SAME_KIND);
+  const isCrt = own === undefined || crtReferences.some((one) => Math.abs(one.lineRateHz / rateHz - 1) <= SAME_KIND);
   if (!isCrt) {
     const spanUs = together(published.horizontalUs, around(aimUs));
     return { aimUs, aimLines, spanUs, spanLines: together(published.verticalLines, around(aimLines)), polarity };

@@ -34,7 +34,8 @@ describe("blanking", () => {
       severity: "stop",
       unit: "µs",
       limit: 4.5,
-      detail: "525-line television needs 4.50 µs at least, which is 122 clocks here.",
+      detail:
+        "525-line television needs 4.50 µs at least, which is 122 clocks here. Nearest raster that fits: 240p60 (15.734 kHz, 60.054 Hz).",
     });
     expect(finding.remedies[0]).toEqual({
       kind: "set",

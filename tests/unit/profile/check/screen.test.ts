@@ -28,12 +28,19 @@ describe("screen", () => {
       limit: [15_577, 15_892],
       slots: [1, 2],
       sentence: "Mode high runs at 31.469 kHz, too fast for this screen.",
-      detail: "525-line television takes 15.577 to 15.892 kHz. Nearest that fits: 15.892 kHz.",
+      detail: expect.stringMatching(
+        /^525-line television takes 15\.577 to 15\.892 kHz\. Nearest that fits: 15\.892 kHz\. Nearest raster that fits: 480i60 /u,
+      ) as string,
       limitSource: "standard",
     });
     // 27 MHz / 858: CTA-861 code 2 prints 31.469 kHz.
     expect(finding.measured).toBeCloseTo(31_468.53, 2);
-    expect(labels(finding)).toEqual(["Use 240p60 (mode low)", "Leave slot 1 out", "Leave slot 2 out"]);
+    expect(labels(finding)).toEqual([
+      "Use 240p60 (mode low)",
+      expect.stringMatching(/^Make mode high 480i60 at 15\.\d{3} kHz$/u),
+      "Leave slot 1 out",
+      "Leave slot 2 out",
+    ]);
     expect(finding.remedies[0]).toMatchObject({
       patch: [
         { path: "slots[1].mode", value: "low" },
