@@ -1,11 +1,9 @@
 import { fieldRateHz } from "@/lib/timing/rates";
+import { rateSlip } from "@/lib/timing/slip/rate-slip";
 import type { Finding } from "@/lib/profile/finding";
 import { slotPath } from "@/lib/profile/paths";
 import { fieldRateText, withUnit } from "@/lib/profile/words";
 import type { CheckContext } from "./context";
-
-/** Rates nearer than this slip less than once a day. */
-const SAME_RATE_HZ = 1 / 86_400;
 
 /** "18 s", "17 minutes", "5 hours" */
 function intervalText(seconds: number): string {
@@ -20,17 +18,16 @@ export function rateFindings(context: CheckContext): Finding[] {
   return context.slots.flatMap(({ number, timing, source }): Finding[] => {
     if (!timing || !source) return [];
     const out = fieldRateHz(timing);
-    const difference = Math.abs(out - source.fieldRateHz);
-    if (difference < SAME_RATE_HZ) return [];
-    const seconds = 1 / difference;
+    const { kind, everyS } = rateSlip(source.fieldRateHz, out);
+    if (everyS === undefined) return [];
     return [
       {
         rule: "rate.slip",
         path: slotPath(number, "mode"),
         severity: "note",
-        measured: seconds,
+        measured: everyS,
         unit: "s",
-        sentence: `A frame ${out > source.fieldRateHz ? "repeats" : "drops"} every ${intervalText(seconds)} in slot ${number}.`,
+        sentence: `A frame ${kind} every ${intervalText(everyS)} in slot ${number}.`,
         detail: `${fieldRateText(source.fieldRateHz)} comes in, ${fieldRateText(out)} goes out.`,
         slots: [number],
         remedies: [],

@@ -1,5 +1,6 @@
-import type { ScreenEnvelope, SyncKind } from "@/lib/timing/envelope";
-import { atLeast, atMost } from "@/lib/timing/span";
+import { attenuator, loadVpp } from "@/lib/timing/attenuator";
+import type { ScreenEnvelope, Span, SyncKind } from "@/lib/timing/envelope";
+import { atLeast, atMost, inSpan } from "@/lib/timing/span";
 import type { Finding } from "@/lib/profile/finding";
 import type { DeviceLimits } from "@/lib/profile/limits";
 import { slotPath } from "@/lib/profile/paths";
@@ -71,12 +72,19 @@ type Level = { readonly vpp: number; readonly loadedVpp: number; readonly source
 function levelAt(output: DeviceLimits["syncOutputs"][number], loadOhm: number): Level | null {
   if (output.vpp === undefined) return null;
   const { vpp, sourceOhm } = output;
-  return { vpp, loadedVpp: (vpp * loadOhm) / (loadOhm + (sourceOhm ?? 0)), sourceOhm };
+  return { vpp, loadedVpp: loadVpp(vpp, sourceOhm ?? 0, 0, loadOhm), sourceOhm };
 }
 
-/** The series resistor that brings a level into the middle of the screen's span: the divider of source, resistor and load. */
-function seriesOhm(level: Level, loadOhm: number, targetVpp: number): number {
-  return (loadOhm * level.vpp) / targetVpp - loadOhm - (level.sourceOhm ?? 0);
+/** The resistor that brings a level into the middle of the screen's span, as it can be bought, and what it gives there. */
+function resistorText({ vpp, sourceOhm = 0 }: Level, loadOhm: number, syncVpp: Span): string {
+  const targetVpp = (syncVpp[0] + syncVpp[1]) / 2;
+  const answer = attenuator({ sourceVpp: vpp, sourceOhm, loadOhm, targetVpp });
+  if (!answer.ok || answer.value.outcome !== "resistor" || answer.value.seriesOhm > MAX_SERIES_OHM) return "";
+  const inside = answer.value.e24.filter(({ resultVpp }) => inSpan(resultVpp, syncVpp));
+  const off = ({ resultVpp }: { resultVpp: number }) => Math.abs(resultVpp - targetVpp);
+  const [nearest] = inside.sort((one, other) => off(one) - off(other));
+  if (nearest === undefined) return "";
+  return ` of ${withUnit(nearest.ohm, "Ω", 1)} (E24), which gives ${withUnit(nearest.resultVpp, "V", 2)}`;
 }
 
 /** A level is the output's, not the slot's: one finding a kind, about the slots that change, or else those that have it. */
@@ -92,10 +100,6 @@ function levelFinding(kind: SyncKind, context: CheckContext, screen: ScreenEnvel
   if (!level || !syncVpp) return [];
   const strong = !atMost(level.loadedVpp, syncVpp[1]);
   if (!strong && atLeast(level.loadedVpp, syncVpp[0])) return [];
-  const target = (syncVpp[0] + syncVpp[1]) / 2;
-  const ohm = seriesOhm(level, loadOhm, target);
-  const about =
-    ohm > 0 && ohm <= MAX_SERIES_OHM ? ` of about ${withUnit(ohm, "Ω", 0)} for ${withUnit(target, "V", 2)}` : "";
   const span = spanText(syncVpp, (value) => withUnit(value, "V", 2));
   const name = capital(syncNames[kind]);
   return [
@@ -110,7 +114,9 @@ function levelFinding(kind: SyncKind, context: CheckContext, screen: ScreenEnvel
       detail:
         `This device drives ${withUnit(level.vpp, "V", 2)} before a load, ${withUnit(level.loadedVpp, "V", 2)} into ${withUnit(loadOhm, "Ω", 0)}; ` +
         `your screen lists ${span}. ` +
-        (strong ? `Measure first, or fit an in-line resistor${about}.` : "Only an amplifier helps."),
+        (strong
+          ? `Measure first, or fit an in-line resistor${resistorText(level, loadOhm, syncVpp)}.`
+          : "Only an amplifier helps."),
       limitSource: limitSourceText(screen.sources?.syncVpp),
       slots,
       remedies: [],

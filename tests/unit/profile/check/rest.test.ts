@@ -120,6 +120,18 @@ describe("sync", () => {
     expect(level([1, 2, 3])).toMatchObject({ severity: "note", path: "slots[1].syncKind", slots: [1, 2, 3] });
   });
 
+  it("names the resistor of E24 that brings a level to the middle of what the screen lists", () => {
+    // By hand, 5 V behind 75 Ω into 75 Ω for 0.3 V: 75 · 5 / 0.3 − 75 − 75 = 1 100 Ω, which IEC 60063 has.
+    const device = { ...lf8, syncOutputs: [{ kind: "composite" as const, vpp: 5, sourceOhm: 75 }] };
+    const screen = { ...television, syncVpp: [0.2, 0.4] as const, loadOhm: 75 };
+    const { detail } = theOne("sync.level", { document: oneSlot({ syncKind: "composite" }), screen, device });
+    expect(detail?.replaceAll("\u2009", " ")).toContain("an in-line resistor of 1 100 Ω (E24), which gives 0.3 V.");
+    // 75 · 5 / 0.31 − 150 = 1 060: of 1 000 and 1 100 Ω the nearer to 0.31 V is 1.1 kΩ with 0.3 V.
+    const other = { ...screen, syncVpp: [0.21, 0.41] as const };
+    const off = theOne("sync.level", { document: oneSlot({ syncKind: "composite" }), screen: other, device });
+    expect(off.detail?.replaceAll("\u2009", " ")).toContain("1 100 Ω (E24), which gives 0.3 V.");
+  });
+
   it("states a level that ngspice gives for the same divider", () => {
     // ngspice, one resistor chain, .op: 5 V behind 50 Ω and 430 Ω in series into 75 Ω give 0.675 676 V.
     const device = { ...lf8, syncOutputs: [{ kind: "composite" as const, vpp: 5, sourceOhm: 480 }] };
