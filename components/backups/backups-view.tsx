@@ -5,6 +5,7 @@ import { BackupList } from "@/components/backups/backup-list";
 import { rasterWords, standingOf } from "@/components/backups/backup-words";
 import { DeviceHead } from "@/components/backups/device-head";
 import { useDevices } from "@/components/backups/use-backups";
+import { NoticeList } from "@/components/drivers/notice-list";
 import { DemoNoteFor } from "@/components/shell/demo-people";
 import { useSignedIn } from "@/components/shell/signed-in";
 import { Button, ButtonLink } from "@/components/ui/button";
@@ -50,6 +51,7 @@ export function BackupsView({ shown, now }: { readonly shown: string | null; rea
             <DemoNoteFor ownerIds={[user?.id]} className="mt-5" />
           </nav>
           <div className="min-w-0 px-4 pb-10 pt-5 md:px-7">
+            <NoticeList deviceId={chosen.id} className="mb-5" />
             <DeviceHead key={chosen.id} device={chosen} />
             <BackupList key={`backups of ${chosen.id}`} device={chosen} />
           </div>

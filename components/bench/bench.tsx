@@ -4,6 +4,7 @@ import { useEffect, useState } from "react";
 import { BackupBar } from "@/components/bench/backup-bar";
 import { BenchChain } from "@/components/bench/bench-chain";
 import { ConnectPanel } from "@/components/bench/connect-panel";
+import { DriverNotice } from "@/components/bench/driver-notice";
 import { HeldRecall } from "@/components/bench/held-recall";
 import { LinkNotice } from "@/components/bench/link-notice";
 import { ReviewView } from "@/components/bench/review-view";
@@ -13,7 +14,7 @@ import { SlotsColumn } from "@/components/bench/slots-column";
 import { TrialBar } from "@/components/bench/trial-bar";
 import { UnplugCaution } from "@/components/bench/unplug-caution";
 import { WireDrawer } from "@/components/bench/wire-drawer";
-import type { Reach } from "@/components/bench/setting-rows";
+import type { Reach } from "@/lib/profile/also-moved";
 import { useBench } from "@/components/bench/bench-provider";
 import { useIncoming, type Incoming } from "@/components/bench/use-incoming";
 
@@ -40,6 +41,7 @@ export function Bench({ incoming }: { readonly incoming: Incoming }) {
         <>
           <BenchChain />
           <LinkNotice />
+          <DriverNotice />
           <UnplugCaution />
           <TrialBar />
           {isReviewing ? <ReviewView review={review} /> : <BenchColumns chosen={chosen} onChoose={setChosen} reach={reach} onReach={setReach} />}

@@ -5,7 +5,8 @@ import { useEffect, useState } from "react";
 import { Button } from "@/components/ui/button";
 import { SelectField } from "@/components/ui/field";
 import { StopIcon } from "@/components/ui/finding-icon";
-import { shippedDrivers } from "@/lib/serial/drivers/shipped";
+import { NoticeList } from "@/components/drivers/notice-list";
+import { useModels } from "@/components/bench/use-models";
 import { useBench, useBenchAccount, useBenchActions } from "@/components/bench/bench-provider";
 import { hostSystem, portHelp, type PortFailure } from "@/components/bench/port-help";
 
@@ -22,7 +23,8 @@ function useSerialSupport(): PortFailure | null | "asking" {
 
 /** Choose a real port or a simulated device. */
 export function ConnectPanel() {
-  const [slug, setSlug] = useState(shippedDrivers[0]?.slug ?? "");
+  const models = useModels();
+  const [slug, setSlug] = useState(models[0]?.slug ?? "");
   const link = useBench((state) => state.link);
   const account = useBenchAccount();
   const { connectReal, connectSimulated } = useBenchActions();
@@ -37,7 +39,7 @@ export function ConnectPanel() {
         </p>
         <SelectField
           label="Model" value={slug} onChange={(event) => setSlug(event.target.value)} fieldClassName="mb-4 max-w-[340px]"
-          options={shippedDrivers.map((driver) => ({ value: driver.slug, label: `${driver.maker} ${driver.model}` }))}
+          options={models.map((driver) => ({ value: driver.slug, label: `${driver.maker} ${driver.model}` }))}
         />
         <div className="flex flex-wrap gap-3">
           <Button kind={account ? "primary" : "plain"} size="large" disabled={isBusy || !account || support !== null} onClick={() => void connectReal(slug)}>Choose a port</Button>
@@ -48,9 +50,11 @@ export function ConnectPanel() {
             <>A simulated device needs no account; its backups stay in this page. For a real one, <Link className="link" href="/sign-in?from=/bench">sign in</Link>, so that every slot is backed up before anything is written.</>
           )}
         </p>
+        {account?.role === "maintainer" || account?.role === "admin" ? <p className="mt-2 text-sm text-muted">To get to know a device that has no driver yet, or to try a draft, <Link className="link" href="/recordings/listen">listen to it</Link>: that only reads and records.</p> : null}
         <p role="status" className="mt-4 min-h-6">{isBusy ? (link.name === "opening" ? "Opening the port…" : "Asking the device who it is…") : ""}</p>
       </section>
       {link.name === "failed" ? <Failure failure={link.failure} /> : support !== null && support !== "asking" ? <Failure failure={support} /> : null}
+      <NoticeList className="lg:col-span-2" />
     </div>
   );
 }

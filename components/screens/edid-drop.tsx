@@ -1,12 +1,13 @@
 "use client";
 
-import { useEffect, useId, useRef, useState } from "react";
+import { useId, useRef, useState } from "react";
 import { edidOfBytes, MAX_EDID_BYTES } from "@/components/screens/edid-file";
 import type { EdidView } from "@/components/screens/edid-file";
 import { Button } from "@/components/ui/button";
 import { classNames } from "@/components/ui/class-names";
 import { StopIcon } from "@/components/ui/finding-icon";
 import { formatCount } from "@/components/ui/figures";
+import { useDroppedFile } from "@/components/ui/use-dropped-file";
 import { fail } from "@/lib/result";
 import type { Result } from "@/lib/result";
 
@@ -22,46 +23,6 @@ async function readFile(file: File): Promise<Result<EdidView, string>> {
     // A folder, or a file that went away between choosing and reading.
     return fail("The browser cannot read it.");
   }
-}
-
-/**
- * Files dropped anywhere on the page. A drop that nobody takes would make the browser leave the page for the file.
- *
- * @returns whether a file hangs over the page
- */
-function useDroppedFile(onFile: (file: File) => void): boolean {
-  const [isOver, setIsOver] = useState(false);
-  const handler = useRef(onFile);
-  useEffect(() => {
-    handler.current = onFile;
-  });
-  useEffect(() => {
-    const hasFiles = (event: DragEvent) => event.dataTransfer?.types.includes("Files") === true;
-    const over = (event: DragEvent) => {
-      if (!hasFiles(event)) return;
-      event.preventDefault();
-      setIsOver(true);
-    };
-    const leave = (event: DragEvent) => {
-      if (event.relatedTarget === null) setIsOver(false);
-    };
-    const drop = (event: DragEvent) => {
-      if (!hasFiles(event)) return;
-      event.preventDefault();
-      setIsOver(false);
-      const file = event.dataTransfer?.files[0];
-      if (file !== undefined) handler.current(file);
-    };
-    window.addEventListener("dragover", over);
-    window.addEventListener("dragleave", leave);
-    window.addEventListener("drop", drop);
-    return () => {
-      window.removeEventListener("dragover", over);
-      window.removeEventListener("dragleave", leave);
-      window.removeEventListener("drop", drop);
-    };
-  }, []);
-  return isOver;
 }
 
 export type EdidDropProps = {

@@ -7,6 +7,7 @@ export const navigation: readonly NavigationItem[] = [
   { href: "/library", label: "Library" },
   { href: "/screens", label: "Screens" },
   { href: "/modes", label: "Modes" },
+  { href: "/drivers", label: "Drivers" },
 ];
 
 /** The item that a path belongs to. */

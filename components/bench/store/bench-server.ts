@@ -1,5 +1,6 @@
 import { backupDetail, backupPage, backupView, type BackupDetail, type BackupView, type NewBackup } from "@/lib/contracts/backup";
 import { devicePage, deviceView, type DeviceChange, type DeviceView, type NewDevice } from "@/lib/contracts/device";
+import { driverVersionDetail, driverVersionPage } from "@/lib/contracts/driver";
 import { planDetail, planView, type NewPlan, type PlanView } from "@/lib/contracts/plan";
 import { profileDetail, revisionDetail, type ProfileDetail, type RevisionDetail } from "@/lib/contracts/profile";
 import { runPage, runView, stepList, type NewRun, type NewSteps, type RunView } from "@/lib/contracts/run";
@@ -10,6 +11,9 @@ import type { ScreenEnvelope } from "@/lib/timing/envelope";
 
 /** The most steps of one run that are asked for in one go; the route allows as many. */
 const STEPS_AT_ONCE = 1000;
+
+/** Versions that are looked through for the newest published one; the route allows as many. */
+const VERSIONS_AT_ONCE = 100;
 
 /** What the bench asks of the server, each call one route. Every call throws `ApiProblem`. */
 export type BenchServer = typeof benchServer;
@@ -24,6 +28,14 @@ export const benchServer = {
   createDevice: (device: NewDevice): Promise<DeviceView> => callApi("/api/devices", { method: "POST", body: device, shape: deviceView }),
   changeDevice: (device: DeviceView, change: DeviceChange): Promise<DeviceView> =>
     callApi(`/api/devices/${device.id}`, { method: "PATCH", body: change, ifMatch: `"${device.version}"`, shape: deviceView }),
+  /** The highest published version of a driver; versions come highest first. Null: none of the latest is published. */
+  async newestDriver(slug: string): Promise<string | null> {
+    const { items } = await callApi(`/api/drivers/${encodeURIComponent(slug)}/versions?limit=${VERSIONS_AT_ONCE}`, { shape: driverVersionPage });
+    return items.find(({ state }) => state === "published")?.version ?? null;
+  },
+  async driverDefinition({ slug, version }: { readonly slug: string; readonly version: string }): Promise<unknown> {
+    return (await callApi(`/api/drivers/${encodeURIComponent(slug)}/versions/${encodeURIComponent(version)}`, { shape: driverVersionDetail })).definition;
+  },
   async lastBackup(deviceId: string): Promise<BackupView | null> {
     return (await callApi(`/api/devices/${deviceId}/backups?limit=1`, { shape: backupPage })).items[0] ?? null;
   },

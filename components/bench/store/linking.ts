@@ -1,25 +1,18 @@
-import { compileDriver } from "@/lib/serial/driver/compile";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
 import { deviceLimits } from "@/lib/serial/limits";
-import { shippedDriver } from "@/lib/serial/drivers/shipped";
 import type { SerialPortLike } from "@/lib/serial/port";
 import { openSession } from "@/lib/serial/session/open-session";
 import type { DeviceIdentity } from "@/lib/serial/session/types";
 import { ApiProblem } from "@/components/ui/api";
 import { portFailureOf, portHelp } from "@/components/bench/port-help";
 import { EMPTY_BENCH, say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
+import { driverOf, firstDriver, type DriverRef } from "@/components/bench/store/drivers";
 import { keptRunKey, loadKeptRun, type KeptRun } from "@/components/bench/store/kept-run";
 import { readDevice } from "@/components/bench/store/reading";
 import { resumeRun, takeUpRun } from "@/components/bench/store/run-control";
 import { plugInSimulated, type SimulatedDevice } from "@/components/bench/store/simulated-device";
 import type { PlanInput } from "@/lib/serial/plan/types";
 import type { JournalEntry } from "@/lib/serial/run/types";
-
-function compiled(slug: string): CompiledDriver {
-  const driver = compileDriver(shippedDriver(slug));
-  if (!driver.ok) throw new Error(`The shipped driver ${slug} does not compile: ${driver.error[0]?.message ?? ""}`);
-  return driver.value;
-}
 
 /** The owner's row of this device: found by its serial number, else made. Null without an account. */
 async function storedDevice(core: BenchCore, driver: CompiledDriver, identity: DeviceIdentity, isSimulated: boolean) {
@@ -93,6 +86,7 @@ async function settle(core: BenchCore, identity: DeviceIdentity, isSimulated: bo
   });
   try {
     const row = await storedDevice(core, driver, identity, isSimulated);
+    if (row && row.driver.version !== driver.definition.version) return await changeDriver(core, row.driver);
     if (row) {
       store.setState((state) => ({ device: state.device && { ...state.device, stored: { id: row.id, name: row.name, screenId: row.screen?.id ?? null } } }));
       await lastBackupOf(core, row.id);
@@ -102,6 +96,19 @@ async function settle(core: BenchCore, identity: DeviceIdentity, isSimulated: bo
     say(core, "halt", `The device is connected, but the server can't be asked about it: ${sentenceOf(error)} Backups can't be stored now.`);
   }
   if (!(await takeUpOpenRun(core).catch((error: unknown) => { say(core, "halt", sentenceOf(error)); return false; }))) await readDevice(core);
+}
+
+/**
+ * Begins again with the version that this device has: its backups and plans are read with that one. The row says the same
+ * version as the new line then, so this happens once.
+ */
+async function changeDriver(core: BenchCore, ref: DriverRef): Promise<void> {
+  const { line } = core;
+  if (!line) return;
+  const driver = await driverOf(core, ref);
+  await line.session.close();
+  const simulated = line.simulated ? plugInSimulated(driver, core.around.clock, core.around.storage) : null;
+  await open(core, driver, simulated?.plug.port ?? line.port, simulated);
 }
 
 async function showScreen(core: BenchCore, id: string): Promise<void> {
@@ -143,16 +150,23 @@ export async function connectReal(core: BenchCore, slug: string): Promise<void> 
   const { serial } = core.around;
   if (!serial || !core.around.account) return;
   try {
-    await open(core, compiled(slug), await serial.requestPort(), null);
+    // The port is asked for first: a browser shows its list only right after the click.
+    const port = await serial.requestPort();
+    await open(core, await firstDriver(core, slug), port, null);
   } catch (error) {
     core.store.setState({ link: { name: "failed", failure: portFailureOf(error) } });
   }
 }
 
 export async function connectSimulated(core: BenchCore, slug: string): Promise<void> {
-  const driver = compiled(slug);
-  const simulated = plugInSimulated(driver, core.around.clock, core.around.storage);
-  await open(core, driver, simulated.plug.port, simulated);
+  core.store.setState({ link: { name: "opening" } });
+  try {
+    const driver = await firstDriver(core, slug);
+    const simulated = plugInSimulated(driver, core.around.clock, core.around.storage);
+    await open(core, driver, simulated.plug.port, simulated);
+  } catch (error) {
+    core.store.setState({ link: { name: "failed", failure: { code: "other", detail: sentenceOf(error) } } });
+  }
 }
 
 /** The port after a replug is a new object: the one granted port is it, else the owner chooses. */
