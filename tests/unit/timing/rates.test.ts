@@ -119,6 +119,6 @@ describe("rasterProblems", () => {
 });
 
 it("takes about 16 ms for a 60 Hz field (common practice, no source)", () => {
-  const fieldMs = 1000 / fieldRateHz(standardRaster("240p60"));
+  const fieldMs = 1000 / fieldRateHz(standardRaster("240p60").timing);
   expect(Math.abs(fieldMs - 16)).toBeLessThan(1);
 });
