@@ -4,7 +4,7 @@ import { toNative, toNeutral } from "@/lib/serial/driver/neutral";
 import type { DriverDefinition, DriverSetting } from "@/lib/serial/driver/definition";
 import type { NativeKey, NativeValue, NativeValues, NativeWrite } from "@/lib/serial/native";
 import type { PlanChange } from "@/lib/serial/plan/types";
-import type { Reach } from "@/components/bench/setting-rows";
+import type { Reach } from "@/lib/profile/also-moved";
 
 /** A setting that only this device has: no profile names it, so it is kept and changed as the device's own value. */
 export type NativeRow = {

@@ -1,12 +1,10 @@
 import type { Finding } from "@/lib/profile/finding";
 import type { DeviceLimits, NumberLimit } from "@/lib/profile/limits";
+import type { Reach } from "@/lib/profile/also-moved";
 import type { ProfileDocument } from "@/lib/profile/document";
 import { neutralSettings, type NeutralSetting } from "@/lib/profile/neutral-settings";
 import { choicesOf, numberLimit } from "@/lib/profile/round";
 import { getValue, modePath, parsePath, slotPath } from "@/lib/profile/paths";
-
-/** What a setting acts on. */
-export type Reach = "everywhere" | "mode" | "slot";
 
 /** One setting as the page shows it: where it stands now, what is planned, what the device takes. */
 export type SettingRow = {
@@ -55,15 +53,6 @@ export function settingRows(reach: Reach, now: ProfileDocument, planned: Profile
       };
     })
     .filter((row) => row.range !== undefined || row.choices !== undefined);
-}
-
-/** Slots that a change of this reach moves besides the chosen one. */
-export function alsoMoved(reach: Reach, document: ProfileDocument, slot: number): readonly number[] {
-  const slots = document.slots ?? [];
-  const modeKey = slots.find((one) => one.number === slot)?.mode;
-  if (reach === "slot") return [];
-  const moved = reach === "everywhere" ? slots.filter((one) => one.mode !== undefined) : slots.filter((one) => one.mode === modeKey && modeKey !== undefined);
-  return moved.map((one) => one.number).filter((number) => number !== slot);
 }
 
 /** The findings that speak of exactly this value, or of the group or slot that it stands in. */

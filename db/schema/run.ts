@@ -103,7 +103,7 @@ export const runStep = pgTable(
   (table) => [
     primaryKey({ columns: [table.runId, table.number] }),
     check("run_step_number", sql`${table.number} >= 0`),
-    check("run_step_kind_known", sql`${table.kind} in ('request', 'state', 'word', 'boot-count', 'stated-cycle')`),
+    check("run_step_kind_known", sql`${table.kind} in ('request', 'state', 'word', 'boot-count', 'stated-cycle', 'align')`),
     check(
       "run_step_request_whole",
       sql`(${table.kind} = 'request') = (${table.direction} is not null and ${table.request} is not null and ${table.outcome} is not null)`,

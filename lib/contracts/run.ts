@@ -75,6 +75,8 @@ export const journalEntrySchema = z.discriminatedUnion("kind", [
   z.object({ ...step, kind: z.literal("word"), word: z.enum(["keep", "back"]) }),
   z.object({ ...step, kind: z.literal("boot-count"), bootCount: z.number().int() }),
   z.object({ ...step, kind: z.literal("stated-cycle") }),
+  /** Live alignment: what counts as new from here on, over what did before. */
+  z.object({ ...step, kind: z.literal("align"), values: nativeWrites }),
 ]);
 
 /** Appending is idempotent by step number: a later outcome of a step takes the place of an earlier one. */

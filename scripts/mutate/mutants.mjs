@@ -6,6 +6,7 @@
 const UNIT = "tests/unit/serial";
 const session = [`${UNIT}/session/session.test.ts`, `${UNIT}/session/drain.test.ts`];
 const runs = [`${UNIT}/run/run.test.ts`, `${UNIT}/run/run-proof.test.ts`, `${UNIT}/run/run-loss.test.ts`];
+const aligns = [`${UNIT}/run/align.test.ts`, `${UNIT}/run/align-loss.test.ts`];
 const sweepShort = ["tests/faults/session/fault-sweep.test.ts"];
 const sweepRun = ["tests/faults/run/requests-lf8.test.ts"];
 const replay = ["tests/faults/run/replay.test.ts"];
@@ -17,6 +18,7 @@ const EXCHANGER = "lib/serial/session/exchanger.ts";
 const PROCEDURES = "lib/serial/run/run-procedures.ts";
 const REQUESTS = "lib/serial/run/run-requests.ts";
 const GOAL = "lib/serial/run/run-goal.ts";
+const ALIGN = "lib/serial/run/run-align.ts";
 const LINE = "lib/serial/protocols/text/line.ts";
 const CODEC = "lib/serial/protocols/modbus/modbus-codec.ts";
 
@@ -54,7 +56,7 @@ export const mutants = [
   { name: "a restart in the midst of a whole read goes unseen", file: "lib/serial/session/read-whole.ts", find: 'if (before.value !== after.value) return ok("moved");', replace: "", tests: session },
 
   // The run.
-  { name: "another device is taken for the run's", file: "lib/serial/run/create-run.ts", find: 'if (!sameDevice(identity.value, core.identity)) return fail("other-device");', replace: "", tests: runs },
+  { name: "another device is taken for the run's", file: "lib/serial/run/live-run.ts", find: 'if (!sameDevice(identity.value, core.identity)) return fail("other-device");', replace: "", tests: runs },
   { name: "a request leaves before it stands in the journal", file: REQUESTS, find: 'if (!(await core.record({ ...body, outcome: "leaving" }, number))) return null;', replace: "", tests: runs },
   { name: "a write is not read back", file: REQUESTS, find: "const stored = found.every(({ value }, at) => value === step.writes[at]?.value);", replace: "const stored = found.length > 0;", tests: runs },
   { name: "a write is sent again to a device that has started anew", file: REQUESTS, find: 'return answer.value === (counts ? core.lastRead?.bootCount : core.slotOn) ? "no" : "perhaps";', replace: 'return "no";', tests: replay },
@@ -67,10 +69,14 @@ export const mutants = [
   { name: "keeping does not look at the device first", file: PROCEDURES, find: 'if (!first.allNew || core.wantsBack) return "put-back";', replace: 'if (core.wantsBack) return "put-back";', tests: runs },
   { name: "putting back is believed without a whole read", file: PROCEDURES, find: "if (!judged.allOld || !judged.home) return settleMixed", replace: "if (judged === null) return settleMixed", tests: [...runs, ...sweepRun] },
   { name: "the device timer is not disarmed", file: PROCEDURES, find: 'if (hasTimer(core) && (await timer(core, "disarm")) === "lost") return "rest";\n  const judged', replace: "const judged", tests: [...runs, ...sweepRun] },
-  { name: "the device timer is not extended when trying begins", file: PROCEDURES, find: "if (mayBeArmed(core)) {\n    const extended = await timer(core, \"extend\", trialSeconds(core));", replace: "if (mayBeArmed(core) && core.busy === false) {\n    const extended = await timer(core, \"extend\", trialSeconds(core));", tests: [...runs, ...sweepRun] },
+  { name: "the device timer is not extended when trying begins", file: PROCEDURES, find: "  const extended = await extendTrial(core);", replace: '  const extended = core.busy ? "done" : await extendTrial(core);', tests: [...runs, ...sweepRun] },
+  { name: "a step of alignment is made upon a device that has started anew", file: ALIGN, find: 'if (holds === "no") return "arrive";', replace: "", tests: aligns },
+  { name: "the journal does not say what was aligned", file: ALIGN, find: 'if (!(await core.record({ kind: "align", values: step.changes }))) return "rest";', replace: "", tests: aligns },
+  { name: "steps of alignment do not begin the countdown again", file: ALIGN, find: "core.startCountdown();", replace: "", tests: aligns },
+  { name: "a step of alignment goes out although a check stops it", file: "lib/serial/run/align-step.ts", find: 'if (stops.length > 0) return problem("stopped", stops);', replace: "", tests: aligns },
   { name: "the raster that is out does not count", file: GOAL, find: "return out === undefined || sameOutput(out,", replace: "return out === undefined || read.activeSlot >= 0 || sameOutput(out,", tests: [...runs, ...sweepRun] },
   { name: "all new is kept whatever the owner said last", file: PROCEDURES, find: 'if (allNew && word === "keep") {', replace: "if (allNew && word !== null) {", tests: runs },
-  { name: "a Keep after the countdown is taken", file: "lib/serial/run/create-run.ts", find: 'if (core.state === "trying" && core.link === "up" && !core.busy && core.countdownOver) return fail("too-late");', replace: "", tests: runs },
+  { name: "a Keep after the countdown is taken", file: "lib/serial/run/live-run.ts", find: 'if (core.state === "trying" && core.link === "up" && !core.busy && core.countdownOver) return fail("too-late");', replace: "", tests: runs },
 
   // Bounds.
   { name: "the wire log forgets nothing", file: "lib/serial/wire-log.ts", find: "if (ring.length < maxEntries) ring.push(added);", replace: "if (ring.length >= 0) ring.push(added);", tests: [`${UNIT}/session/wire-log.test.ts`] },

@@ -17,6 +17,7 @@ const REFUSALS: Record<RunActRefusal, string> = {
   busy: "Something else is under way. Try again in a moment.",
   "too-late": "The countdown has ended, so the former values are put back.",
   "link-lost": "The device is out of reach.",
+  "nothing-new": "Nothing differs from what was there before. Put back to end the run.",
   "not-allowed": "That slot's raster does not fit the screen.",
   "other-device": "Another device answers than the one that this run began with. Nothing was sent to it.",
 };

@@ -103,7 +103,7 @@ function restoreTarget(input: PlanInput, driver: CompiledDriver, limits: DeviceL
 }
 
 /** What a slot expects stands in no device: it is taken from the document that is restored, so that inputs can be judged. */
-function withExpectations(document: ProfileDocument, from: ProfileDocument): ProfileDocument {
+export function withExpectations(document: ProfileDocument, from: ProfileDocument): ProfileDocument {
   const expects = new Map((from.slots ?? []).map((slot) => [slot.number, slot.expects]));
   const slots = (document.slots ?? []).map((slot) => {
     const expected = expects.get(slot.number);

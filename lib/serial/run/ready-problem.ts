@@ -40,7 +40,7 @@ export function backupProblem(goal: RunGoal, read: WholeRead): string {
  * A plan without a source was checked with what each slot expects: then any format will do.
  */
 export async function arrivingProblem(goal: RunGoal, session: DeviceSession): Promise<Result<string, RequestError>> {
-  const { source } = goal.plan.input;
+  const { source } = goal.basis;
   if (source === null || goal.driver.definition.status.arriving === undefined) return ok("");
   const arriving = await session.arriving();
   if (!arriving.ok) return arriving.error.code === "unsupported" ? ok("") : fail(arriving.error);

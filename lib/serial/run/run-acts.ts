@@ -1,8 +1,8 @@
 import { rasterOfSlot } from "@/lib/serial/plan/output-raster";
 import { arrivingProblem, backupProblem } from "./ready-problem";
 import type { RunCore, Turn } from "./run-core";
-import { trialSeconds, writeForward } from "./run-procedures";
-import { readWhole, recall, timer } from "./run-requests";
+import { extendTrial, openByHand, writeForward } from "./run-procedures";
+import { readWhole, recall } from "./run-requests";
 
 /** Start: the device is still as the backup has it, or the run is called off; then the plan's steps. */
 export async function startWriting(core: RunCore): Promise<Turn> {
@@ -26,13 +26,14 @@ export async function startWriting(core: RunCore): Promise<Turn> {
     return "rest";
   }
   if (!(await core.say("writing"))) return "rest";
-  return writeForward(core, goal.plan.steps, goal.driver.definition.memory.deviceTimer !== undefined);
+  if (goal.steps.length === 0) return openByHand(core);
+  return writeForward(core, goal.steps, goal.driver.definition.memory.deviceTimer !== undefined);
 }
 
 /** The slot is one that the plan changes, and what it puts out fits the screen as every raster of the plan does. */
 export function mayLookAt(core: RunCore, slot: number): boolean {
-  const { plan, driver, allowed, homeSlot } = core.goal;
-  if (slot !== homeSlot && !plan.changedSlots.includes(slot)) return false;
+  const { changedSlots, driver, allowed, homeSlot } = core.goal;
+  if (slot !== homeSlot && !changedSlots.includes(slot)) return false;
   const raster = rasterOfSlot(driver, new Map(Object.entries(core.goal.new)), slot);
   return raster !== null && allowed(raster);
 }
@@ -45,13 +46,9 @@ export async function lookAt(core: RunCore, slot: number): Promise<Turn> {
   if (outcome === "lost") return "rest";
   if (outcome === "done") core.lookedAt.add(slot);
   if (core.wantsBack) return "put-back";
-  const { deviceTimer } = core.goal.driver.definition.memory;
-  if (deviceTimer !== undefined && !core.unarmed) {
-    const extended = await timer(core, "extend", trialSeconds(core));
-    if (extended === "lost") return "rest";
-    if (extended === "refused") return "arrive";
-    if (core.wantsBack) return "put-back";
-  }
+  const extended = await extendTrial(core);
+  if (extended !== "done") return extended === "lost" ? "rest" : "arrive";
+  if (core.wantsBack) return "put-back";
   core.startCountdown();
   return "rest";
 }

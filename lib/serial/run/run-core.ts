@@ -1,7 +1,8 @@
 import type { Clock } from "@/lib/serial/clock";
 import type { DeviceIdentity, DeviceSession, WholeRead } from "@/lib/serial/session/types";
+import type { AlignStep } from "./align-step";
 import { factsAfter, type RunFacts } from "./run-facts";
-import { standingsOf, type RunGoal } from "./run-goal";
+import { alignedGoal, standingsOf, type RunGoal } from "./run-goal";
 import type { JournalEntry, JournalStore, RunState, RunView } from "./types";
 
 type DistributiveOmit<T, K extends PropertyKey> = T extends unknown ? Omit<T, K> : never;
@@ -21,13 +22,16 @@ export type RunOptions = {
 /** What goes on after a procedure: the next one, or `rest` until the owner, the clock or the port says more. */
 export type Turn = "rest" | "try" | "keep" | "put-back" | "arrive";
 
+type Alignment = { readonly underWay: boolean; readonly inFlight: AlignStep | null; readonly waiting: AlignStep | null };
+
 /**
  * The state that the procedures of a run share, and the only doors through which it changes.
  *
  * One act is under way at a time; procedures ask `wantsBack` between any two requests.
  */
 export class RunCore {
-  readonly goal: RunGoal;
+  /** With what was aligned so far. */
+  goal: RunGoal;
   readonly clock: Clock;
   readonly countdownSeconds: number;
   readonly identity: DeviceIdentity;
@@ -43,7 +47,10 @@ export class RunCore {
   /** The slot that was on when the device was last asked. */
   slotOn: number | null = null;
   readonly lookedAt = new Set<number>();
+  /** Live alignment: the step whose requests are made, and the one that waits, whose place the next one takes. */
+  alignment: Alignment = { underWay: false, inFlight: null, waiting: null };
 
+  private readonly planned: RunGoal;
   private readonly journal: JournalStore;
   private why = "";
   private progress = { done: 0, total: 0 };
@@ -52,7 +59,8 @@ export class RunCore {
   private onCountdownEnd: () => void = () => undefined;
 
   constructor(options: RunOptions, facts: RunFacts) {
-    this.goal = options.goal;
+    this.planned = options.goal;
+    this.goal = alignedGoal(options.goal, facts.aligned);
     this.clock = options.clock;
     this.countdownSeconds = options.countdownSeconds;
     this.identity = options.identity;
@@ -73,12 +81,17 @@ export class RunCore {
       link: this.link,
       why: this.why,
       countdown: this.countdown && { endsAtMs: this.countdown.endsAtMs, seconds: this.countdownSeconds },
-      notLookedAt: this.goal.plan.changedSlots.filter((slot) => !this.lookedAt.has(slot)),
+      notLookedAt: this.goal.changedSlots.filter((slot) => !this.lookedAt.has(slot)),
       onlyThisPagePutsBack: this.goal.driver.definition.memory.deviceTimer === undefined || this.unarmed,
       commitMayHaveLeft: this.facts.commitSent,
       lastWriteAtMs: this.facts.lastWriteAtMs,
       standings: open ? standingsOf(this.goal, this.lastRead) : [],
     };
+  }
+
+  /** The goal before the last step of live alignment, which may never have left; null where there was none. */
+  get goalBefore(): RunGoal | null {
+    return this.facts.alignedBefore && alignedGoal(this.planned, this.facts.alignedBefore);
   }
 
   onView(listener: (view: RunView) => void): () => void {
@@ -106,6 +119,7 @@ export class RunCore {
   async record(body: EntryBody, number = this.facts.nextNumber): Promise<boolean> {
     const entry = { ...body, number, atMs: this.clock.wallMs() };
     this.facts = factsAfter(this.facts, entry);
+    if (entry.kind === "align") this.goal = alignedGoal(this.planned, this.facts.aligned);
     try {
       await this.journal.append(entry);
       return true;

@@ -1,3 +1,4 @@
+import type { NativeValues } from "@/lib/serial/native";
 import { reconcileJournals } from "./reconcile-journals";
 import type { JournalEntry, OwnerWord, RunState } from "./types";
 
@@ -16,6 +17,9 @@ export type RunFacts = {
   readonly lastWriteAtMs: number | null;
   /** The output may be muted: a mute left and no unmute is known to have arrived. */
   readonly muted: boolean;
+  /** What was aligned by hand, over the plan's values; and the same before the last step of it, which may never have left. */
+  readonly aligned: NativeValues;
+  readonly alignedBefore: NativeValues | null;
 };
 
 export const FACTS_AT_START: RunFacts = {
@@ -27,6 +31,8 @@ export const FACTS_AT_START: RunFacts = {
   word: null,
   lastWriteAtMs: null,
   muted: false,
+  aligned: {},
+  alignedBefore: null,
 };
 
 function afterRequest(facts: RunFacts, entry: JournalEntry & { kind: "request" }): RunFacts {
@@ -62,6 +68,10 @@ export function factsAfter(facts: RunFacts, entry: JournalEntry): RunFacts {
       return { ...next, bootCount: entry.bootCount };
     case "stated-cycle":
       return { ...next, statedCycle: true };
+    case "align": {
+      const values = Object.fromEntries(entry.values.map(({ key, value }) => [key, value]));
+      return { ...next, aligned: { ...next.aligned, ...values }, alignedBefore: next.aligned };
+    }
   }
 }
 

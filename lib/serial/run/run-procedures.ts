@@ -13,10 +13,10 @@ const mayBeArmed = (core: RunCore) => hasTimer(core) && !core.unarmed;
 const isVolatile = (core: RunCore) => core.goal.driver.definition.memory.volatileWrites;
 const canAskCommitted = (core: RunCore) => core.goal.driver.definition.status.committed !== undefined;
 
-export const trialSeconds = (core: RunCore) => core.countdownSeconds + TIMER_MARGIN_SECONDS;
-const writingSeconds = (core: RunCore) => core.goal.plan.seconds + core.goal.plan.wholeReadSeconds;
+const trialSeconds = (core: RunCore) => core.countdownSeconds + TIMER_MARGIN_SECONDS;
+const writingSeconds = (core: RunCore) => core.goal.stepsSeconds + core.goal.wholeReadSeconds;
 
-async function readAndJudge(core: RunCore): Promise<Judgement | null> {
+export async function readAndJudge(core: RunCore): Promise<Judgement | null> {
   const { facts } = core;
   const read = await readWhole(core);
   // Judged by the facts before the read: the count it may just have journalled is its own.
@@ -24,7 +24,7 @@ async function readAndJudge(core: RunCore): Promise<Judgement | null> {
 }
 
 /** Steps in order, with a way out between any two. */
-async function follow(core: RunCore, steps: readonly PlanStep[], direction: "forward" | "back"): Promise<StepOutcome | "stopped"> {
+export async function follow(core: RunCore, steps: readonly PlanStep[], direction: "forward" | "back"): Promise<StepOutcome | "stopped"> {
   for (const step of steps) {
     if (core.wantsBack && direction === "forward") return "stopped";
     const outcome = await perform(core, step, direction);
@@ -68,13 +68,23 @@ export async function writeForward(core: RunCore, steps: readonly PlanStep[], ar
   return core.facts.commitSent ? "keep" : "try";
 }
 
+/** A run that is opened by hand: all is as it was, so the device timer is armed over it, and the trial begins. */
+export async function openByHand(core: RunCore): Promise<Turn> {
+  if (!hasTimer(core)) return "try";
+  const armed = await timer(core, "arm", trialSeconds(core));
+  if (armed === "lost") return "rest";
+  return armed === "refused" ? "put-back" : "try";
+}
+
+/** Gives a device timer that may be armed a whole countdown, and the seconds of requests before it. `refused`: it has fired. */
+export async function extendTrial(core: RunCore, requestSeconds = 0): Promise<"done" | "refused" | "lost"> {
+  return mayBeArmed(core) ? timer(core, "extend", requestSeconds + trialSeconds(core)) : "done";
+}
+
 /** `trying`: begins with all new in place and a whole countdown. A timer that has fired is settled by a whole read. */
 export async function beginTrial(core: RunCore): Promise<Turn> {
-  if (mayBeArmed(core)) {
-    const extended = await timer(core, "extend", trialSeconds(core));
-    if (extended === "lost") return "rest";
-    if (extended === "refused") return "arrive";
-  }
+  const extended = await extendTrial(core);
+  if (extended !== "done") return extended === "lost" ? "rest" : "arrive";
   if (core.wantsBack) return "put-back";
   core.startCountdown();
   await core.say("trying");
@@ -149,6 +159,15 @@ async function arriveOld(core: RunCore): Promise<Turn> {
   return "rest";
 }
 
+/** The last step of live alignment never left, by a whole read: what was tried before it is tried again. */
+async function takeBackLastStep(core: RunCore): Promise<Turn | null> {
+  const { goalBefore, lastRead, goal, facts } = core;
+  if (goalBefore === null || lastRead === null || facts.commitSent || !judgeRead(goalBefore, lastRead, facts).allNew) return null;
+  const values = Object.entries(goalBefore.new).flatMap(([key, value]) => (goal.new[key] === value ? [] : [{ key, value }]));
+  if (!(await core.record({ kind: "align", values }))) return "rest";
+  return facts.muted && (await unmute(core)) === "lost" ? "rest" : "try";
+}
+
 /** After a loss, a restart, a device timer, a commit, or when the owner asks: what a whole read means. */
 export async function arrive(core: RunCore): Promise<Turn> {
   const judged = await readAndJudge(core);
@@ -158,6 +177,8 @@ export async function arrive(core: RunCore): Promise<Turn> {
   const { commitSent, word } = core.facts;
   if (allOld && home && proved) return arriveOld(core);
   if (allNew && !commitSent) return core.facts.muted && (await unmute(core)) === "lost" ? "rest" : "try";
+  const takenBack = allOld || allNew ? null : await takeBackLastStep(core);
+  if (takenBack !== null) return takenBack;
   if ((allOld || allNew) && !proved) {
     await core.say("unconfirmed", "What the device shows may not be what it has stored. Switch it off and on, then read it again.");
     return "rest";

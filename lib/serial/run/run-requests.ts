@@ -97,7 +97,7 @@ async function readBack(core: RunCore, writes: readonly NativeWrite[]): Promise<
  *
  * Without a count of starts only a device that stores at once can be believed: all that it loses is its active slot and a mute.
  */
-async function mayHaveRestarted(core: RunCore): Promise<"no" | "perhaps" | "lost"> {
+export async function mayHaveRestarted(core: RunCore): Promise<"no" | "perhaps" | "lost"> {
   const session = liveSession(core);
   if (session === null) return "lost";
   const { status, memory } = core.goal.driver.definition;

@@ -34,6 +34,8 @@ export type JournalEntry = {
   | { readonly kind: "boot-count"; readonly bootCount: number }
   /** The owner states a switch-off after the last write and commit. */
   | { readonly kind: "stated-cycle" }
+  /** Live alignment: what counts as new from here on, over what did before. Stands before the first bytes of its step leave. */
+  | { readonly kind: "align"; readonly values: readonly NativeWrite[] }
 );
 
 /** How one setting stands after a run that reached neither side. */
@@ -76,6 +78,7 @@ export type RunActRefusal =
   | "busy" // another act is under way
   | "too-late" // the countdown has ended: no answer is a "no"
   | "link-lost" // the device is not there
+  | "nothing-new" // what would be kept is what was there before
   | "not-allowed" // the slot is not one of the plan's, or its raster does not fit the screen
   | "other-device"; // what answers is not the device that the run began with
 

@@ -1,5 +1,6 @@
 import { describe, expect, test } from "vitest";
-import { alsoMoved, settingRows } from "@/components/bench/setting-rows";
+import { settingRows } from "@/components/bench/setting-rows";
+import { alsoMoved } from "@/lib/profile/also-moved";
 import { reviewGroups } from "@/components/bench/review-rows";
 import { nativeFromShown, nativeRows, shownRange, shownValue } from "@/components/bench/native-rows";
 import { slotLines } from "@/components/bench/slot-lines";

@@ -1,0 +1,2 @@
+ALTER TABLE "run_step" DROP CONSTRAINT "run_step_kind_known";--> statement-breakpoint
+ALTER TABLE "run_step" ADD CONSTRAINT "run_step_kind_known" CHECK ("run_step"."kind" in ('request', 'state', 'word', 'boot-count', 'stated-cycle', 'align'));
