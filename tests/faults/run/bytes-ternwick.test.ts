@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("ternwick", { backup: { once: 3, lasting: 11 }, run: { once: 23, lasting: 61 }, "put-back": { once: 11, lasting: 41 } }, 3500);
+describeByteSweep("ternwick", { backup: { once: 5, lasting: 17 }, run: { once: 23, lasting: 61 }, "put-back": { once: 11, lasting: 41 } }, 2000);
