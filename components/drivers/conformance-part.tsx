@@ -93,7 +93,7 @@ function Failures({ sections }: { readonly sections: readonly ConformanceSection
   if (broken.length === 0) return null;
   return (
     <div className="mt-4">
-      <h3 className="mb-1 text-lg">What failed</h3>
+      <h2 className="mb-1 text-lg">What failed</h2>
       {broken.map(({ name, cases, failed }) => (
         <details key={name} open className="border-b border-line py-1.5">
           <summary className="font-strong">

@@ -73,7 +73,7 @@ export function LineTable({ recording, marked, sight }: LineTableProps) {
 function Line({ number, line, isMarked }: { readonly number: number; readonly line: RecordingLine; readonly isMarked: boolean }) {
   const [arrow, word] = ARROWS[line.direction];
   return (
-    <tr className={classNames("h-5", isMarked && "bg-[color-mix(in_srgb,var(--halt)_18%,transparent)]")}>
+    <tr className={classNames("h-5", isMarked && "bg-[color-mix(in_srgb,var(--halt)_18%,transparent)] text-text")}>
       <td className="px-3 text-right">{number}</td>
       <td className="pr-4 text-right">{formatFigure(line.atMs, "ms", { decimals: 1 })}</td>
       <td className="pr-3 text-signal">

@@ -25,7 +25,7 @@ export function CommandPart({ driver, row }: { readonly driver: CompiledDriver; 
   const made = commandBytes(driver, command);
   return (
     <section aria-labelledby={headId}>
-      <h3 id={headId} className="break-all text-lg">{row.words}</h3>
+      <h2 id={headId} className="break-all text-lg">{row.words}</h2>
       {example === null ? null : (
         <TextField label="Native value" error={valueProblem(driver, command) ?? undefined} placeholder={example} value={typed} className="figure" fieldClassName="mt-2 max-w-[220px]" onChange={(event) => setTyped(event.target.value)} />
       )}
