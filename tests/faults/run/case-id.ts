@@ -5,12 +5,17 @@ import type { Intent } from "./owner";
 
 export const SCENARIOS = ["backup", "run", "put-back"] as const;
 export type Scenario = (typeof SCENARIOS)[number];
+/** Those of live alignment: swept at requests alone. */
+const ALIGN_SCENARIOS = ["align", "by-hand"] as const;
 
 /** One case of a sweep: a device, what is done with it, and what goes wrong. */
 export type Case = {
   readonly device: DeviceName;
-  /** `put-back`: troubles begin when the run is being tried, and the owner puts back. */
-  readonly scenario: Scenario;
+  /**
+   * `put-back`: troubles begin when the run is being tried, and the owner puts back. `align`: they begin there too, and the owner
+   * goes on by live alignment. `by-hand`: a run without a plan, opened for live alignment.
+   */
+  readonly scenario: Scenario | (typeof ALIGN_SCENARIOS)[number];
   readonly intent: Intent;
   readonly powerOnSlot: 1 | 2;
   readonly dirty: boolean;
@@ -54,7 +59,7 @@ export function parseCase(id: string): Case {
   const [wish, recovery] = intent.split(",");
   const parts = setting.split(",");
   const troubles = troubleText === "" ? [] : troubleText.split("+").map((text) => parseTrouble(text));
-  if (!isOneOf(DEVICE_NAMES, device) || !isOneOf(SCENARIOS, scenario) || !isOneOf(["keep", "put-back"] as const, wish) || !isOneOf(["finish", "put-back"] as const, recovery)) {
+  if (!isOneOf(DEVICE_NAMES, device) || !isOneOf([...SCENARIOS, ...ALIGN_SCENARIOS], scenario) || !isOneOf(["keep", "put-back"] as const, wish) || !isOneOf(["finish", "put-back"] as const, recovery)) {
     throw new Error(`${id} is no name of a case`);
   }
   const faults: Fault[] = [];

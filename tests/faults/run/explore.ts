@@ -74,8 +74,8 @@ async function backUp(world: World): Promise<Explored> {
 export async function explore(one: Case): Promise<Explored> {
   const world = await createWorld(one);
   if (one.scenario === "backup") return backUp(world);
-  const owner = new Owner(world, one.intent);
-  if (one.scenario === "put-back") await owner.start();
+  const owner = new Owner(world, one.intent, one.scenario === "align" || one.scenario === "by-hand");
+  if (one.scenario === "put-back" || one.scenario === "align") await owner.start();
   beginTroubles(world);
   const end = await owner.live();
   const struck = world.line.fired + world.bytes.struck;

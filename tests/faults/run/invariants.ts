@@ -2,15 +2,17 @@ import type { NativeValues } from "@/lib/serial/native";
 import { rasterOfSlot, sameOutput } from "@/lib/serial/plan/output-raster";
 import { factsFrom } from "@/lib/serial/run/run-facts";
 import type { JournalEntry, RunState, RunView } from "@/lib/serial/run/types";
+import { pickAligned, wasAskedFor } from "./alignment";
 import { CHANGED, type World } from "./world";
 
 export type Sides = { readonly old: NativeValues; readonly new: NativeValues };
 
-export function sidesOf({ plan }: World): Sides {
-  return {
-    old: Object.fromEntries(plan.changes.map(({ key, was }) => [key, was])),
-    new: Object.fromEntries(plan.changes.map(({ key, planned }) => [key, planned])),
-  };
+/** With what was aligned, which is one of the values that were asked for (see `wasAskedFor`). */
+export function sidesOf({ plan, isByHand, asked, run, backup }: World): Sides {
+  const former = Object.fromEntries(plan.changes.map(({ key, was }) => [key, was]));
+  const planned = isByHand ? former : Object.fromEntries(plan.changes.map(({ key, planned: value }) => [key, value]));
+  if (asked.length === 0) return { old: former, new: planned };
+  return { old: { ...former, ...pickAligned(backup.content.values) }, new: { ...planned, ...pickAligned(run.values) } };
 }
 
 /** The raster out is that of the slot that is on, as its values are: a question where timing takes effect on recall. */
@@ -32,6 +34,7 @@ export function brokenBy(world: World, before: RunState, view: RunView): readonl
   };
   demand(view.link === "up" || view.why !== "" || before === view.state, "I6 the link is lost, and nothing says why");
   if (view.state === before) return found;
+  demand(wasAskedFor(world), "what counts as new was neither planned nor asked for");
   const sides = sidesOf(world);
   const changedKeys = Object.keys(sides.new);
   const holds = (values: NativeValues, wanted: NativeValues) => changedKeys.every((key) => values[key] === wanted[key]);

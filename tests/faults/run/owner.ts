@@ -3,6 +3,7 @@ import { allowedRasters } from "@/lib/serial/plan/allowed-rasters";
 import type { Run } from "@/lib/serial/run/create-run";
 import { FINAL_RUN_STATES, type OwnerWord, type RunState } from "@/lib/serial/run/types";
 import { brokenBy, brokenInAct, standsNow } from "./invariants";
+import { ALIGN_ACTS, align, nothingNew } from "./alignment";
 import { comeBack, seeToTheLine, type World } from "./world";
 
 /** What the owner means to do, and what with a run that reached neither side. */
@@ -15,6 +16,7 @@ const MAX_ACTS = 24;
 export class Owner {
   readonly broken: string[] = [];
   private looked = false;
+  private aligned = 0;
   private cycled = false;
   private watched: Run | null = null;
   private state: RunState = "ready";
@@ -22,6 +24,7 @@ export class Owner {
   constructor(
     private readonly world: World,
     private readonly intent: Intent,
+    private readonly aligns = false,
   ) {
     const { plan, device } = world;
     const allowed = allowedRasters({ screen: plan.input.screen, before: plan.rasterBefore, after: plan.rasterAfter });
@@ -72,6 +75,12 @@ export class Owner {
       case "ready":
         return this.act("keep", () => run.start());
       case "trying":
+        if (this.aligns && this.aligned < ALIGN_ACTS.length) {
+          this.aligned += 1;
+          return this.act(null, () => Promise.all((ALIGN_ACTS[this.aligned - 1] ?? []).map((target) => align(this.world, target))));
+        }
+        // Steps that never left may have left nothing to keep.
+        if (this.aligns && wish === "keep" && nothingNew(this.world)) return this.act("back", () => run.putBack());
         if (wish === "keep" && !this.looked) {
           this.looked = true;
           return this.act(null, () => run.look(2));

@@ -14,6 +14,8 @@ const KEPT = [
   // A write whose answer a restart took was sent again, to a device without its mute and without what stood before.
   "brackenrow/run/keep,finish/slot1,way5/request-restart@10",
   "brackenrow/run/keep,put-back/slot1,way3/reply-restart@20",
+  // The timer fired between the two writes of a porch step, and the half that was left took effect.
+  "lf8/by-hand/keep,put-back/slot2/timer@14",
   "brackenrow/backup/keep,finish/slot2/in.drop@40!",
   "ternwick/run/keep,put-back/slot2/torn@9",
   "ternwick/put-back/put-back,put-back/slot2/out.flip3@60",

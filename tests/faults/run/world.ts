@@ -8,7 +8,7 @@ import { toNative } from "@/lib/serial/driver/neutral";
 import type { NativeValue, NativeValues } from "@/lib/serial/native";
 import { compiledDriver } from "@/lib/serial/plan/compiled-driver";
 import type { CheckedPlan } from "@/lib/serial/plan/types";
-import { createRun, restoreRun, type Run } from "@/lib/serial/run/create-run";
+import { createAlignment, createRun, restoreAlignment, restoreRun, type AlignmentSetup, type Run } from "@/lib/serial/run/create-run";
 import type { OwnerWord } from "@/lib/serial/run/types";
 import { openSession } from "@/lib/serial/session/open-session";
 import type { DeviceIdentity, DeviceSession, OpenFailure } from "@/lib/serial/session/types";
@@ -70,6 +70,8 @@ export type WorldOptions = {
    * where each number takes effect at once, in many writes, meanwhile with another slot on, or muted.
    */
   readonly way: 1 | 3 | 5;
+  /** `by-hand`: the run has no plan and is opened for live alignment. */
+  readonly scenario?: string;
 };
 
 /** One device, one page and one owner, with what may go wrong between them. */
@@ -86,6 +88,9 @@ export type World = {
   readonly backup: TakenBackup;
   readonly storedAtStart: NativeValues;
   readonly identity: DeviceIdentity;
+  readonly isByHand: boolean;
+  /** Values that live alignment was asked for, each as a whole; the first is what was planned. Empty where nothing is aligned. */
+  readonly asked: NativeValues[];
   run: Run;
   session: DeviceSession;
   journals: TwoJournals;
@@ -188,6 +193,20 @@ function onceOnly({ codec, definition }: CompiledDriver): ReadonlyMap<string, st
   return new Map(named.flatMap(([name, request]) => (request ? [[hexOf(request.bytes), name] as const] : [])));
 }
 
+type HandSetup = Pick<AlignmentSetup, "journal" | "clock" | "identity"> & { readonly plan: CheckedPlan; readonly backup: TakenBackup };
+
+/** A run without a plan, over the same backup. */
+function handSetup({ plan, backup, journal, clock, identity }: HandSetup): AlignmentSetup {
+  const { content, activeSlot, rasterOut } = backup;
+  const { driver, screen, source } = plan.input;
+  return { journal, clock, identity, countdownSeconds: 10, basis: { backup: content, driver, screen, source, activeSlot, rasterOut } };
+}
+
+function begun(run: Result<Run, string>): Run {
+  if (!run.ok) throw new Error(`Live alignment is refused: ${run.error}`);
+  return run.value;
+}
+
 export async function createWorld(options: WorldOptions): Promise<World> {
   const { powerOnSlot, dirty, hidden } = options;
   const driver = compiledDriver(FAULT_DEVICES[options.device]);
@@ -231,9 +250,11 @@ export async function createWorld(options: WorldOptions): Promise<World> {
   const { session, identity } = opened.value;
   const made = await prepare(options, driver, clock, session);
   const journals = twoJournals();
-  const run = createRun({ plan: made.plan, journal: journals.store, clock: pageClock, session, identity, countdownSeconds: 10 });
+  const isByHand = options.scenario === "by-hand";
+  const setup = { ...made, journal: journals.store, clock: pageClock, identity };
+  const run = isByHand ? begun(createAlignment({ ...handSetup(setup), session })) : createRun({ ...setup, session, countdownSeconds: 10 });
   const world: World = {
-    ...base, ...made, identity, storedAtStart: device.stored, run, session, journals,
+    ...base, ...made, identity, isByHand, asked: [], storedAtStart: device.stored, run, session, journals,
     tabOpen: true, timerFired: false, word: "back", secondTabs: [], deviceLied: false, armedOver: null,
   };
   world.noted.length = 0;
@@ -287,7 +308,8 @@ export async function comeBack(world: World): Promise<void> {
   world.session = opened.value.session;
   if (!world.tabOpen) {
     const entries = [...(await world.journals.store.load())];
-    world.run = restoreRun({ plan: world.plan, identity: world.identity, journal: world.journals.store, clock: world.pageClock, countdownSeconds: 10, entries });
+    const setup = { plan: world.plan, backup: world.backup, identity: world.identity, journal: world.journals.store, clock: world.pageClock };
+    world.run = world.isByHand ? begun(restoreAlignment({ ...handSetup(setup), entries })) : restoreRun({ ...setup, countdownSeconds: 10, entries });
     world.tabOpen = true;
   }
   await clock.run(world.run.resume(world.session));
