@@ -36,8 +36,8 @@ export default defineConfig({
   },
   projects: [
     { name: "pages", testMatch: /(?:headers|pages-[\w-]+)\.spec\.ts$/u },
-    // Tests with a device mostly wait for its wire, those of pages keep a core busy: apart, each sort takes less.
-    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|tour)\.spec\.ts$/u, dependencies: ["pages"] },
+    // Tests with a device mostly wait for its wire, those of pages keep a core busy: those come first.
+    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|tour)\.spec\.ts$/u },
   ],
   webServer: {
     command: `"${process.execPath}" scripts/serve-test.mjs`,

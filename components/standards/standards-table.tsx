@@ -111,6 +111,7 @@ const roomFor: Readonly<Partial<Record<Column["id"], number>>> = {
   lineTotal: 980,
   fieldLines: 980,
   sync: 980,
+  field: 800,
 };
 /** A phone stands rows as blocks, which have room for all. */
 const BLOCKS_UP_TO_PX = 703;
