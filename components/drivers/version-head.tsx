@@ -47,7 +47,7 @@ export function VersionHead({ version, rows, onReport }: VersionHeadProps) {
           <MaintainerActs version={version} rows={rows} onReport={onReport} />
         </div>
       </div>
-      {version.note === "" ? null : <p className="mt-2 max-w-[72ch] whitespace-pre-line">{version.note}</p>}
+      {version.note === "" || version.origin === "shipped" ? null : <p className="mt-2 max-w-[72ch] whitespace-pre-line">{version.note}</p>}
       {version.withdrawnReason === null ? null : (
         <p className="mt-2">
           <FindingWord severity="stop">Withdrawn: {version.withdrawnReason}</FindingWord>
