@@ -25,15 +25,7 @@ async function takeStep(core: RunCore, step: AlignStep): Promise<Turn | "done"> 
   if (holds === "no") return "arrive";
   if (!(await core.record({ kind: "align", values: step.changes }))) return "rest";
   core.expect(step.steps.length);
-  // A device timer that fires among the writes leaves half of a step: it must not take effect.
-  const effect = step.steps.findIndex(({ kind }) => kind === "recall");
-  const writes = effect === -1 ? step.steps : step.steps.slice(0, effect);
-  let outcome = await follow(core, writes, "forward");
-  if (outcome === "done" && effect !== -1 && !core.wantsBack) {
-    const stands = await extendTrial(core, step.seconds);
-    if (stands !== "done") return stands === "lost" ? "rest" : "arrive";
-    outcome = await follow(core, step.steps.slice(effect), "forward");
-  }
+  const outcome = await follow(core, step.steps, "forward");
   if (outcome === "lost") return "rest";
   if (outcome === "restarted" && !core.wantsBack) return "arrive";
   if (outcome !== "done" || core.wantsBack) return "put-back";

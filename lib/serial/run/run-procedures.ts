@@ -23,10 +23,15 @@ export async function readAndJudge(core: RunCore): Promise<Judgement | null> {
   return read && judgeRead(core.goal, read, { ...core.facts, bootCount: facts.bootCount });
 }
 
-/** Steps in order, with a way out between any two. */
+/** Steps in order, with a way out between any two. `restarted`: the device is not as it was left, so it is read whole. */
 export async function follow(core: RunCore, steps: readonly PlanStep[], direction: "forward" | "back"): Promise<StepOutcome | "stopped"> {
   for (const step of steps) {
     if (core.wantsBack && direction === "forward") return "stopped";
+    if (step.kind === "recall" && direction === "forward") {
+      // A device timer that fired among the writes leaves half of them: what a recall would put out then, no plan has checked.
+      const stands = await extendTrial(core, writingSeconds(core));
+      if (stands !== "done") return stands === "lost" ? "lost" : "restarted";
+    }
     const outcome = await perform(core, step, direction);
     if (outcome !== "done") return outcome;
     core.advance();

@@ -41,7 +41,20 @@ describe("a run that is kept", () => {
     for (const number of new Set(seen.map((entry) => entry.number))) {
       expect(seen.filter((entry) => entry.number === number).map((entry) => entry.outcome)).toEqual(["leaving", "done"]);
     }
-    expect(requestsOf(rig, "done")).toEqual(["arm", ...rig.plan.steps.map(({ kind }) => kind), "extend"]);
+    // What a recall puts out is checked with every write in place: the device timer is asked first whether it let them stand.
+    const steps = rig.plan.steps.flatMap(({ kind }) => (kind === "recall" ? ["extend", kind] : [kind]));
+    expect(requestsOf(rig, "done")).toEqual(["arm", ...steps, "extend"]);
+  });
+
+  it("makes no slot active over writes that the device timer may have taken back in part", async () => {
+    const rig = await runRig({ target });
+    expect(rig.plan.steps.some(({ kind }) => kind === "recall")).toBe(true);
+    const { recalls } = rig.device.counts;
+    rig.device.setFault((operation) => (operation.kind === "action" && operation.name === "extendTimer" ? { kind: "refuse" } : undefined));
+    await settle(rig.clock, rig.run.start());
+    expect(rig.device.counts.recalls).toBe(recalls);
+    expect(rig.run.view.state).not.toBe("trying");
+    expect(rig.notAllowed).toEqual([]);
   });
 
   it("leaves no timer and no listener behind", async () => {
