@@ -1,7 +1,7 @@
 import { fitOf } from "@/components/screens/fit-words";
 import { knownModes } from "@/components/screens/known-modes";
 import type { KnownMode } from "@/components/screens/known-modes";
-import { fitCount } from "@/components/screens/use-device-modes";
+import { EDID_GROUP, fitCount } from "@/components/screens/use-device-modes";
 import type { DeviceModes } from "@/components/screens/use-device-modes";
 import { FindingWord } from "@/components/ui/finding-icon";
 import { ModeMark } from "@/components/video/mode-glyph";
@@ -41,7 +41,7 @@ export function DeviceFits({ device, envelope }: { readonly device: DeviceModes;
   return (
     <section>
       <h3 className="mb-2 mt-5 text-lg">
-        Modes of {device.deviceName}
+        {device.deviceId === EDID_GROUP ? "Modes of its EDID" : `In the slots of ${device.deviceName}`}
         {device.modes === null ? null : (
           <span className="ml-3 font-sans text-sm font-normal text-muted">{fitCount(device.modes, envelope)}</span>
         )}

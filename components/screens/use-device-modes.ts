@@ -8,7 +8,7 @@ import type { ScreenEnvelope } from "@/lib/timing/envelope";
 import { modeName } from "@/lib/timing/mode-name";
 import { rasterProblems } from "@/lib/timing/raster-problems";
 
-/** Modes of a device as its last backup has them; null while it is being read, or where there is no backup. */
+/** Modes that the slots of a device have in its last backup; null while it is being read, or where there is no backup. */
 export type DeviceModes = {
   readonly deviceId: string;
   readonly deviceName: string;
@@ -22,7 +22,7 @@ export const EDID_GROUP = "edid";
 /** Devices whose backups are read for one screen; more than that stand before no screen. */
 const MOST_DEVICES = 8;
 
-/** The modes of the devices that stand before a screen, from the last backup of each. */
+/** The modes in the slots of the devices that stand before a screen, from the last backup of each. */
 export function useDeviceModes(
   devices: readonly { readonly id: string; readonly name: string }[],
 ): readonly DeviceModes[] {
@@ -42,8 +42,10 @@ export function useDeviceModes(
     if (backupId === null) return { ...base, modes: null, state: "no-backup" };
     const document = backup?.data?.content.document;
     if (document === undefined) return { ...base, modes: null, state: "reading" };
+    // A device holds many modes that no slot has: they never reach the screen.
+    const used = new Set((document.slots ?? []).flatMap(({ mode }) => mode ?? []));
     const modes = (document.modes ?? []).flatMap(({ key, name: ownName, timing }) =>
-      timing === undefined || rasterProblems(timing).length > 0
+      !used.has(key) || timing === undefined || rasterProblems(timing).length > 0
         ? []
         : [{ id: `${id} ${key}`, name: ownName ?? modeName(timing), timing }],
     );

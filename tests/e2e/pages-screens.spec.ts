@@ -16,6 +16,8 @@ test("everybody sees what a standard envelope takes, and where each limit comes 
 
 test("a screen is made from an envelope, changed, and deleted", async ({ page, expectAccessible }) => {
   await register(page, "/screens/new?from=bt470-525");
+  // The form has its values once the page has woken up.
+  await expect(page.getByLabel("Line rate from")).toHaveValue("15.577");
   await page.getByLabel("Name").fill("Workshop, 4:3");
   await page.getByLabel("Line rate from").fill("15,6");
   await page.getByLabel("Bands, where it comes from").selectOption("service-literature");
@@ -61,7 +63,11 @@ async function dropFile(page: Page, name: string, bytes: Uint8Array): Promise<vo
     },
     [name, [...bytes]] as const,
   );
-  await page.dispatchEvent("main", "dragover", { dataTransfer });
+  // A page that has not woken up yet hears no event: the file hangs over it until it says so.
+  await expect(async () => {
+    await page.dispatchEvent("main", "dragover", { dataTransfer });
+    await expect(page.getByText("Let go to read it.")).toBeVisible({ timeout: 1000 });
+  }).toPass();
   await page.dispatchEvent("main", "drop", { dataTransfer });
 }
 
@@ -92,6 +98,8 @@ test("an EDID fills in the form and loses nothing that was typed; a file that is
   page,
 }) => {
   await register(page, "/screens/new?from=bt470-525");
+  // The form has its values once the page has woken up.
+  await expect(page.getByLabel("Line rate from")).toHaveValue("15.577");
   await page.getByLabel("Name").fill("Gallery 2, left");
   const sync = page.getByRole("textbox", { name: "From", exact: true });
   await sync.fill("0.25");
@@ -130,7 +138,9 @@ test("the modes of the devices before a screen stand among the known ones", asyn
   await signInAs(page, "imke", "/screens");
   await page.getByRole("link", { name: /^Cabinet A, upright/u }).click();
   const detail = page.getByRole("article", { name: "Cabinet A, upright" });
-  await expect(detail.getByRole("heading", { name: /^Modes of Cabinet A, upright/u })).toContainText(/\d of \d fit/u);
+  await expect(detail.getByRole("heading", { name: /^In the slots of Cabinet A, upright/u })).toContainText(
+    /\d of \d fit/u,
+  );
   await expect(detail.getByText("on its devices")).toBeVisible();
 });
 
