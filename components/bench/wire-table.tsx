@@ -88,7 +88,7 @@ function Lines({ entries, from, above, below }: LinesProps) {
 const Line = memo(function Line({ entry, isMarked }: { readonly entry: WireEntry; readonly isMarked: boolean }) {
   const [arrow, word] = ARROWS[entry.direction];
   return (
-    <tr aria-current={isMarked || undefined} className={classNames("h-5", isMarked && "bg-[color-mix(in_srgb,var(--lamp)_18%,transparent)]")}>
+    <tr aria-current={isMarked || undefined} className={classNames("h-5", isMarked && "bg-[color-mix(in_srgb,var(--lamp)_18%,transparent)] text-text")}>
       <td className="pr-3">{clockTime(entry.wallMs)}</td>
       <td className="pr-3 text-signal">{arrow}<span className="sr-only">{word}</span></td>
       <td className="pr-6 text-text">{entry.note === undefined ? entry.text : `${entry.text} (${entry.note})`}</td>

@@ -48,7 +48,7 @@ export type WireView = {
 const haystacks = new WeakMap<WireEntry, string>();
 
 function haystackOf(entry: WireEntry): string {
-  const known = haystacks.get(entry) ?? `${entry.text}\n${hexOf(entry.bytes)}`.toUpperCase();
+  const known = haystacks.get(entry) ?? `${entry.text} (${entry.note ?? ""})\n${hexOf(entry.bytes)}`.toUpperCase();
   haystacks.set(entry, known);
   return known;
 }
