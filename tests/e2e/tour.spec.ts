@@ -50,17 +50,3 @@ test("the demo's backups, library and screens have something to show", async ({ 
   await expect(page.getByRole("main").getByRole("link").first()).toBeVisible();
   await stop(page, "screens");
 });
-
-test("a mode is made for a screen, rasters are compared, and a sync output is brought down", async ({ page }) => {
-  await page.goto("/modes");
-  await page.getByLabel("on this device").selectOption({ label: "Lanternfield LF-8" });
-  await page.getByRole("textbox", { name: "Lines, lines", exact: true }).fill("270");
-  await expect(page.getByRole("heading", { name: /don’t fit/u })).toBeVisible();
-  await stop(page, "modes");
-  await page.goto("/standards");
-  await expect(page.getByRole("table").first()).toBeVisible();
-  await stop(page, "standards");
-  await page.goto("/attenuator");
-  await expect(page.getByText(/in line with the sync/u)).toBeVisible();
-  await stop(page, "attenuator");
-});
