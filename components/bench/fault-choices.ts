@@ -82,11 +82,11 @@ export function ruleOf(choice: FaultChoice): FaultRule | null {
   return found ? { place: choice.place, fault: found.fault, when } : null;
 }
 
-/** "From the device: one bit turned over, once, at byte 100". */
+/** "From the device: one bit turned over, at a byte, number 100, once". */
 export function faultWords(choice: FaultChoice): string {
   const place = PLACES.find(({ value }) => value === choice.place)?.label ?? "";
   const what = faultsOf(choice.place).find(({ key }) => key === choice.fault)?.label ?? "";
   const unit = choice.place === "device" ? `at ${OPERATIONS.find(({ value }) => value === choice.operation)?.label ?? ""}` : "at a byte";
-  const when = choice.when === "rate" ? `one in ${choice.count}, seed ${choice.seed}` : choice.when === "once" ? `the ${choice.count}th, once` : `from the ${choice.count}th on`;
+  const when = choice.when === "rate" ? `one in ${choice.count}, seed ${choice.seed}` : choice.when === "once" ? `number ${choice.count}, once` : `from number ${choice.count} on`;
   return `${place}: ${what.toLowerCase()}, ${unit}, ${when}`;
 }

@@ -120,7 +120,7 @@ export function createWireView(log: WireLog, clock: Pick<Clock, "after">): WireV
       const { matches, hit } = store.getState();
       if (matches.length === 0) return;
       const next = hit < 0 ? (step > 0 ? 0 : matches.length - 1) : (hit + step + matches.length) % matches.length;
-      store.setState({ hit: next, sight: { index: matches[next] ?? 0 } });
+      store.setState({ hit: next, sight: { index: matches[next] ?? 0 }, stretch: null });
     },
     showStretch(stretch) {
       again({ isPaused: false, filter: "" });

@@ -52,6 +52,14 @@ describe("the view of the wire log", () => {
     expect(texts()).toEqual(["VPOS 5"]);
   });
 
+  test("filters by what is said of a line, as it is drawn", () => {
+    const { log, view, texts } = scene();
+    log.in(bytesOf("HPOS=3"));
+    log.in(bytesOf("HP_S=3"), { note: "noise" });
+    view.setFilter("(noise)");
+    expect(texts()).toEqual(["HP_S=3"]);
+  });
+
   test("stands still while paused, says how many are newer, and goes on with all of them", async () => {
     const { clock, say, view, texts } = scene();
     say("one");
@@ -93,6 +101,10 @@ describe("the view of the wire log", () => {
     view.setFilter("before");
     view.showStretch({ fromMs, toMs: fromMs + 10 });
     expect(view.store.getState()).toMatchObject({ isOpen: true, isPaused: true, filter: "", sight: { index: 1 } });
+    // A search goes on from there, and what was marked before is marked no more.
+    view.setSearch("before");
+    view.goToHit(1);
+    expect(view.store.getState()).toMatchObject({ stretch: null, sight: { index: 0 } });
   });
 
   test("leaves no timer and no listener when nobody follows", () => {
