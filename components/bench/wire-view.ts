@@ -66,11 +66,6 @@ export function isInStretch({ wallMs }: WireEntry, stretch: WireStretch | null):
   return stretch !== null && wallMs >= stretch.fromMs && wallMs <= stretch.toMs;
 }
 
-/** Whether the ring still holds anything of a stretch. */
-export function holdsStretch(log: WireLog, stretch: WireStretch): boolean {
-  return log.entries().some((entry) => isInStretch(entry, stretch));
-}
-
 /**
  * A view of the wire log: filter, search, pause. Only what is new is looked at, and it is told of at most every 120 ms.
  *
