@@ -36,9 +36,8 @@ export default defineConfig({
   },
   projects: [
     { name: "pages", testMatch: /(?:headers|pages-[\w-]+)\.spec\.ts$/u },
-    // Not yet among them, since no build has been seen to pass them whole: bench-wire, journey-6 and journey-9.
     // Tests with a device mostly wait for its wire, those of pages keep a core busy: those come first.
-    { name: "wire", testMatch: /(?:bench-looks|journey-(?:1|11|2|3|4)-[\w-]+|tour)\.spec\.ts$/u },
+    { name: "wire", testMatch: /(?:bench-[\w-]+|journey-[\w-]+|tour)\.spec\.ts$/u },
   ],
   webServer: {
     command: `"${process.execPath}" scripts/serve-test.mjs`,

@@ -4,7 +4,7 @@ import { modeName } from "@/lib/timing/mode-name";
 import type { RasterTiming } from "@/lib/timing/raster";
 import type { BenchTarget } from "@/components/bench/store/types";
 
-/** The key of the mode inside the document alone: on the device it finds its place as any profile's mode does. */
+/** The key of the mode inside the document alone: on the device it finds its place as the mode of a profile does. */
 const KEY = "new";
 
 /**

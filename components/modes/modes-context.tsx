@@ -8,6 +8,7 @@ import {
   type ModesState,
   type ModesStore,
 } from "@/components/modes/store/modes-store";
+import { setAddress } from "@/components/ui/set-address";
 import { fromQuery, toQuery, type ModesQuery } from "@/components/modes/store/link";
 
 const ModesContext = createContext<ModesStore | null>(null);
@@ -31,7 +32,7 @@ export function ModesProvider({
   useEffect(() => {
     const timer = setTimeout(() => {
       const address = `${location.pathname}?${toQuery(choices)}`;
-      if (address !== location.pathname + location.search) history.replaceState(null, "", address);
+      if (address !== location.pathname + location.search) setAddress(address);
     }, ADDRESS_FOLLOWS_MS);
     return () => clearTimeout(timer);
   }, [choices]);

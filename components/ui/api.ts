@@ -21,6 +21,11 @@ export class ApiProblem extends Error {
   }
 }
 
+/** Whether the server could not be reached, or could not answer: the same request may be answered later. */
+export function isServerAway(error: unknown): boolean {
+  return error instanceof ApiProblem && (error.problem.status === 0 || error.problem.status >= 500);
+}
+
 export type ApiRequest<T> = {
   readonly method?: "GET" | "POST" | "PUT" | "PATCH" | "DELETE";
   /** Sent as JSON. */

@@ -2,6 +2,7 @@
 
 import { usePathname, useSearchParams } from "next/navigation";
 import { useCallback, useEffect, useState } from "react";
+import { setAddress } from "@/components/ui/set-address";
 
 /** Time to finish a figure before the address says it; browsers also refuse an address that changes all the time. */
 const TYPING_MS = 200;
@@ -34,7 +35,7 @@ export function useAddress<State extends object>(
 
   useEffect(() => {
     if (address === `${window.location.pathname}${window.location.search}`) return undefined;
-    const timer = setTimeout(() => window.history.replaceState(null, "", address), TYPING_MS);
+    const timer = setTimeout(() => setAddress(address), TYPING_MS);
     return () => clearTimeout(timer);
   }, [address]);
 

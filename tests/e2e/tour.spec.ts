@@ -22,7 +22,6 @@ test("the front page has a simulated device: slots, raster, picture", async ({ p
 });
 
 test("the bench: settings on rulers, a plan under review, a trial", async ({ page }) => {
-  test.setTimeout(150_000);
   await register(page);
   await connect(page, "simulated");
   await chooseScreen(page, "Any 525-line television");

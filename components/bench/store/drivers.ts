@@ -1,4 +1,4 @@
-import { ApiProblem } from "@/components/ui/api";
+import { isServerAway } from "@/components/ui/api";
 import type { BenchCore } from "@/components/bench/store/bench-core";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
 import { parseDefinition } from "@/lib/serial/driver/parse-definition";
@@ -13,8 +13,6 @@ function compiledOf(definition: unknown, { slug, version }: DriverRef): Compiled
   if (!parsed.ok) throw new Error(`Driver ${slug} ${version} does not compile: ${parsed.error[0]?.message ?? ""}`);
   return parsed.value.driver;
 }
-
-const isAway = (error: unknown) => error instanceof ApiProblem && (error.problem.status === 0 || error.problem.status >= 500);
 
 /** One version of a driver: that which came with the program, or as the server has it. Throws `ApiProblem`. */
 export async function driverOf(core: BenchCore, ref: DriverRef): Promise<CompiledDriver> {
@@ -34,7 +32,7 @@ export async function firstDriver(core: BenchCore, slug: string): Promise<Compil
     const newest = await core.around.server.newestDriver(slug);
     if (newest !== null) return await driverOf(core, { slug, version: newest });
   } catch (error) {
-    if (!shipped || !isAway(error)) throw error;
+    if (!shipped || !isServerAway(error)) throw error;
   }
   if (!shipped) throw new Error(`No version of the driver ${slug} is published.`);
   return compiledDriver(shipped);

@@ -3,7 +3,7 @@ import { deviceLimits } from "@/lib/serial/limits";
 import type { SerialPortLike } from "@/lib/serial/port";
 import { openSession } from "@/lib/serial/session/open-session";
 import type { DeviceIdentity } from "@/lib/serial/session/types";
-import { ApiProblem } from "@/components/ui/api";
+import { ApiProblem, isServerAway } from "@/components/ui/api";
 import { portFailureOf, portHelp } from "@/components/bench/port-help";
 import { EMPTY_BENCH, say, sentenceOf, type BenchCore } from "@/components/bench/store/bench-core";
 import { driverOf, firstDriver, type DriverRef } from "@/components/bench/store/drivers";
@@ -46,8 +46,7 @@ async function keptOnServer(core: BenchCore, deviceId: string): Promise<KeptRun 
 /** With a journal of its own this browser goes on while the server is away, and delivers later; without one it cannot. */
 function whenAway(here: KeptRun | null): (error: unknown) => null {
   return (error) => {
-    const isAway = error instanceof ApiProblem && (error.problem.status === 0 || error.problem.status >= 500);
-    if (here !== null && isAway) return null;
+    if (here !== null && isServerAway(error)) return null;
     throw error;
   };
 }
@@ -71,8 +70,7 @@ async function takeUpOpenRun(core: BenchCore): Promise<boolean> {
   const kept = here ?? there;
   if (!kept) return false;
   const fromServer = kept.runId !== null && there ? await stepsOnServer(core, kept.runId, here !== null).catch(whenAway(here)) : null;
-  await takeUpRun(core, kept, fromServer ?? [], fromServer !== null);
-  return core.run !== null;
+  return takeUpRun(core, kept, fromServer ?? [], fromServer !== null);
 }
 
 /** After the device said who it is: its row, its last backup, an open run, its whole content. */

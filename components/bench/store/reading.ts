@@ -13,11 +13,12 @@ const DRAW_MS = 100;
 async function readWhole(core: BenchCore, activity: Activity): Promise<TakenBackup | null> {
   const { line, store } = core;
   if (!line) return null;
-  core.abort = new AbortController();
+  const abort = new AbortController();
+  core.abort = abort;
   let drawnMs = 0;
   store.setState({ activity });
   const taken = await takeBackup(line.session, line.driver, {
-    signal: core.abort.signal,
+    signal: abort.signal,
     onProgress: (progress) => {
       // A reply comes every 2 ms; drawing each would keep the page from hearing the next.
       const nowMs = core.around.clock.nowMs();
@@ -26,7 +27,7 @@ async function readWhole(core: BenchCore, activity: Activity): Promise<TakenBack
       store.setState({ progress });
     },
   });
-  const arriving = taken.ok ? await line.session.arriving(core.abort.signal) : null;
+  const arriving = taken.ok ? await line.session.arriving(abort.signal) : null;
   core.abort = null;
   store.setState({ progress: null, activity: "idle" });
   if (!taken.ok) {

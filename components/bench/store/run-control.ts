@@ -180,17 +180,25 @@ export async function startRun(core: BenchCore, { plan, runId, countdownSeconds 
  * Takes up a run that a closed tab, a reload or another browser left open.
  *
  * @param hasHold whether the server knows this tab as the holder; else it is told when it is there again
+ * @returns whether it was taken up: it may have come to its end by then, and sees to the device itself
  */
-export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: readonly JournalEntry[], hasHold: boolean): Promise<void> {
-  if (!core.line) return;
+export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: readonly JournalEntry[], hasHold: boolean): Promise<boolean> {
+  if (!core.line) return false;
+  const { definition } = core.line.driver;
+  const planned = kept.input.driver;
+  if (planned.slug !== definition.slug || planned.version !== definition.version) {
+    say(core, "halt", `A run was left open with version ${planned.version} of this driver, and the device is met with version ${definition.version}. Nothing is written. Connect again when the server can be reached.`);
+    return false;
+  }
   if (!(await takeHold(core, runKey(core)))) {
     say(core, "halt", "Another tab of this browser has a run open on this device. Go on there.");
-    return;
+    return false;
   }
   const { plan } = planChanges(kept.input);
   if (plan?.hash !== kept.hash) {
+    letGo(core);
     say(core, "halt", "A run was left open, but its plan can no longer be made the same. Restore a backup to know how the device stands.");
-    return;
+    return false;
   }
   const entries = reconcileJournals(kept.entries, fromServer);
   const whole = { ...kept, entries };
@@ -198,6 +206,7 @@ export async function takeUpRun(core: BenchCore, kept: KeptRun, fromServer: read
   const run = restoreRun({ plan, journal, clock: core.around.clock, countdownSeconds: kept.countdownSeconds, identity: kept.identity, entries });
   follow(core, run, plan, whole, journal);
   await resumeRun(core);
+  return true;
 }
 
 /** Goes on with the open run over the session that stands now. Where another device answers, the line is given up. */

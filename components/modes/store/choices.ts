@@ -53,7 +53,7 @@ export type ModesChoices = {
   /** It was changed by hand, so figures change it instead of looking for another. */
   readonly byHand: boolean;
   readonly screen: ModesScreen;
-  /** Null: any device. */
+  /** Null where no device is chosen. */
   readonly device: ModesDevice | null;
   /** Null: nothing is known about what arrives. */
   readonly source: SourceFormat | null;

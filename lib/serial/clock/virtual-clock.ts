@@ -1,6 +1,6 @@
 import type { Clock } from "@/lib/serial/clock";
 
-/** A clock that stands still until it is told: any run repeats, and waiting costs nothing. */
+/** A clock that stands still until it is told. So a run repeats, and waiting costs nothing. */
 export interface VirtualClock extends Clock {
   /** Timers that were set and have neither fired nor been taken back. */
   pendingTimers(): number;

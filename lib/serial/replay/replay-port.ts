@@ -4,7 +4,7 @@ import type { Recording } from "@/lib/serial/recording";
 import { createSimulatedDevicePort } from "@/lib/serial/simulator/simulated-device-port";
 import { createReplayDevice, type ReplayDevice, type ReplayOptions } from "./replay-device";
 
-/** A recording behind a port: any session can talk to it as to a device. */
+/** A recording behind a port, which a session talks to as to a device. */
 export type ReplayPort = { readonly port: SerialPortLike; readonly device: ReplayDevice };
 
 /**
