@@ -32,7 +32,7 @@ export default defineConfig({
     viewport: { width: 1440, height: 900 },
     locale: "en-GB",
     timezoneId: "Europe/London",
-    launchOptions: { executablePath: process.env.CHROMIUM_PATH ?? "/usr/bin/chromium" },
+    launchOptions: { executablePath: process.env.CHROMIUM_PATH ?? "/usr/bin/chromium-headless-shell" },
   },
   projects: [
     { name: "pages", testMatch: /(?:headers|pages-[\w-]+)\.spec\.ts$/u },

@@ -54,8 +54,8 @@ async function runLane(lane) {
 async function main() {
   checkNode();
   giveHome();
-  await ensurePackages(programs, say);
-  await installPackages(say);
+  // One mostly waits for the disk, the other for the network.
+  await Promise.all([ensurePackages(programs, say), installPackages(say)]);
   for (const stage of stages) await Promise.all(stage.map(runLane));
 }
 
