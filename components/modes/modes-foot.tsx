@@ -10,7 +10,7 @@ import { useSignedIn } from "@/components/shell/signed-in";
 import { useModes } from "@/components/modes/modes-context";
 import { ProfileDialog } from "@/components/modes/profile-dialog";
 import { toQuery } from "@/components/modes/store/link";
-import { useCopy } from "@/components/modes/use-copy";
+import { useCopy } from "@/components/ui/use-copy";
 import { rasterWords, verdictOf } from "@/components/modes/words";
 import { formatModeline } from "@/lib/timing/modeline/format-modeline";
 import { rasterToText } from "@/lib/timing/raster-text";
@@ -49,7 +49,7 @@ export function ModesFoot() {
       >
         <Button
           disabled={timing === null}
-          onClick={() => timing !== null && copy(formatModeline(timing), "The modeline")}
+          onClick={() => timing !== null && copy(formatModeline(timing), "modeline")}
         >
           Copy modeline
         </Button>

@@ -10,7 +10,7 @@ import { ModesProvider, useModes } from "@/components/modes/modes-context";
 import { ModesFoot } from "@/components/modes/modes-foot";
 import { PlaneColumn } from "@/components/modes/plane-column";
 import { toQuery, type ModesQuery } from "@/components/modes/store/link";
-import { useCopy } from "@/components/modes/use-copy";
+import { useCopy } from "@/components/ui/use-copy";
 import { StartFromBench } from "@/components/modes/start-from-bench";
 import { useOwnScreen } from "@/components/modes/use-own-screen";
 import { WantedColumn } from "@/components/modes/wanted-column";
@@ -70,7 +70,7 @@ function HeadActs() {
       <Button
         size="small"
         kind="quiet"
-        onClick={() => copy(`${location.origin}${location.pathname}?${query}`, "The link to this page")}
+        onClick={() => copy(`${location.origin}${location.pathname}?${query}`, "link to this page")}
       >
         Copy link
       </Button>

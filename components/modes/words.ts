@@ -1,7 +1,7 @@
 import type { Candidate, ModesAnswer } from "@/components/modes/store/answer";
 import { figureText, figureWithUnit, figureWords } from "@/components/modes/store/figure-words";
 import { formatClock, formatFieldRate, formatFigure, formatLineRate, formatNumber } from "@/components/ui/figures";
-import { slipText } from "@/lib/profile/mode-findings";
+import { slipText } from "@/lib/profile/slip-remedies";
 import { isExact, type ClockSteps } from "@/lib/timing/clock-steps";
 import type { EnvelopeVerdict, RasterRule } from "@/lib/timing/judge-envelope";
 import { judgeEnvelope } from "@/lib/timing/judge-envelope";

@@ -1,36 +1,10 @@
-/** U+2009, in thousands and nowhere else: units follow a no-break space. */
-const THIN_SPACE = "\u2009";
+import { figure, type FigureStyle } from "@/lib/timing/figure-text";
+
 const NO_BREAK_SPACE = "\u00A0";
 const MINUS = "\u2212";
 
-export type FigureStyle = {
-  /** Exactly so many decimals. */
-  readonly decimals?: number;
-  /** At most so many decimals, trailing zeros dropped. Without either: 3 at most. */
-  readonly decimalsAtMost?: number;
-  /** A plus before a value above 0. */
-  readonly signed?: boolean;
-};
-
-function digits(magnitude: number, style: FigureStyle): string {
-  if (style.decimals !== undefined) return magnitude.toFixed(style.decimals);
-  const text = magnitude.toFixed(style.decimalsAtMost ?? 3);
-  return text.includes(".") ? text.replace(/\.?0+$/u, "") : text;
-}
-
-/**
- * A number as it stands on screen: thin spaces in thousands (also in five-digit figures and above: "1 440"),
- * a real minus, no "−0".
- */
-export function formatNumber(value: number, style: FigureStyle = {}): string {
-  if (!Number.isFinite(value)) return "–";
-  const text = digits(Math.abs(value), style);
-  const [whole = "0", fraction] = text.split(".");
-  const grouped = whole.replace(/\B(?=(?:\d{3})+$)/gu, THIN_SPACE);
-  const isZero = /^[0.]*$/u.test(text);
-  const sign = isZero ? "" : value < 0 ? MINUS : style.signed === true ? "+" : "";
-  return `${sign}${grouped}${fraction === undefined ? "" : `.${fraction}`}`;
-}
+/** A number as it stands on screen. */
+export const formatNumber = figure;
 
 /** A number and its unit, joined so that no line ends between them. */
 export function withUnit(figure: string, unit: string): string {

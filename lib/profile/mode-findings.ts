@@ -1,16 +1,15 @@
 import type { ScreenEnvelope } from "@/lib/timing/envelope";
-import { hz, withUnit } from "@/lib/timing/figure-text";
+import { hz } from "@/lib/timing/figure-text";
 import { modeName } from "@/lib/timing/mode-name";
 import type { RasterTiming, SourceFormat } from "@/lib/timing/raster";
-import { fieldRateHz, lineTotal } from "@/lib/timing/rates";
-import { closeSlip, type SlipCure } from "@/lib/timing/slip/close-slip";
-import type { RateSlip } from "@/lib/timing/slip/rate-slip";
+import { fieldRateHz } from "@/lib/timing/rates";
+import { rateSlip } from "@/lib/timing/slip/rate-slip";
 import { checkProfile } from "./check/check-profile";
 import { PROFILE_FORMAT, PROFILE_VERSION, type ProfileDocument } from "./document";
-import type { DocumentPatch, Finding, Remedy } from "./finding";
-import { fitLimits } from "./fit-limits";
+import type { Finding, Remedy } from "./finding";
 import type { DeviceLimits } from "./limits";
 import { applyPatch, modePath, parsePath } from "./paths";
+import { intervalText, slipRemedies } from "./slip-remedies";
 
 export type ModeCheck = {
   readonly timing: RasterTiming;
@@ -22,9 +21,6 @@ export type ModeCheck = {
 
 /** What these say is about a device or a slot, whatever raster it has; slip is told below, with what closes it. */
 const notOfARaster = new Set(["screen.idle", "unknown.device", "device.firmware", "device.input", "rate.slip"]);
-
-/** Cures offered at most. */
-const MAX_CURES = 2;
 
 function documentOf(key: string, timing: RasterTiming): ProfileDocument {
   // A slot that shows it: the checks speak of modes that something uses.
@@ -39,33 +35,10 @@ function documentOf(key: string, timing: RasterTiming): ProfileDocument {
 const ofModeAlone = (remedy: Remedy) =>
   remedy.kind === "set" && remedy.patch.every(({ path }) => parsePath(path)?.scope === "mode");
 
-/** "18 s", "17 minutes", "5 hours" */
-export function intervalText(seconds: number): string {
-  if (seconds < 10) return withUnit(seconds, "s", seconds < 1 ? 2 : 1);
-  if (seconds < 120) return withUnit(seconds, "s", 0);
-  return seconds < 7200 ? withUnit(seconds / 60, "minutes", 0) : withUnit(seconds / 3600, "hours", 0);
-}
-
-/** "repeats every 18 s", "drops every 52 s", or that there is none. */
-export function slipText(slip: RateSlip): string {
-  return slip.everyS === undefined ? "none" : `${slip.kind} every ${intervalText(slip.everyS)}`;
-}
-
-function cureRemedy(key: string, cure: SlipCure): Remedy {
-  const { timing } = cure;
-  const patch: DocumentPatch[] = [
-    { path: modePath(key, "timing.pixelClockHz"), value: timing.pixelClockHz },
-    { path: modePath(key, "timing.horizontal.backPorch"), value: timing.horizontal.backPorch },
-  ];
-  const how = `${withUnit(timing.pixelClockHz / 1e6, "MHz")}, ${withUnit(lineTotal(timing), "clocks")}`;
-  return { kind: "set", label: `Use ${how}: ${slipText(cure.slip)}`, patch };
-}
-
 /** Slip between what arrives and what leaves, with the clocks that bring the two nearer on this device and screen. */
 function slipFinding(key: string, { timing, device, screen, source }: ModeCheck): Finding[] {
   if (source === undefined || device?.outputClock === "input") return [];
-  const cures = closeSlip(timing, source.fieldRateHz, device === undefined ? {} : fitLimits(device), screen);
-  const { everyS, kind } = cures.now;
+  const { everyS, kind } = rateSlip(source.fieldRateHz, fieldRateHz(timing));
   if (everyS === undefined) return [];
   return [
     {
@@ -77,7 +50,7 @@ function slipFinding(key: string, { timing, device, screen, source }: ModeCheck)
       sentence: `A frame ${kind} every ${intervalText(everyS)}.`,
       detail: `${hz(source.fieldRateHz, 3)} comes in, ${hz(fieldRateHz(timing), 3)} goes out.`,
       slots: [],
-      remedies: cures.cures.slice(0, MAX_CURES).map((cure) => cureRemedy(key, cure)),
+      remedies: slipRemedies(key, timing, source.fieldRateHz, { device, screen }),
     },
   ];
 }

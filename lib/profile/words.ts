@@ -1,29 +1,17 @@
 import type { LimitSource } from "@/lib/timing/envelope";
-
-const THIN_SPACE = "\u2009";
-const MINUS = "\u2212";
-
-/** A figure: at most `decimals` decimals, a thin space in thousands, a real minus, no negative zero. */
-export function figure(value: number, decimals = 3): string {
-  const text = Math.abs(value).toFixed(decimals);
-  const [whole = "0", fraction = ""] = text.split(".");
-  const grouped = whole.replace(/\B(?=(?:\d{3})+$)/gu, THIN_SPACE);
-  const rest = fraction.replace(/0+$/u, "");
-  const sign = value < 0 && /[1-9]/u.test(text) ? MINUS : "";
-  return `${sign}${grouped}${rest === "" ? "" : `.${rest}`}`;
-}
+import { figure } from "@/lib/timing/figure-text";
 
 /** A figure and its unit: "97.6 %". A count of one has its unit in the singular: "1 line". */
 export function withUnit(value: number, unit: string | undefined, decimals = 3): string {
-  if (unit === undefined || unit === "") return figure(value, decimals);
+  if (unit === undefined || unit === "") return figure(value, { decimalsAtMost: decimals });
   const singular = Math.abs(value) === 1 && unit.endsWith("lines") ? unit.slice(0, -1) : unit;
-  return `${figure(value, decimals)} ${singular}`;
+  return `${figure(value, { decimalsAtMost: decimals })} ${singular}`;
 }
 
 /** "97.6 %", "100.0 %": sizes keep one decimal, so that they stand below one another. */
 export function percent(value: number): string {
   const one = Math.abs(value * 10 - Math.round(value * 10)) < 1e-6;
-  return one ? `${value < 0 ? MINUS : ""}${Math.abs(value).toFixed(1)} %` : withUnit(value, "%");
+  return one ? `${figure(value, { decimals: 1 })} %` : withUnit(value, "%");
 }
 
 /** 15 734.266 → "15.734 kHz". */

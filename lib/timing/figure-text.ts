@@ -3,19 +3,38 @@ const THIN_SPACE = "\u2009";
 const NO_BREAK_SPACE = "\u00A0";
 const MINUS = "\u2212";
 
-/** A figure as sentences write it: at most so many decimals, thin spaces in thousands, a real minus. */
-export function figure(value: number, decimalsAtMost = 3): string {
-  const text = Math.abs(value).toFixed(decimalsAtMost);
-  const short = text.includes(".") ? text.replace(/\.?0+$/u, "") : text;
-  const [whole = "0", fraction] = short.split(".");
+export type FigureStyle = {
+  /** Exactly so many decimals. */
+  readonly decimals?: number;
+  /** At most so many decimals, trailing zeros dropped. Without either: 3 at most. */
+  readonly decimalsAtMost?: number;
+  /** A plus before a value above 0. */
+  readonly signed?: boolean;
+};
+
+function digits(magnitude: number, style: FigureStyle): string {
+  if (style.decimals !== undefined) return magnitude.toFixed(style.decimals);
+  const text = magnitude.toFixed(style.decimalsAtMost ?? 3);
+  return text.includes(".") ? text.replace(/\.?0+$/u, "") : text;
+}
+
+/**
+ * A number as it stands in sentences and on screen: thin spaces in thousands ("1 440"), a real minus, no "−0".
+ * What is no finite number is a dash.
+ */
+export function figure(value: number, style: FigureStyle = {}): string {
+  if (!Number.isFinite(value)) return "–";
+  const text = digits(Math.abs(value), style);
+  const [whole = "0", fraction] = text.split(".");
   const grouped = whole.replace(/\B(?=(?:\d{3})+$)/gu, THIN_SPACE);
-  const sign = value < 0 && !/^[0.]*$/u.test(short) ? MINUS : "";
+  const isZero = /^[0.]*$/u.test(text);
+  const sign = isZero ? "" : value < 0 ? MINUS : style.signed === true ? "+" : "";
   return `${sign}${grouped}${fraction === undefined ? "" : `.${fraction}`}`;
 }
 
-/** A figure and its unit. */
+/** A figure and its unit, joined so that no line ends between them. */
 export function withUnit(value: number, unit: string, decimalsAtMost = 3): string {
-  return `${figure(value, decimalsAtMost)}${NO_BREAK_SPACE}${unit}`;
+  return `${figure(value, { decimalsAtMost })}${NO_BREAK_SPACE}${unit}`;
 }
 
 /** "15.734 kHz" */

@@ -13,7 +13,7 @@ const none = (page: Page) => page.getByRole("heading", { name: /don’t fit/u })
 
 async function copiedModeline(page: Page): Promise<RasterTiming> {
   await foot(page).getByRole("button", { name: "Copy modeline" }).click();
-  await expect(page.getByText("The modeline was copied.").first()).toBeVisible();
+  await expect(page.getByText("Copied: modeline.").first()).toBeVisible();
   const read = parseModeline(await page.evaluate(() => navigator.clipboard.readText()));
   if (!read.ok) throw new Error(read.error.message);
   return read.value.timing;

@@ -30,7 +30,7 @@ function blankingNote({ axis, part, measured, unit, span }: BlankingVerdict): st
   const name = `${axis === "horizontal" ? "Line" : "Field"} ${partWords[part]}`;
   const value = withUnit(measured, unit, 2);
   if (span === undefined) return `${name} of ${value}.`;
-  return `${name} of ${value}; the standards of this line rate have ${figure(span[0], 2)} to ${withUnit(span[1], unit, 2)}.`;
+  return `${name} of ${value}; the standards of this line rate have ${figure(span[0], { decimalsAtMost: 2 })} to ${withUnit(span[1], unit, 2)}.`;
 }
 
 /** "CTA-861, code 8, 262 lines in all" */

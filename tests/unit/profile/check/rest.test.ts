@@ -153,6 +153,10 @@ describe("rate", () => {
     expect(
       theOne("rate.slip", { document: oneSlot({ expects: { ...source, fieldRateHz: 61 } }), device: lf8 }).sentence,
     ).toContain("drops");
+    // What brings the two nearer on the steps of this clock (50 kHz): as clocks of the mode that the slot shows.
+    const [first] = note.remedies;
+    expect(first).toMatchObject({ kind: "set", patch: [{ path: expect.stringMatching(/timing\.pixelClockHz$/u) as string }, { path: expect.stringMatching(/backPorch$/u) as string }] });
+    expect(first?.label).toMatch(/^Use [\d.]+\sMHz, [\d\s]+\sclocks: (?:none|(?:repeats|drops) every \d+\s(?:minutes|hours))$/u);
   });
 
   it("notes nothing where the rates are the same, or the output follows the input", () => {
@@ -233,7 +237,7 @@ describe("every remedy", () => {
   const rank: Readonly<Record<Severity, number>> = { note: 0, caution: 1, stop: 2 };
   const keyOf = (rule: string, path: string) => `${rule} ${path}`;
 
-  it("that sets values makes its finding pass, and throws nothing", () => {
+  it("that sets values makes its finding pass, or a slip rarer, and throws nothing", () => {
     fc.assert(
       fc.property(
         anyProfile,
@@ -248,8 +252,11 @@ describe("every remedy", () => {
               const after = check(applyPatch(document, remedy.patch)).filter(
                 ({ rule, path }) => keyOf(rule, path) === keyOf(finding.rule, finding.path),
               );
+              // A slip that no step of the clock closes comes less often.
+              const isBetter = (one: typeof finding) =>
+                finding.rule === "rate.slip" ? Number(one.measured) > Number(finding.measured) : rank[one.severity] < rank[finding.severity];
               expect(
-                after.every(({ severity }) => rank[severity] < rank[finding.severity]),
+                after.every(isBetter),
                 `${finding.rule}: ${remedy.label}`,
               ).toBe(true);
             }
