@@ -47,7 +47,8 @@ export function FigureField({ figure, value, disabled = false, isCell = false, d
     <span className="block">
       <span
         className={classNames(
-          "flex min-h-9 items-baseline gap-2 rounded-control border bg-surface px-2.5 py-1 focus-within:border-text",
+          "flex min-h-9 items-baseline gap-2 rounded-control border bg-surface py-1 focus-within:border-text",
+          isCell ? "px-1.5" : "px-2.5",
           complaint === undefined ? "border-edge" : "border-halt",
           disabled && "opacity-60",
         )}

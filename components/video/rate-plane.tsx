@@ -72,7 +72,7 @@ export function RatePlane({ screenName, bands, points, rayLines = [], heightPx =
       </svg>
       <figcaption className="mt-1 flex justify-between gap-3 text-sm text-muted">
         <span>Shaded: what {screenName} takes</span>
-        <span className="figure">Hz over kHz</span>
+        <span className="figure whitespace-nowrap">Hz over kHz</span>
       </figcaption>
     </figure>
   );
