@@ -6,11 +6,13 @@ import { inputLook } from "@/components/ui/field";
 import { FootBar } from "@/components/ui/foot-bar";
 import { DemoNote, PageHead } from "@/components/ui/page-head";
 import { formatCount, formatFigure, formatNumber } from "@/components/ui/figures";
+import { groupFindings, staysAsItIs } from "@/components/bench/finding-groups";
 import { FindingList } from "@/components/bench/finding-list";
 import { ReviewTable } from "@/components/bench/review-table";
 import { reviewGroups } from "@/components/bench/review-rows";
 import { useBench, useBenchAccount, useBenchActions, useSettled } from "@/components/bench/bench-provider";
 import type { BenchReview, BenchTarget } from "@/components/bench/store/types";
+import type { Planned } from "@/lib/serial/plan/types";
 
 /** Seconds that a trial waits for a Keep; the run takes 10 to 120. */
 const COUNTDOWNS = [10, 30, 60, 120];
@@ -51,7 +53,7 @@ export function ReviewView({ review }: { readonly review: BenchReview }) {
         </div>
         <aside aria-labelledby="findings-head" className="pt-7">
           <h2 id="findings-head" className="text-xl">{headOf(review)}</h2>
-          <FindingList findings={planned.findings} acknowledged={review.acknowledged} onAcknowledge={acknowledge} onRemedy={takeRemedy} canSetValues={target.kind !== "restore"} changedKeys={planned.changes.map((change) => change.key)} />
+          <FindingList findings={planned.findings} acknowledged={review.acknowledged} onAcknowledge={acknowledge} onRemedy={takeRemedy} canSetValues={target.kind !== "restore"} changedKeys={changedKeysOf(planned)} />
           <SlotsLeftOut review={review} />
           <p className="mt-3 border-t border-line pt-3 text-sm text-muted">A signal above or below a CRT&apos;s range can damage its deflection stage. The set&apos;s service literature decides, before any figure here.</p>
           {device.kind === "simulated" ? <div className="mt-3"><DemoNote>This device is simulated: what it shows proves the plan, not the hardware.</DemoNote></div> : null}
@@ -101,6 +103,15 @@ function SlotsLeftOut({ review }: { readonly review: BenchReview }) {
   );
 }
 
+const changedKeysOf = ({ changes }: Planned) => changes.map((change) => change.key);
+
+/** How many boxes of the list acknowledge what is open: what says the same has one. */
+function boxesOf(planned: Planned, open: readonly string[]): number {
+  const changedKeys = changedKeysOf(planned);
+  const groups = groupFindings(planned.findings, (finding) => staysAsItIs(finding, changedKeys));
+  return groups.filter(({ severity, keys }) => severity === "caution" && keys.some((key) => open.includes(key))).length;
+}
+
 function blockedBy(review: BenchReview, hasScreen: boolean, isLive: boolean): string | null {
   const stops = review.planned.findings.filter((finding) => finding.severity === "stop");
   if (!isLive) return "the device must be connected.";
@@ -108,7 +119,7 @@ function blockedBy(review: BenchReview, hasScreen: boolean, isLive: boolean): st
   const first = stops[0];
   if (first) return stops.length === 1 ? first.sentence : `${first.sentence} And ${formatCount(stops.length - 1, "more stop", "more stops")}.`;
   const open = review.planned.toAcknowledge.filter((key) => !review.acknowledged.includes(key));
-  if (open.length > 0) return `read ${formatCount(open.length, "caution", "cautions")} first.`;
+  if (open.length > 0) return `read ${formatCount(boxesOf(review.planned, open), "caution", "cautions")} first.`;
   return review.planned.changes.length === 0 ? "nothing would change." : null;
 }
 

@@ -5,6 +5,7 @@ import Link from "next/link";
 import { SelectField } from "@/components/ui/field";
 import { useBench, useBenchActions } from "@/components/bench/bench-provider";
 import { useScreenChoices } from "@/components/bench/use-screen-choices";
+import type { ScreenChoice } from "@/components/bench/store/screens";
 import type { BenchScreen } from "@/components/bench/store/types";
 
 const NONE = "none";
@@ -15,13 +16,18 @@ function keyOf(screen: BenchScreen): string {
   return screen.kind === "accepted-unknown" ? UNKNOWN : (screen.id ?? `name:${screen.envelope.name}`);
 }
 
+/** The choice that was made. A class of screens that has just become the owner's is not among their own until the list comes anew. */
+function choiceOf(choices: readonly ScreenChoice[], { id, envelope }: Extract<BenchScreen, { kind: "known" }>): ScreenChoice | undefined {
+  return choices.find((choice) => id !== null && choice.id === id) ?? choices.find((choice) => choice.envelope.name === envelope.name);
+}
+
 /** Which screen the signal goes to: everything is checked against it. */
 export function ScreenChooser() {
   const choices = useScreenChoices();
   const screen = useBench((state) => state.screen);
   const isRunning = useBench((state) => state.activity === "running");
   const { chooseScreen, acceptUnknownScreen, forgetScreen } = useBenchActions();
-  const current = screen.kind === "known" ? choices.find((choice) => (screen.id === null ? choice.envelope.name === screen.envelope.name : choice.id === screen.id)) : undefined;
+  const current = screen.kind === "known" ? choiceOf(choices, screen) : undefined;
   const client = useQueryClient();
   const choose = (key: string) => {
     const choice = choices.find((one) => one.key === key);

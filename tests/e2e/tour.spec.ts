@@ -49,3 +49,24 @@ test("the demo's backups, library and screens have something to show", async ({ 
   await expect(page.getByRole("main").getByRole("link").first()).toBeVisible();
   await stop(page, "screens");
 });
+
+test("rasters that fit, those that are printed, and a resistor", async ({ page }) => {
+  await page.goto("/modes");
+  await expect(page.getByRole("heading", { name: /fit\.$/u })).toBeVisible();
+  await stop(page, "modes");
+  await page.goto("/standards");
+  await expect(page.getByRole("table").getByRole("row").nth(7)).toBeVisible();
+  await stop(page, "standards");
+  await page.goto("/attenuator?source=5&impedance=33&screen=bt470-525");
+  await expect(page.getByText(/in line with the sync\.$/u)).toBeVisible();
+  await stop(page, "attenuator");
+});
+
+test("drivers, and how one was proved", async ({ page }) => {
+  await page.goto("/drivers");
+  await expect(page.getByRole("table", { name: "Drivers by device model" }).getByRole("link", { name: "Lanternfield LF-8" })).toBeVisible();
+  await stop(page, "drivers");
+  await page.goto("/drivers/lanternfield-lf8?part=conformance");
+  await expect(page.getByRole("table", { name: "Sections of the report" })).toBeVisible();
+  await stop(page, "conformance");
+});
