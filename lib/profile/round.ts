@@ -36,6 +36,8 @@ const BINARY_NOISE = 1e-9;
 
 /** Takes the binary noise out of `min + n · step`: no device counts in more than 12 digits. */
 function clean(value: number): number {
+  // A whole number of so few digits has none, and most settings are whole.
+  if (Number.isInteger(value) && Math.abs(value) < 1e12) return value + 0;
   return Number(value.toPrecision(12)) + 0;
 }
 
@@ -136,16 +138,14 @@ function roundLeaf(value: unknown, { path, pattern }: At, device: DeviceLimits, 
 }
 
 function roundGroup<T extends object>(group: T, at: At, device: DeviceLimits, notes: Notes): T {
-  const entries = Object.entries(group).flatMap(([name, value]: [string, unknown]) => {
-    if (value === undefined) return [];
-    const inner = {
-      path: at.path === "" ? name : `${at.path}.${name}`,
-      pattern: at.pattern === "" ? name : `${at.pattern}.${name}`,
-    };
+  const entries: [string, unknown][] = [];
+  for (const [name, value] of Object.entries(group) as [string, unknown][]) {
+    if (value === undefined) continue;
+    const inner = { path: `${at.path}.${name}`, pattern: `${at.pattern}.${name}` };
     const isGroup = typeof value === "object" && value !== null && !Array.isArray(value);
     const held = isGroup ? roundGroup(value, inner, device, notes) : roundLeaf(value, inner, device, notes);
-    return held === undefined ? [] : [[name, held] as const];
-  });
+    if (held !== undefined) entries.push([name, held]);
+  }
   // The same fields with numbers for numbers; only optional ones are taken out (`isTaken`).
   return Object.fromEntries(entries) as T;
 }

@@ -51,9 +51,14 @@ export function printable(bytes: Uint8Array): string {
   return text;
 }
 
+/** The hex pair of each byte, after a space: every frame on a line is told as hex. */
+const HEX_PAIRS = Array.from({ length: 256 }, (_, byte) => ` ${byte.toString(16).toUpperCase().padStart(2, "0")}`);
+
 /** Bytes as hex pairs with spaces: `53 4C`. */
 export function hexOf(bytes: Uint8Array): string {
-  return Array.from(bytes, (byte) => byte.toString(16).toUpperCase().padStart(2, "0")).join(" ");
+  let text = "";
+  for (const byte of bytes) text += HEX_PAIRS[byte] ?? "";
+  return text.slice(1);
 }
 
 /**

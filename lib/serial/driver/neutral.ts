@@ -23,7 +23,7 @@ export const NEUTRAL_PATHS: Readonly<Record<string, "number" | "word" | "flag" |
 };
 
 /** 960 · 0.1 is 96.00000000000001 in binary: twelve digits are more than any device has. */
-const tidy = (value: number) => Number(value.toPrecision(12));
+const tidy = (value: number) => (Number.isInteger(value) && Math.abs(value) < 1e12 ? value + 0 : Number(value.toPrecision(12)));
 
 /** What a native value means, or undefined where the driver has no word for it. */
 export function toNeutral(value: SettingValue, native: NativeValue): NeutralValue | undefined {

@@ -183,7 +183,7 @@ export function createDeviceCore(driver: CompiledDriver, memory: DeviceMemory, c
       listeners.add(listener);
       return () => void listeners.delete(listener);
     },
-    counts: () => structuredClone(counts),
+    counts: () => ({ ...counts, stored: { ...counts.stored }, readsByKey: { ...counts.readsByKey }, writesByKey: { ...counts.writesByKey } }),
     setFault(next) {
       faultOf = next ?? NEVER;
     },
