@@ -38,16 +38,19 @@ function envelopeOf(device: DemoDevice): ScreenEnvelope {
 /** A profile with the names that this device can show: the remedy that each of these stops offers. */
 function renamed(document: ProfileDocument, { findings }: Planned): ProfileDocument {
   const remedies = findings.filter(({ rule }) => rule.startsWith("device.name")).flatMap((finding) => finding.remedies.slice(0, 1));
-  return applyPatch(document, remedies.flatMap((remedy) => (remedy.kind === "set" ? remedy.patch : [])));
+  return remedies.length === 0 ? document : applyPatch(document, remedies.flatMap((remedy) => (remedy.kind === "set" ? remedy.patch : [])));
 }
 
 /** Plans as an owner would: names mended by a click, slots that are still stopped left out, every caution read. */
 function planReading(input: Omit<PlanInput, "target">, document: ProfileDocument): Planned {
   const towards = (wanted: ProfileDocument, more: Partial<PlanInput> = {}) => planChanges({ ...input, target: { kind: "profile", document: wanted }, ...more });
-  const mended = renamed(document, towards(document));
-  const stopped = towards(mended).findings.filter(({ severity }) => severity === "stop").flatMap(({ slots }) => slots);
-  const leftOut = [...new Set(stopped)];
-  return towards(mended, { leftOut, acknowledged: [...towards(mended, { leftOut }).toAcknowledge].sort() });
+  const first = towards(document);
+  const mended = renamed(document, first);
+  // The same input gives the same plan: it is made again only where something of the input is another.
+  const again = mended === document ? first : towards(mended);
+  const leftOut = [...new Set(again.findings.filter(({ severity }) => severity === "stop").flatMap(({ slots }) => slots))];
+  const without = leftOut.length === 0 ? again : towards(mended, { leftOut });
+  return without.toAcknowledge.length === 0 ? without : towards(mended, { leftOut, acknowledged: [...without.toAcknowledge].sort() });
 }
 
 async function apply(device: DemoDevice, document: ProfileDocument): Promise<Applied | null> {
