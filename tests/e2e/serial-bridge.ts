@@ -1,3 +1,4 @@
+import { AsyncResource } from "node:async_hooks";
 import path from "node:path";
 import type { CDPSession, Page } from "@playwright/test";
 import { build } from "vite";
@@ -48,15 +49,33 @@ async function bundle(): Promise<string> {
   return chunk.code;
 }
 
+/** What every object of Playwright has inside; not part of what it promises, so nothing here depends on it but speed. */
+type Internals = { readonly _wrapApiCall?: <T>(work: () => Promise<T>, options: { readonly internal: true }) => Promise<T> };
+
+type Evaluate = (expression: string) => ReturnType<typeof evaluate>;
+
+function evaluate(cdp: CDPSession, expression: string) {
+  return cdp.send("Runtime.evaluate", { expression });
+}
+
+/**
+ * A way to evaluate in the page of which the report knows nothing: Playwright makes a step of it out of each call, with a stack
+ * trace and a message to its main process, which costs more than the call. Calls from within one of its own calls are no steps.
+ */
+async function quietEvaluate(cdp: CDPSession): Promise<Evaluate> {
+  const within = (cdp as Internals)._wrapApiCall?.bind(cdp) ?? (<T>(work: () => Promise<T>) => work());
+  return within(() => Promise.resolve(AsyncResource.bind((expression: string) => evaluate(cdp, expression))), { internal: true });
+}
+
 /**
  * Calls the page's part of the bridge with a letter.
  * Throws what the page's part throws.
  */
-async function post(cdp: CDPSession, letter: Letter<TestSays>): Promise<void> {
-  const expression = `void window.backporchSerialHear?.(${JSON.stringify(letter)})`;
+async function post(evaluateInPage: Evaluate, letter: Letter<TestSays>): Promise<void> {
   // A page that navigates or is closed cannot be told anything: its document is gone, and the next one says hello.
-  const { exceptionDetails } = await cdp.send("Runtime.evaluate", { expression }).catch(() => ({ exceptionDetails: undefined }));
-  if (exceptionDetails) throw new Error(exceptionDetails.exception?.description ?? exceptionDetails.text);
+  const answer = await evaluateInPage(`void window.backporchSerialHear?.(${JSON.stringify(letter)})`).catch(() => null);
+  const thrown = answer?.exceptionDetails;
+  if (thrown) throw new Error(thrown.exception?.description ?? thrown.text);
 }
 
 /**
@@ -72,7 +91,8 @@ export async function bridgeSerial(
   { isGranted = false }: { readonly isGranted?: boolean } = {},
 ): Promise<SerialBridge> {
   const cdp = await page.context().newCDPSession(page);
-  const line = new BridgeLine(target, isGranted, (letter) => post(cdp, letter));
+  const evaluateInPage = await quietEvaluate(cdp);
+  const line = new BridgeLine(target, isGranted, (letter) => post(evaluateInPage, letter));
   cdp.on("Runtime.bindingCalled", ({ name, payload }) => {
     if (name === BRIDGE) line.hear(JSON.parse(payload) as Letter<PageSays>);
   });
