@@ -1,5 +1,6 @@
 import { z } from "zod";
 import type { Clock } from "@/lib/serial/clock";
+import { createTimeline } from "@/lib/serial/clock/timeline";
 import type { CompiledDriver } from "@/lib/serial/driver/compiled";
 import { createDeviceModel, type SimulatedDevice as DeviceModel } from "@/lib/serial/simulator/device-model";
 import { createSimulatedDevicePort, type SimulatedDevicePort } from "@/lib/serial/simulator/simulated-device-port";
@@ -34,7 +35,9 @@ function rememberedMemory(storage: Storage, slug: string): z.infer<typeof memory
 export function plugInSimulated(driver: CompiledDriver, clock: Clock, storage: Storage): SimulatedDevice {
   const { slug, transport } = driver.definition;
   const memory = rememberedMemory(storage, slug);
-  const model = createDeviceModel(driver, { clock, values: memory?.values, bootCount: memory ? memory.bootCount + 1 : undefined });
+  // Else each stage of a request would wait for a timer of its own, and a browser makes those 4 ms long.
+  const timeline = createTimeline(clock);
+  const model = createDeviceModel(driver, { clock: timeline, values: memory?.values, bootCount: memory ? memory.bootCount + 1 : undefined });
   model.onChange(() => storage.setItem(memoryKey(slug), JSON.stringify({ bootCount: model.bootCount, values: model.stored })));
-  return { model, plug: createSimulatedDevicePort({ model, transport, clock, pacing: "wire" }) };
+  return { model, plug: createSimulatedDevicePort({ model, transport, clock, timeline, pacing: "wire" }) };
 }

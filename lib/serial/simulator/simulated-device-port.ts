@@ -16,6 +16,11 @@ export type SimulatedDeviceOptions = {
   /** The device's own line settings: a host that opens with other ones gets and sends garbage, as on a real line. */
   readonly transport: SerialOpenOptions;
   readonly clock: Clock;
+  /**
+   * The time of the device, as its model has it, and of its line; `clock` by default. The port itself stays with `clock`: it
+   * promises later tasks, which a timeline does not.
+   */
+  readonly timeline?: Clock;
   /** `wire`: bytes take characters × bits / baud. `none`: they arrive at once. */
   readonly pacing: "wire" | "none";
   readonly identity?: SerialPortIdentity;
@@ -54,7 +59,7 @@ export class SimulatedDevicePort {
     this.#fault = options.fault ?? null;
     this.machine = new SimulatedMachine(options.clock);
     const shared = {
-      clock: options.clock,
+      clock: options.timeline ?? options.clock,
       grainMs: options.grainMs ?? 0,
       fault: () => this.#fault,
       onEvent: (event: WireEvent) => this.#happen(event),
