@@ -1,3 +1,4 @@
+import { createTimeline } from "@/lib/serial/clock/timeline";
 import { compileDriver } from "@/lib/serial/driver/compile";
 import { createDeviceModel } from "@/lib/serial/simulator/device-model";
 import { createWiredDevice } from "@/lib/serial/simulator/wired-device";
@@ -17,7 +18,8 @@ function makeDevice({ definition, pacing, serialNumber }: Wanted): ServedDevice 
   const compiled = compileDriver(definition);
   if (!compiled.ok)
     throw new Error(`The driver ${definition.slug} does not compile: ${JSON.stringify(compiled.error)}`);
-  const clock = createPreciseClock();
+  // Late by a little at each stage of a request, on a busy machine by more: this keeps it from adding up.
+  const clock = createTimeline(createPreciseClock());
   const wire = createWiredDevice({
     model: createDeviceModel(compiled.value, { clock, serialNumber }),
     transport: definition.transport,
