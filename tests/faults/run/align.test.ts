@@ -13,8 +13,8 @@ const KEEPS: Intent = { wish: "keep", recovery: "finish" };
 const GOES_BACK: Intent = { wish: "keep", recovery: "put-back" };
 
 const CASES = DEVICE_NAMES.flatMap((device) => [
-  { device, scenario: "align", intent: KEEPS, stride: 53 },
-  { device, scenario: "by-hand", intent: GOES_BACK, stride: 59 },
+  { device, scenario: "align", intent: KEEPS, stride: 149 },
+  { device, scenario: "by-hand", intent: GOES_BACK, stride: 151 },
 ] as const);
 
 /**

@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("brackenrow", { backup: { once: 3, lasting: 17 }, run: { once: 23, lasting: 61 }, "put-back": { once: 11, lasting: 41 } }, 2100);
+describeByteSweep("brackenrow", { backup: { once: 5, lasting: 29 }, run: { once: 61, lasting: 163 }, "put-back": { once: 31, lasting: 109 } }, 1450);

@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("lf8", { backup: { once: 47, lasting: 193 }, run: { once: 401, lasting: 1201 }, "put-back": { once: 301, lasting: 907 } }, 900);
+describeByteSweep("lf8", { backup: { once: 79, lasting: 401 }, run: { once: 907, lasting: 2411 }, "put-back": { once: 701, lasting: 1801 } }, 640);

@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("ternwick", { backup: { once: 5, lasting: 17 }, run: { once: 23, lasting: 61 }, "put-back": { once: 11, lasting: 41 } }, 2000);
+describeByteSweep("ternwick", { backup: { once: 7, lasting: 29 }, run: { once: 61, lasting: 163 }, "put-back": { once: 31, lasting: 109 } }, 1530);

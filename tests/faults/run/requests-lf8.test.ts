@@ -1,3 +1,3 @@
 import { describeRequestSweep } from "./request-sweep";
 
-describeRequestSweep("lf8", [3, 8, 11], 550);
+describeRequestSweep("lf8", [7, 17, 23], 390);
