@@ -50,7 +50,8 @@ const PASS: ByteFate = { kind: "pass" };
 export class ByteLine implements WireFault {
   /** How many of the troubles have struck. */
   struck = 0;
-  private readonly counts = { "host-to-device": 0, "device-to-host": 0 };
+  /** Bytes of each direction since it began. */
+  readonly counts = { "host-to-device": 0, "device-to-host": 0 };
   private readonly done = new Set<ByteTrouble>();
   private lifted = false;
   private active = false;

@@ -1,14 +1,19 @@
 import { takeBackup } from "@/lib/serial/backup/take-backup";
 import type { RunState } from "@/lib/serial/run/types";
+import type { WireDirection } from "@/lib/serial/simulator/wire-fault";
 import { Owner } from "./owner";
 import { beginTroubles, comeBack, createWorld, endTroubles, type World } from "./world";
 import type { Case } from "./case-id";
+
+/** How many places for a trouble a case had: requests that count, and bytes of each direction. */
+export type Reached = Readonly<Record<"requests" | WireDirection, number>>;
 
 export type Explored = {
   /** How many of the case's troubles have struck. */
   readonly struck: number;
   readonly end: RunState | "backed-up" | "not-backed-up";
   readonly broken: readonly string[];
+  readonly reached: Reached;
 };
 
 /** Longer than any timer of a page that is closed, or of a device that starts. */
@@ -45,6 +50,8 @@ export async function aftermath(world: World): Promise<readonly string[]> {
   return broken;
 }
 
+const reachedIn = ({ line, bytes }: World): Reached => ({ requests: line.points, ...bytes.counts });
+
 /** A second tab is told clearly that the port is taken, and gets nothing of the device. */
 function brokenBySecondTab({ secondTabs }: World): readonly string[] {
   return secondTabs.flatMap((opened) => (opened.ok || !["open-refused", "already-open"].includes(opened.error.code) ? ["a second tab was not told that the port is taken"] : []));
@@ -65,9 +72,10 @@ async function backUp(world: World): Promise<Explored> {
   if (!taken.ok && world.noted.length === 0) broken.push("I6 a backup failed, and the wire log has no word of it");
   if (device.counts.writes + device.counts.recalls + device.counts.commits > 0) broken.push("a backup has changed the device");
   const struck = world.bytes.struck + world.line.fired;
+  const reached = reachedIn(world);
   if (world.session.state.name === "lost") await comeBack(world);
   broken.push(...(await aftermath(world)));
-  return { struck, end: taken.ok ? "backed-up" : "not-backed-up", broken };
+  return { struck, end: taken.ok ? "backed-up" : "not-backed-up", broken, reached };
 }
 
 /** Lives one case through its troubles and says what it broke. Whatever throws is a thing broken, I1 among them. */
@@ -79,6 +87,7 @@ export async function explore(one: Case): Promise<Explored> {
   beginTroubles(world);
   const end = await owner.live();
   const struck = world.line.fired + world.bytes.struck;
+  const reached = reachedIn(world);
   const broken = [...owner.broken, ...brokenBySecondTab(world), ...(await aftermath(world))];
-  return { struck, end, broken };
+  return { struck, end, broken, reached };
 }

@@ -1,7 +1,7 @@
 import type { WireDirection } from "@/lib/serial/simulator/wire-fault";
 import { BYTE_FAULTS, faultsOfKind, type ByteKind } from "./byte-faults";
 import { caseId, type Case } from "./case-id";
-import { explore, type Explored } from "./explore";
+import { explore, type Explored, type Reached } from "./explore";
 import type { Fault, FaultKind } from "./fault-line";
 
 /**
@@ -10,8 +10,6 @@ import type { Fault, FaultKind } from "./fault-line";
  */
 export const SCOPE: "cover" | "whole" = process.env.SWEEP_SCOPE === "whole" ? "whole" : "cover";
 
-/** More places than any scenario has: a sweep that gets here does not end by itself. */
-const MAX_PLACES = 20_000;
 /** Failures told in full; the others are counted. */
 const MAX_TOLD = 20;
 
@@ -29,19 +27,18 @@ export class Tally {
   private readonly told: string[] = [];
   private more = 0;
 
-  /** Lives one case. @returns how many of its troubles struck */
-  async live(one: Case): Promise<number> {
+  /** Lives one case, whose trouble has to strike. */
+  async live(one: Case): Promise<void> {
     const { struck, end, broken } = await explored(one);
     if (struck > 0) {
       this.cases += 1;
       lived += 1;
       this.ends.add(end);
     }
-    for (const sentence of broken) {
+    for (const sentence of struck > 0 ? broken : [...broken, "nothing struck"]) {
       if (this.told.length < MAX_TOLD) this.told.push(`${sentence} · SWEEP=${caseId(one)}`);
       else this.more += 1;
     }
-    return struck;
   }
 
   get broken(): readonly string[] {
@@ -49,37 +46,53 @@ export class Tally {
   }
 }
 
+const NOWHERE: Reached = { requests: 0, "host-to-device": 0, "device-to-host": 0 };
+
 /** A case that throws has broken I1, or something that nobody thought of: its id must not be lost. */
 export async function explored(one: Case): Promise<Explored> {
   try {
     return await explore(one);
   } catch (error) {
-    return { struck: 1, end: "ready", broken: [`I1 ${error instanceof Error ? error.message : String(error)}`] };
+    return { struck: 1, end: "ready", broken: [`I1 ${error instanceof Error ? error.message : String(error)}`], reached: NOWHERE };
   }
 }
 
 type Steps = { readonly stride: number; readonly phase: number };
 
-/** Places of a sweep in the chosen scope. */
-function* places({ stride, phase }: Steps): Generator<number> {
+const reaches = new Map<string, Promise<Reached>>();
+
+/**
+ * How far a scenario goes where nothing strikes. Until a trouble strikes it goes just so with it: a trouble at any earlier
+ * place strikes, and one behind the last place never does. Lived once for all the kinds that are swept over it.
+ */
+function reachOf(over: Omit<Case, "faults" | "bytes">): Promise<Reached> {
+  const calm: Case = { ...over, faults: [], bytes: [] };
+  const key = JSON.stringify(calm);
+  const reach = reaches.get(key) ?? explored(calm).then(({ reached, broken }) => {
+    if (broken.length > 0) throw new Error(`With no trouble at all: ${broken.join("; ")}`);
+    return reached;
+  });
+  reaches.set(key, reach);
+  return reach;
+}
+
+/** Places of a sweep in the chosen scope, before `end`. */
+function* places({ stride, phase }: Steps, end: number): Generator<number> {
   const step = SCOPE === "whole" ? 1 : stride;
-  for (let at = SCOPE === "whole" ? 0 : phase % stride; at < MAX_PLACES; at += step) yield at;
-  throw new Error("The sweep did not end");
+  for (let at = SCOPE === "whole" ? 0 : phase % stride; at < end; at += step) yield at;
 }
 
-/** One fault at the n-th request, until nothing strikes any more. */
+/** One fault at the n-th request, to the last one. */
 export async function sweepRequests(tally: Tally, over: Omit<Case, "faults">, kind: FaultKind, steps: Steps): Promise<void> {
-  for (const at of places(steps)) {
-    if ((await tally.live({ ...over, faults: [{ at, kind } satisfies Fault] })) === 0) return;
-  }
+  const { requests } = await reachOf(over);
+  for (const at of places(steps, requests)) await tally.live({ ...over, faults: [{ at, kind } satisfies Fault] });
 }
 
-/** One fault at the n-th byte of a direction, until nothing strikes any more. */
+/** One fault at the n-th byte of a direction, to the last one. */
 export async function sweepBytes(tally: Tally, over: Omit<Case, "bytes">, kind: ByteKind, direction: WireDirection, lasting: boolean, steps: Steps): Promise<void> {
-  for (const at of places(steps)) {
-    for (const fault of faultsOfKind(kind, at, SCOPE === "whole")) {
-      if ((await tally.live({ ...over, bytes: [{ fault, direction, at, lasting }] })) === 0) return;
-    }
+  const { [direction]: end } = await reachOf(over);
+  for (const at of places(steps, end)) {
+    for (const fault of faultsOfKind(kind, at, SCOPE === "whole")) await tally.live({ ...over, bytes: [{ fault, direction, at, lasting }] });
   }
 }
 
