@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("brackenrow", { backup: { once: 5, lasting: 29 }, run: { once: 61, lasting: 163 }, "put-back": { once: 31, lasting: 109 } }, 1450);
+describeByteSweep("brackenrow", { backup: { once: 7, lasting: 41 }, run: { once: 101, lasting: 271 }, "put-back": { once: 53, lasting: 181 } }, 970);

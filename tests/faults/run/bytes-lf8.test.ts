@@ -1,3 +1,3 @@
 import { describeByteSweep } from "./byte-sweep";
 
-describeByteSweep("lf8", { backup: { once: 79, lasting: 401 }, run: { once: 907, lasting: 2411 }, "put-back": { once: 701, lasting: 1801 } }, 640);
+describeByteSweep("lf8", { backup: { once: 97, lasting: 499 }, run: { once: 1201, lasting: 3001 }, "put-back": { once: 907, lasting: 2411 } }, 510);

@@ -1,3 +1,3 @@
 import { describeRequestSweep } from "./request-sweep";
 
-describeRequestSweep("lf8", [7, 17, 23], 390);
+describeRequestSweep("lf8", [11, 29, 37], 320);
