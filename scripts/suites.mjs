@@ -83,7 +83,7 @@ async function lint() {
 }
 
 /** The pages' build as a suite: without it the browser tests could not tell what they tested. */
-const buildSuite = single("Build", 60, async () => {
+const buildSuite = single("Build", 80, async () => {
   try {
     await ensureBuild(() => undefined);
     return { code: 0, output: "" };
@@ -100,15 +100,15 @@ const buildSuite = single("Build", 60, async () => {
  */
 export const stages = [
   [
-    [buildSuite, vitestSuite("Unit", "unit", 110)],
+    [buildSuite, vitestSuite("Unit", "unit", 95)],
     [
-      single("Lint", 80, lint),
+      single("Lint", 70, lint),
       single("Types", 20, () => tool("typescript-7/bin/tsc", ["--noEmit"])),
-      vitestSuite("Database", "integration", 40),
+      vitestSuite("Database", "integration", 60),
     ],
   ],
-  [[vitestSuite("Faults", "faults", 100), vitestSuite("Peers", "peers", 30)]],
-  [[browserSuite(420)]],
+  [[vitestSuite("Faults", "faults", 100), vitestSuite("Peers", "peers", 20)]],
+  [[browserSuite(570)]],
 ];
 
 /** Removes the reports of this run. */
