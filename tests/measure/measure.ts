@@ -37,11 +37,12 @@ function line(measurement: Measurement): string {
   return `${name.padEnd(60)} ${value.toPrecision(5).padStart(12)} ${unit.padEnd(8)} limit ${limit.toPrecision(5)}  ${share} ${verdict}`;
 }
 
-const measurements: Measurement[] = [];
+/** As it is written: the ratio to the limit or peer comes last. */
+const measurements: (Measurement & { readonly ratio: number })[] = [];
 for (const [name, measure] of await findMeasures()) {
   for (const one of await measure()) {
     if (!Number.isFinite(one.value) || !(one.limit > 0)) throw new Error(`${name}: ${one.name} is no figure.`);
-    measurements.push(one);
+    measurements.push({ ...one, ratio: one.value / one.limit });
     console.log(line(one));
   }
 }
