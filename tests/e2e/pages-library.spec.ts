@@ -11,6 +11,7 @@ test("the library is searched and held against a screen, and the address keeps t
   await expect(table.getByRole("row")).toHaveCount(2);
   await page.getByLabel("Hold against").selectOption({ label: "Any 525-line television" });
   await expect(table.getByText("no mode fits")).toBeVisible();
+  await expect(page).toHaveURL(/bt470-525/u);
   await page.reload();
   await expect(page.getByLabel("Search")).toHaveValue("31 khz");
   await expect(table.getByText("no mode fits")).toBeVisible();
