@@ -1,7 +1,4 @@
-import { figure, type FigureStyle } from "@/lib/timing/figure-text";
-
-const NO_BREAK_SPACE = "\u00A0";
-const MINUS = "\u2212";
+import { figure, MINUS, NO_BREAK_SPACE, type FigureStyle } from "@/lib/timing/figure-text";
 
 /** A number as it stands on screen. */
 export const formatNumber = figure;

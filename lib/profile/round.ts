@@ -1,4 +1,5 @@
 import type { RasterTiming } from "@/lib/timing/raster";
+import { cleanFigure } from "./clean-figure";
 import type { ProfileDocument } from "./document";
 import type { DeviceLimits, NumberLimit } from "./limits";
 import { neutralSetting, type NeutralSetting } from "./neutral-settings";
@@ -34,16 +35,9 @@ export type RoundedDocument = {
 /** Keeps a tie a tie although binary fractions fall short of it; far below a step. */
 const BINARY_NOISE = 1e-9;
 
-/** Takes the binary noise out of `min + n · step`: no device counts in more than 12 digits. */
-function clean(value: number): number {
-  // A whole number of so few digits has none, and most settings are whole.
-  if (Number.isInteger(value) && Math.abs(value) < 1e12) return value + 0;
-  return Number(value.toPrecision(12)) + 0;
-}
-
 /** The value of step `n` of a limit. */
 export function valueOfStep(limit: NumberLimit, n: number): number {
-  return clean(limit.min + n * limit.step);
+  return cleanFigure(limit.min + n * limit.step);
 }
 
 /** How many steps lie between `min` and `max`. */

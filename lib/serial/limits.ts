@@ -1,3 +1,4 @@
+import { cleanFigure } from "@/lib/profile/clean-figure";
 import type { DeviceLimits, NumberLimit } from "@/lib/profile/limits";
 import type { DriverDefinition, DriverSetting } from "@/lib/serial/driver/definition";
 import { toNeutral } from "@/lib/serial/driver/neutral";
@@ -5,7 +6,7 @@ import { toNeutral } from "@/lib/serial/driver/neutral";
 function numberLimit({ value }: DriverSetting): NumberLimit | null {
   if (value.type !== "integer") return null;
   const at = (native: number) => Number(toNeutral(value, native));
-  const step = Number((value.step * value.scale).toPrecision(12));
+  const step = cleanFigure(value.step * value.scale);
   return { min: at(value.min), max: at(value.max), step, unit: value.scale === 1 ? value.unit : neutralUnit(value.unit, value.scale) };
 }
 

@@ -1,7 +1,7 @@
 /** Thin space in thousands; a no-break space before a unit, so that no line ends between them. */
 const THIN_SPACE = "\u2009";
-const NO_BREAK_SPACE = "\u00A0";
-const MINUS = "\u2212";
+export const NO_BREAK_SPACE = "\u00A0";
+export const MINUS = "\u2212";
 
 export type FigureStyle = {
   /** Exactly so many decimals. */

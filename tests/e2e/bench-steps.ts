@@ -70,10 +70,11 @@ export async function moveBy(page: Page, label: string, steps: number): Promise<
   for (let n = 0; n < Math.abs(steps); n += 1) await slider.press(steps > 0 ? "ArrowRight" : "ArrowLeft");
 }
 
-/** Reviews what was changed by hand, and tries it. */
-export async function tryIt(page: Page): Promise<void> {
+/** Reviews what was changed by hand, and tries it for 30 s, or for as long as the page is looked at. */
+export async function tryIt(page: Page, seconds: "30" | "120" = "30"): Promise<void> {
   await page.getByRole("button", { name: "Review the plan" }).click();
   await readCautions(page);
+  await page.getByLabel("Length of the trial").selectOption(seconds);
   await page.getByRole("button", { name: "Back up and try" }).click();
   await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
 }

@@ -149,11 +149,7 @@ test("two tabs: a run that one holds is refused to the other", async ({ page, co
   await connect(page, "simulated");
   await chooseScreen(page, "Any 525-line television");
   await moveBy(page, "Horizontal position", 2);
-  await page.getByRole("button", { name: "Review the plan" }).click();
-  await readCautions(page);
-  await page.getByLabel("Length of the trial").selectOption("120");
-  await start(page);
-  await expect(trial(page, "trying")).toBeVisible({ timeout: READ_MS });
+  await tryIt(page, "120");
   const other = await context.newPage();
   await other.goto("/bench");
   await connect(other, "simulated");

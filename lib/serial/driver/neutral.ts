@@ -1,3 +1,4 @@
+import { cleanFigure } from "@/lib/profile/clean-figure";
 import type { NativeValue } from "@/lib/serial/native";
 import type { SettingValue } from "./definition";
 
@@ -22,12 +23,9 @@ export const NEUTRAL_PATHS: Readonly<Record<string, "number" | "word" | "flag" |
   "slots[*].colour.brightnessPct": "number", "slots[*].colour.contrastPct": "number", "slots[*].colour.saturationPct": "number",
 };
 
-/** 960 · 0.1 is 96.00000000000001 in binary: twelve digits are more than any device has. */
-const tidy = (value: number) => (Number.isInteger(value) && Math.abs(value) < 1e12 ? value + 0 : Number(value.toPrecision(12)));
-
 /** What a native value means, or undefined where the driver has no word for it. */
 export function toNeutral(value: SettingValue, native: NativeValue): NeutralValue | undefined {
-  if (value.type === "integer") return typeof native === "number" ? tidy(native * value.scale + value.offset) : undefined;
+  if (value.type === "integer") return typeof native === "number" ? cleanFigure(native * value.scale + value.offset) : undefined;
   if (value.type === "text") return String(native);
   return value.choices.find((choice) => choice.native === native)?.neutral;
 }
@@ -36,8 +34,8 @@ export function toNeutral(value: SettingValue, native: NativeValue): NeutralValu
 export function toNative(value: SettingValue, neutral: NeutralValue): NativeValue | undefined {
   if (value.type === "integer") {
     if (typeof neutral !== "number") return undefined;
-    const steps = tidy((neutral - value.offset) / value.scale - value.min) / value.step;
-    return value.min + Math.floor(tidy(steps) + 0.5) * value.step;
+    const steps = cleanFigure((neutral - value.offset) / value.scale - value.min) / value.step;
+    return value.min + Math.floor(cleanFigure(steps) + 0.5) * value.step;
   }
   if (value.type === "text") return String(neutral);
   return value.choices.find((choice) => choice.neutral === neutral)?.native;
