@@ -139,7 +139,7 @@ function ReviewFoot({ review }: { readonly review: BenchReview }) {
     >
       <label className="flex items-center gap-2">
         <span className="text-muted">Trial</span>
-        <select aria-label="Length of the trial" className={inputLook} value={review.countdownSeconds} onChange={(event) => setCountdown(Number(event.target.value))}>
+        <select aria-label="Length of the trial" className={`${inputLook} min-w-20`} value={review.countdownSeconds} onChange={(event) => setCountdown(Number(event.target.value))}>
           {COUNTDOWNS.map((seconds) => <option key={seconds} value={seconds}>{seconds} s</option>)}
         </select>
       </label>
